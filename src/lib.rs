@@ -1,0 +1,3 @@
+//! ampledger plans the electrical load budget of engine-driven equipment.
+
+pub mod quantity;
