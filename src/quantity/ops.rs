@@ -1,15 +1,38 @@
 //! The lawful products of quantities: Ohm's law, power, charge, energy.
 
-use super::{AmpHours, Amps, Celsius, Fraction, Hours, Kelvins, Ohms, Rpm, Volts, VoltsPerKelvin, VoltsPerRpm, WattHours, Watts};
+use super::{
+    AmpHours, Amps, Celsius, Fraction, Hours, Kelvins, Ohms, Rpm, Volts, VoltsPerKelvin,
+    VoltsPerRpm, WattHours, Watts,
+};
 use std::ops::{Div, Mul};
 
 /// `A * B = C`, with `B * A`, `C / A` and `C / B`.
 macro_rules! product {
     ($a:ident * $b:ident = $c:ident) => {
-        impl Mul<$b> for $a { type Output = $c; fn mul(self, o: $b) -> $c { $c(self.0 * o.0) } }
-        impl Mul<$a> for $b { type Output = $c; fn mul(self, o: $a) -> $c { $c(self.0 * o.0) } }
-        impl Div<$a> for $c { type Output = $b; fn div(self, o: $a) -> $b { $b(self.0 / o.0) } }
-        impl Div<$b> for $c { type Output = $a; fn div(self, o: $b) -> $a { $a(self.0 / o.0) } }
+        impl Mul<$b> for $a {
+            type Output = $c;
+            fn mul(self, o: $b) -> $c {
+                $c(self.0 * o.0)
+            }
+        }
+        impl Mul<$a> for $b {
+            type Output = $c;
+            fn mul(self, o: $a) -> $c {
+                $c(self.0 * o.0)
+            }
+        }
+        impl Div<$a> for $c {
+            type Output = $b;
+            fn div(self, o: $a) -> $b {
+                $b(self.0 / o.0)
+            }
+        }
+        impl Div<$b> for $c {
+            type Output = $a;
+            fn div(self, o: $b) -> $a {
+                $a(self.0 / o.0)
+            }
+        }
     };
 }
 product!(Amps * Ohms = Volts);
