@@ -102,6 +102,10 @@ quantity!(
     Hours
 );
 quantity!(
+    /// A duration as the answers give it, minutes.
+    Minutes
+);
+quantity!(
     /// A length, metres.
     Metres
 );
@@ -186,4 +190,10 @@ impl Fraction {
 pub struct Tolerance {
     /// Share of the stated value: 0.08 for ± 8 %. A tolerance given in units is turned into this.
     pub relative: Fraction,
+}
+
+impl From<Hours> for Minutes {
+    fn from(time: Hours) -> Minutes {
+        Minutes(time.minutes())
+    }
 }
