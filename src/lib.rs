@@ -1,3 +1,4 @@
 //! ampledger plans the electrical load budget of engine-driven equipment.
 
+pub mod battery;
 pub mod quantity;
