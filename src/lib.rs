@@ -2,3 +2,5 @@
 
 pub mod battery;
 pub mod quantity;
+pub mod root;
+pub mod source;
