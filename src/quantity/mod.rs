@@ -17,6 +17,7 @@
 //! let nonsense = Volts(12.0) + Amps(3.0);
 //! ```
 
+pub mod format;
 pub mod ops;
 
 use serde::Serialize;
