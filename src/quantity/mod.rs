@@ -18,7 +18,10 @@
 //! ```
 
 pub mod format;
+pub mod bounds;
 pub mod ops;
+pub mod parse;
+pub mod unit;
 
 use serde::Serialize;
 

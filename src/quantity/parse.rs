@@ -1,0 +1,97 @@
+//! Text to typed quantities: `55 W ± 8 %`, `1 h 20 min`, `-10 °C`, `16 A at 3600 rpm into 14 V`.
+//!
+//! Every error carries the byte range of what is wrong, so that a message can mark it on the line.
+
+mod error;
+mod phrase;
+mod reader;
+
+pub use error::{ParseError, ParseErrorKind};
+pub use phrase::{at_speed, between, rated, surge};
+
+use super::unit::{Dimension, Unit};
+use super::{Fraction, Tolerance};
+use reader::Reader;
+
+/// A quantity as written, with the tolerance written beside it.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Measured<T> {
+    /// The value.
+    pub value: T,
+    /// How far it may lie from the value; `± 8 %` is always a share of the value.
+    pub tolerance: Option<Tolerance>,
+}
+
+impl<T> Measured<T> {
+    /// The same tolerance about another form of the value.
+    pub(crate) fn map<U>(self, form: impl FnOnce(T) -> U) -> Measured<U> {
+        Measured {
+            value: form(self.value),
+            tolerance: self.tolerance,
+        }
+    }
+}
+
+/// Reads a quantity with its unit and, where one is written, its tolerance.
+///
+/// ```
+/// use ampledger::quantity::{Fraction, Watts, parse::parse};
+/// let lamp = parse::<Watts>("55 W ± 8 %").unwrap();
+/// assert_eq!(lamp.value, Watts(55.0));
+/// assert_eq!(lamp.tolerance.unwrap().relative, Fraction(0.08));
+/// assert_eq!(parse::<Watts>("55 V").unwrap_err().range, 3..4);
+/// ```
+///
+/// # Errors
+/// [`ParseError`]: not a number, too large, no unit, an unknown unit or one that measures something else, text left over.
+pub fn parse<T: Unit>(text: &str) -> Result<Measured<T>, ParseError> {
+    Ok(measure(text, T::DIMENSION)?.map(T::of))
+}
+
+/// Reads a plain number without a unit: a pulley ratio, a scale, lumens. `x` after it is allowed.
+///
+/// # Errors
+/// [`ParseError`], as [`parse`].
+pub fn factor(text: &str) -> Result<Measured<Fraction>, ParseError> {
+    Ok(measure(text, Dimension::Factor)?.map(Fraction))
+}
+
+/// Reads a whole number: poles, a count.
+///
+/// # Errors
+/// [`ParseErrorKind::NotWhole`] for anything but digits; [`ParseErrorKind::TooLarge`] beyond `u32`.
+pub fn whole(text: &str) -> Result<u32, ParseError> {
+    let trimmed = text.trim();
+    let start = text.len() - text.trim_start().len();
+    let range = start..start + trimmed.len();
+    let digits = trimmed.strip_prefix('+').unwrap_or(trimmed);
+    let kind = if digits.is_empty() || !digits.bytes().all(|b| b.is_ascii_digit()) {
+        ParseErrorKind::NotWhole {
+            found: trimmed.into(),
+        }
+    } else {
+        match digits.parse() {
+            Ok(number) => return Ok(number),
+            Err(_) => ParseErrorKind::TooLarge {
+                found: trimmed.into(),
+            },
+        }
+    };
+    Err(ParseError {
+        range,
+        kind,
+        wanted: Dimension::Factor,
+    })
+}
+
+/// Reads a whole text as a quantity of a dimension, in the quantity's own unit.
+fn measure(text: &str, wanted: Dimension) -> Result<Measured<f64>, ParseError> {
+    let mut reader = Reader::new(text, wanted);
+    let value = reader.quantity()?;
+    let tolerance = reader.tolerance(value)?;
+    reader.end()?;
+    Ok(Measured { value, tolerance })
+}
+
+#[cfg(test)]
+mod tests;

@@ -1,0 +1,431 @@
+use super::*;
+use crate::quantity::*;
+
+fn value<T: Unit>(text: &str) -> f64 {
+    parse::<T>(text)
+        .map(|m| m.value.amount())
+        .unwrap_or_else(|e| panic!("{text}: {e}"))
+}
+
+#[track_caller]
+fn near(found: f64, wanted: f64) {
+    assert!(
+        (found - wanted).abs() <= 1e-12 * wanted.abs().max(1e-6),
+        "{found} for {wanted}"
+    );
+}
+
+/// Range and kind of an error, and that range as text.
+fn wrong<T: Unit + std::fmt::Debug>(text: &str) -> (&str, ParseErrorKind) {
+    let e = parse::<T>(text).expect_err(text);
+    (&text[e.range.clone()], e.kind)
+}
+
+#[test]
+fn every_spelling_of_the_description() {
+    near(value::<Watts>("55 W"), 55.0);
+    near(value::<Watts>("55W"), 55.0);
+    near(value::<Watts>("1.2 kW"), 1200.0);
+    near(value::<Volts>("14.2 V"), 14.2);
+    near(value::<Ohms>("0.35 ohm"), 0.35);
+    near(value::<Ohms>("0.35 \u{3a9}"), 0.35);
+    near(value::<Ohms>("0.35 \u{2126}"), 0.35);
+    near(value::<Ohms>("350 mΩ"), 0.35);
+    near(value::<Henries>("0.4 mH"), 0.4e-3);
+    near(value::<Henries>("60 uH"), 60e-6);
+    near(value::<Henries>("60 \u{b5}H"), 60e-6);
+    near(value::<Henries>("60 \u{3bc}H"), 60e-6);
+    near(value::<Amps>("8 mA"), 0.008);
+    near(value::<AmpHours>("28 Ah"), 28.0);
+    near(value::<Rpm>("3350 rpm"), 3350.0);
+    near(value::<Fraction>("85 %"), 0.85);
+    near(value::<Fraction>("85%"), 0.85);
+    near(value::<Metres>("2.5 m"), 2.5);
+    near(value::<Metres>("250 cm"), 2.5);
+    near(value::<Metres>("10 ft"), 3.048);
+    near(value::<Metres>("12 in"), 0.3048);
+    near(value::<SquareMm>("2.5 mm2"), 2.5);
+    near(value::<SquareMm>("2.5 mm²"), 2.5);
+    near(value::<VoltsPerKelvin>("-18 mV"), -0.018);
+    near(value::<VoltsPerKelvin>("-18 mV/°C"), -0.018);
+    near(value::<Watts>(" \u{2212}55 W "), -55.0);
+    near(value::<Watts>("5.5e1 W"), 55.0);
+    near(value::<Watts>("+.5 W"), 0.5);
+}
+
+#[test]
+fn temperatures() {
+    near(value::<Celsius>("-10 °C"), -10.0);
+    near(value::<Celsius>("14 F"), -10.0);
+    near(value::<Celsius>("14 °F"), -10.0);
+    near(value::<Celsius>("-10 C"), -10.0);
+    // a difference has no offset: 9 °F are 5 K
+    near(value::<Kelvins>("9 F"), 5.0);
+    let air = parse::<Celsius>("-10 °C ± 9 F").expect("a tolerance in degrees");
+    near(air.tolerance.expect("written").relative.0, 0.5);
+    assert!(matches!(
+        wrong::<Celsius>("20 °C ± 5 %"),
+        ("%", ParseErrorKind::WrongUnit { .. })
+    ));
+}
+
+#[test]
+fn durations_add_up() {
+    near(value::<Hours>("1 h 20 min"), 4.0 / 3.0);
+    near(value::<Hours>("1h20min"), 4.0 / 3.0);
+    near(value::<Hours>("2 d 3 h 6 min 36 s"), 51.11);
+    near(value::<Hours>("90 min"), 1.5);
+    near(value::<Hours>("2.5 s"), 2.5 / 3600.0);
+    assert_eq!(
+        wrong::<Hours>("20 min 1 h"),
+        ("h", ParseErrorKind::Order { found: "h".into() })
+    );
+    assert_eq!(
+        wrong::<Hours>("1 h 20"),
+        ("20", ParseErrorKind::UnitMissing { found: "20".into() })
+    );
+}
+
+#[test]
+fn wire_gauges() {
+    // ASTM B258: 14 AWG is 2.081 mm², 2/0 AWG 67.43 mm².
+    for text in ["14 AWG", "AWG 14"] {
+        assert!((value::<SquareMm>(text) - 2.081).abs() < 1e-3);
+    }
+    assert!((value::<SquareMm>("2/0 AWG") - 67.43).abs() < 0.01);
+}
+
+#[test]
+fn tolerances() {
+    for text in [
+        "55 W ± 8 %",
+        "55 W +- 8 %",
+        "55 W +-8%",
+        "55W+/-8 %",
+        "55 W +/- 4.4 W",
+        "55 W ± 0.0044 kW",
+    ] {
+        let m = parse::<Watts>(text).unwrap_or_else(|e| panic!("{text}: {e}"));
+        near(m.value.0, 55.0);
+        near(m.tolerance.expect(text).relative.0, 0.08);
+    }
+    // about a share, too, per cent means a share of the value
+    near(
+        parse::<Fraction>("50 % ± 10 %")
+            .expect("read")
+            .tolerance
+            .expect("written")
+            .relative
+            .0,
+        0.1,
+    );
+    assert_eq!(
+        wrong::<Watts>("55 W ± 8"),
+        ("8", ParseErrorKind::UnitMissing { found: "8".into() })
+    );
+    assert!(matches!(
+        wrong::<Watts>("55 W ± 8 V"),
+        ("V", ParseErrorKind::WrongUnit { .. })
+    ));
+    assert!(matches!(
+        wrong::<Watts>("55 W ± 120 %"),
+        ("± 120 %", ParseErrorKind::ToleranceTooWide { .. })
+    ));
+    assert!(matches!(
+        wrong::<Watts>("55 W ± -1 %"),
+        ("± -1 %", ParseErrorKind::ToleranceTooWide { .. })
+    ));
+    assert_eq!(
+        wrong::<Watts>("0 W ± 1 W"),
+        ("± 1 W", ParseErrorKind::ToleranceOfZero)
+    );
+}
+
+#[test]
+fn phrases() {
+    assert_eq!(
+        rated("16 A at 3600 rpm into 14 V").map(|m| m.value),
+        Ok((Amps(16.0), Rpm(3600.0), Some(Volts(14.0))))
+    );
+    assert_eq!(
+        rated("16 A at 3600 rpm").map(|m| m.value),
+        Ok((Amps(16.0), Rpm(3600.0), None))
+    );
+    for text in [
+        "28 V at 3600 rpm ± 6 %",
+        "28 V ± 6 % at 3600 rpm",
+        "28 V at 3600 rpm +- 1.68 V",
+    ] {
+        let m = at_speed::<Volts>(text).unwrap_or_else(|e| panic!("{text}: {e}"));
+        assert_eq!(m.value, (Volts(28.0), Rpm(3600.0)));
+        near(m.tolerance.expect(text).relative.0, 0.06);
+    }
+    assert_eq!(between("10.5 V to 16 V"), Ok((Volts(10.5), Volts(16.0))));
+    assert_eq!(
+        surge("8 x for 0.2 s").map(|(x, t)| (x, t.seconds())),
+        Ok((Fraction(8.0), 0.2))
+    );
+    assert_eq!(surge("8× for 0.2 s").map(|(x, _)| x), Ok(Fraction(8.0)));
+    assert_eq!(factor("2.4").map(|m| m.value), Ok(Fraction(2.4)));
+    assert_eq!(whole("12"), Ok(12));
+}
+
+#[test]
+fn phrases_point_at_their_own_part() {
+    let text = "16 A at 3600 V into 14 V";
+    let e = rated(text).expect_err("a voltage for a speed");
+    assert_eq!(
+        (&text[e.range.clone()], e.to_string().as_str()),
+        (
+            "V",
+            "wrong unit: `V` is a voltage, a speed of rotation is needed"
+        )
+    );
+    let text = "28 V at 3600 rpm ± 6";
+    let e = at_speed::<Volts>(text).expect_err("no unit");
+    assert_eq!(
+        (&text[e.range.clone()], e.to_string().as_str()),
+        ("6", "unit missing: `6` must be a voltage")
+    );
+    let text = "28 V ± 6 % at 3600 rpm ± 1 %";
+    assert_eq!(
+        at_speed::<Volts>(text).expect_err("two tolerances").kind,
+        ParseErrorKind::ToleranceHere
+    );
+    assert!(matches!(
+        at_speed::<Volts>("28 V").expect_err("no speed").kind,
+        ParseErrorKind::Phrase { word: "at", .. }
+    ));
+    assert!(matches!(
+        at_speed::<Volts>("28 A").expect_err("unit first").kind,
+        ParseErrorKind::WrongUnit { .. }
+    ));
+    assert!(matches!(
+        between("10.5 to 16 V").expect_err("bare").kind,
+        ParseErrorKind::UnitMissing { .. }
+    ));
+    assert!(matches!(
+        surge("8 for 1 s").expect_err("bare").kind,
+        ParseErrorKind::UnitMissing { .. }
+    ));
+    assert_eq!(
+        surge("8 x ± 1 % for 1 s").expect_err("tolerance").kind,
+        ParseErrorKind::ToleranceHere
+    );
+}
+
+#[test]
+fn errors_name_what_stands_there() {
+    use ParseErrorKind as K;
+    assert_eq!(wrong::<Watts>(""), ("", K::Empty));
+    assert_eq!(
+        wrong::<Watts>("bright"),
+        (
+            "bright",
+            K::NotNumber {
+                found: "bright".into()
+            }
+        )
+    );
+    assert_eq!(
+        wrong::<Watts>(".nan"),
+        (
+            ".nan",
+            K::NotFinite {
+                found: ".nan".into()
+            }
+        )
+    );
+    assert_eq!(
+        wrong::<Watts>("-.inf W"),
+        (
+            "-.inf",
+            K::NotFinite {
+                found: "-.inf".into()
+            }
+        )
+    );
+    assert_eq!(
+        wrong::<Watts>("1e400 W"),
+        (
+            "1e400",
+            K::TooLarge {
+                found: "1e400".into()
+            }
+        )
+    );
+    assert_eq!(
+        wrong::<Watts>("1e306 kW"),
+        (
+            "1e306 kW",
+            K::TooLarge {
+                found: "1e306 kW".into()
+            }
+        )
+    );
+    assert_eq!(
+        wrong::<Watts>("55"),
+        ("55", K::UnitMissing { found: "55".into() })
+    );
+    assert_eq!(
+        wrong::<Watts>("55 w"),
+        (
+            "w",
+            K::UnknownUnit {
+                found: "w".into(),
+                near: Some("W")
+            }
+        )
+    );
+    assert_eq!(
+        wrong::<Rpm>("55 rpn"),
+        (
+            "rpn",
+            K::UnknownUnit {
+                found: "rpn".into(),
+                near: Some("rpm")
+            }
+        )
+    );
+    assert_eq!(
+        wrong::<Watts>("55 lux"),
+        (
+            "lux",
+            K::UnknownUnit {
+                found: "lux".into(),
+                near: None
+            }
+        )
+    );
+    assert_eq!(
+        wrong::<Watts>("55 W 3"),
+        ("3", K::Trailing { found: "3".into() })
+    );
+    assert_eq!(
+        wrong::<Watts>("1.2.3 W"),
+        (
+            "1.2.3 W",
+            K::NotNumber {
+                found: "1.2.3 W".into()
+            }
+        )
+    );
+    let grouping = |found: &str, plain: &str| K::Grouping {
+        found: found.into(),
+        plain: plain.into(),
+    };
+    assert_eq!(wrong::<Watts>("5,5 W"), ("5,5", grouping("5,5", "5.5")));
+    assert_eq!(
+        wrong::<Watts>("0,125 W"),
+        ("0,125", grouping("0,125", "0.125"))
+    );
+    assert_eq!(
+        wrong::<Rpm>("3,600 rpm"),
+        ("3,600", grouping("3,600", "3600"))
+    );
+    assert_eq!(
+        wrong::<Rpm>("3 600 rpm"),
+        ("3 600", grouping("3 600", "3600"))
+    );
+    assert_eq!(
+        wrong::<Rpm>("1_000 rpm"),
+        ("1_000", grouping("1_000", "1000"))
+    );
+    assert!(matches!(
+        wrong::<Hours>("12:30"),
+        (":", K::UnknownUnit { .. })
+    ));
+    assert!(matches!(
+        wrong::<Hours>("20 m"),
+        (
+            "m",
+            K::WrongUnit {
+                measures: Dimension::Length,
+                ..
+            }
+        )
+    ));
+    assert!(matches!(
+        factor("2 V").expect_err("a unit").kind,
+        K::WrongUnit { .. }
+    ));
+    for text in ["", "-3", "1.5", "three", "3 x"] {
+        assert!(
+            matches!(whole(text).expect_err(text).kind, K::NotWhole { .. }),
+            "{text}"
+        );
+    }
+    assert!(matches!(
+        whole("99999999999").expect_err("beyond u32").kind,
+        K::TooLarge { .. }
+    ));
+}
+
+#[test]
+fn messages_are_sentences() {
+    let say = |text: &str| parse::<Watts>(text).map_err(|e| (e.to_string(), e.label(), e.help()));
+    let same = |a: &str, b: &str, c: &str| Err((a.to_string(), b.to_string(), c.to_string()));
+    assert_eq!(
+        say("55 V").map(|_| ()),
+        same(
+            "wrong unit: `V` is a voltage, a power is needed",
+            "a voltage",
+            "write it like `55 W`"
+        )
+    );
+    assert_eq!(
+        say("55").map(|_| ()),
+        same(
+            "unit missing: `55` must be a power",
+            "a number without a unit: `W` or `kW`",
+            "write it like `55 W`"
+        )
+    );
+    assert_eq!(
+        say("55 w").map(|_| ()),
+        same(
+            "unknown unit `w`: a power is needed",
+            "did you mean `W`?",
+            "write it like `55 W`"
+        )
+    );
+}
+
+/// Cut and mangled texts never panic, and an error's range always lies within the text.
+#[test]
+fn any_text_is_answered() {
+    let seeds = [
+        "16 A at 3600 rpm into 14 V ± 8 %",
+        "1 h 20 min",
+        "−10 °C ± 5 F",
+        "2/0 AWG",
+        "8 × for 0.2 s",
+        "5,5e+400±nan%",
+    ];
+    for seed in seeds {
+        for (at, _) in seed.char_indices() {
+            for end in seed[at..]
+                .char_indices()
+                .map(|(i, _)| at + i)
+                .chain([seed.len()])
+            {
+                let text = &seed[at..end];
+                let results = [
+                    parse::<Watts>(text).err(),
+                    parse::<Hours>(text).err(),
+                    parse::<SquareMm>(text).err(),
+                    parse::<Celsius>(text).err(),
+                    rated(text).err(),
+                    at_speed::<Volts>(text).err(),
+                    between(text).err(),
+                    surge(text).err(),
+                    whole(text).err(),
+                    factor(text).err(),
+                ];
+                for e in results.into_iter().flatten() {
+                    assert!(text.get(e.range.clone()).is_some(), "{text:?}: {e:?}");
+                }
+            }
+        }
+    }
+}
