@@ -139,3 +139,6 @@ pub(super) const RESERVE_RATE_LEAST: f64 = 2.0;
 /// Cranking rating over 20 h capacity, A/Ah, above which the label is doubted.
 /// Own choice: common starting batteries have 6 to 13.
 pub(super) const CRANKING_MOST: f64 = 15.0;
+
+/// Most attempts to start that are reckoned one by one. Own choice.
+pub(super) const ATTEMPTS_MOST: u32 = 1000;

@@ -30,16 +30,23 @@ mod calibrate;
 mod cell;
 mod climate;
 pub mod constants;
+mod crank;
+mod gassing;
 mod label;
 mod note;
+mod rundown;
+mod storage;
 pub mod tables;
 mod terminals;
 #[cfg(test)]
 mod worked;
 
 pub use climate::{Charge, Climate, Rates};
+pub use crank::{Binds, Cranked, FREEZING_MARGIN, LEAST_CHARGE, StartFloor, StartMargin, Starter};
 pub use label::{Chemistry, Label};
 pub use note::Note;
+pub use rundown::Rundown;
+pub use storage::RECHARGE_AT;
 pub use terminals::{BatteryCurrent, Terminals};
 
 use crate::quantity::{AmpHours, Amps, Celsius, Fraction, Ohms, Volts};

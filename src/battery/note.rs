@@ -1,6 +1,7 @@
 //! What was assumed or mended while a label was turned into a battery.
 
-use crate::quantity::{Amps, Fraction, Hours, Ohms, Volts};
+use crate::quantity::format::text;
+use crate::quantity::{Amps, Fraction, Hours, Minutes, Ohms, Volts};
 use std::fmt;
 
 /// One thing the label left open, or stated beyond what the equations can hold.
@@ -57,47 +58,52 @@ pub enum Note {
 
 impl fmt::Display for Note {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        match self {
+        match *self {
             Note::ReserveAssumed { exponent } => {
                 write!(
                     f,
-                    "no reserve capacity stated, Peukert exponent {} assumed",
+                    "no reserve capacity stated, Peukert exponent {:.2} assumed",
                     exponent.0
                 )
             }
-            Note::ReserveInconsistent { stated, used } => write!(
-                f,
-                "reserve capacity of {:.0} min does not go with the 20 h capacity, {:.0} min used",
-                stated.minutes(),
-                used.minutes()
-            ),
-            Note::ReserveTooSlow { amps } => {
+            Note::ReserveInconsistent { stated, used } => {
+                let (stated, used) = (text(Minutes::from(stated)), text(Minutes::from(used)));
                 write!(
                     f,
-                    "reserve current of {:.0} A is too near the 20 h current to be used",
-                    amps.0
+                    "`reserve_capacity` of {stated} does not go with the 20 h capacity, {used} used"
+                )
+            }
+            Note::ReserveTooSlow { amps } => {
+                let amps = text(amps);
+                write!(
+                    f,
+                    "reserve current of {amps} is too near the 20 h current to be used"
                 )
             }
             Note::CrankingAssumed { amps } => {
-                write!(f, "no cold-cranking rating stated, {:.0} A assumed", amps.0)
+                write!(f, "no cold-cranking rating stated, {} assumed", text(amps))
             }
             Note::CrankingHigh { amps } => {
+                let amps = text(amps);
                 write!(
                     f,
-                    "{:.0} A of cranking is implausibly high for the capacity",
-                    amps.0
+                    "`cold_cranking` of {amps} is implausibly high for the capacity"
                 )
             }
-            Note::ResistanceFloored { used } => write!(
-                f,
-                "cranking rating leaves no resistance, {:.2} mohm used",
-                used.0 * 1000.0
-            ),
-            Note::RestVoltsUnusable { full, empty } => write!(
-                f,
-                "rest volts of {:.2} V full and {:.2} V empty are no lead-acid battery's, usual ones used",
-                full.0, empty.0
-            ),
+            Note::ResistanceFloored { used } => {
+                let used = text(used);
+                write!(
+                    f,
+                    "`cold_cranking` leaves the battery no resistance, {used} used"
+                )
+            }
+            Note::RestVoltsUnusable { full, empty } => {
+                let (full, empty) = (text(full), text(empty));
+                write!(
+                    f,
+                    "rest volts of {full} full and {empty} empty are no lead-acid battery's, the usual used"
+                )
+            }
             Note::OutOfRange { what } => {
                 write!(
                     f,

@@ -2,8 +2,8 @@
 //! each function, for one 45 Ah flooded battery.
 
 use super::cell::Cell;
-use super::{Battery, Charge, Chemistry, Label};
-use crate::quantity::{AmpHours, Amps, Celsius, Fraction, Hours, Volts};
+use super::{Battery, Binds, Charge, Chemistry, Label, StartFloor, Starter};
+use crate::quantity::{AmpHours, Amps, Celsius, Fraction, Hours, Ohms, Volts};
 
 /// 45 Ah, 70 min reserve capacity, 400 A cold cranking, 12 V, flooded.
 pub(super) fn battery() -> Battery {
@@ -120,4 +120,92 @@ fn capacity_from_other_ratings() {
         Chemistry::Flooded.capacity_from_cranking(Amps(400.0)).0,
         50.0,
     );
+}
+
+/// 120 A at 27 °C, three attempts of 5 s, 10 s apart, 4 mohm of cable.
+fn starter() -> Starter {
+    Starter {
+        cable: Ohms(0.004),
+        ..Starter::new(Amps(120.0))
+    }
+}
+
+#[test]
+fn cold_start() {
+    let b = battery();
+    let air = Celsius(0.0);
+    close(starter().draw_at(air).0, 186.0);
+    let end = b.crank(charge(0.7, 0.0), &starter(), air);
+    close(end.starter.0, 9.413_22);
+    close(end.charge.soc.0, 0.683_987);
+    close(end.charge.depletion.0, 0.097_784);
+    close(end.battery.0 - end.starter.0, 186.0 * 0.004);
+    let StartFloor::Down {
+        to,
+        binds: Binds::Cranking,
+    } = b.start_floor(&starter(), air)
+    else {
+        panic!("cranking must bind")
+    };
+    close(to.0, 0.481_485_09);
+    let margin = b.start_margin(charge(0.7, 0.0), &starter(), air);
+    close(margin.volts.0 + 9.0, 9.413_22);
+    close(
+        margin.charge.map_or(0.0, |q| q.0),
+        48.397_335 * (0.7 - 0.481_485_09),
+    );
+}
+
+#[test]
+fn days_until_it_does_not_crank() {
+    let b = battery();
+    let floor = Fraction(0.481_485_09);
+    let days = |parasitic| {
+        b.storage_time(Fraction::ONE, floor, Amps(parasitic), Celsius(0.0))
+            .map(|t| t.0 / 24.0)
+    };
+    close(days(0.020).unwrap_or(0.0), 51.395);
+    // A maintaining charger outweighs the self-discharge: never.
+    assert_eq!(days(-0.020), None);
+    assert_eq!(
+        b.storage_time(floor, floor, Amps(0.02), Celsius(0.0)),
+        Some(Hours::ZERO)
+    );
+    // Without self-discharge it would be 48.397 Ah · 0.3 / 1 A; 1 A dwarfs it.
+    let soon = b.recharge_after(Fraction::ONE, floor, Amps(1.0), Celsius(0.0));
+    let hours = soon.map_or(0.0, |t| t.0);
+    assert!(
+        hours < 48.397_335 * 0.3 && hours > 48.397_335 * 0.3 * 0.995,
+        "{hours}"
+    );
+}
+
+#[test]
+fn overcharge_splits_water() {
+    let b = battery();
+    // K055 of the fact sheet: 6 · 3600/(2 · 96485) · 24.465 L, Faraday's law.
+    close(b.hydrogen_freed(AmpHours(1.0)).0, 2.738_47);
+    // 18.015 g · 3600/(2 · 96485) a cell.
+    close(b.water_lost(AmpHours(1.0)).0, 6.0 * 0.336_083);
+    let mat = Battery::from_label(&Label::new(Chemistry::Agm, AmpHours(45.0)));
+    close(mat.water_lost(AmpHours(1.0)).0, 0.05 * 6.0 * 0.336_083);
+}
+
+#[test]
+fn rundown_ends_where_the_capacity_law_says() {
+    let b = battery();
+    let air = Celsius(25.0);
+    // Sooner by what the ohmic drop adds to the knee: more at the higher current.
+    for (amps, tolerance) in [(2.25, 0.005), (10.0, 0.01), (25.0, 0.015)] {
+        let end = b.rundown(Charge::FULL, Amps(amps), b.end_of_discharge(), air);
+        let taken = end.map_or(0.0, |end| end.taken.0);
+        let law = b.capacity_at(Amps(amps), air).0;
+        assert!(
+            (taken / law - 1.0).abs() < tolerance,
+            "{amps} A: {taken} for {law}"
+        );
+    }
+    assert_eq!(b.rundown(Charge::FULL, Amps(0.0), Volts(10.5), air), None);
+    let dead = b.rundown(charge(0.0, 0.0), Amps(5.0), Volts(10.5), air);
+    assert_eq!(dead.map(|end| end.taken), Some(AmpHours(0.0)));
 }

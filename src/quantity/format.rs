@@ -19,7 +19,7 @@
 //! ```
 
 use super::{
-    AmpHours, Amps, Celsius, Fraction, Grams, Henries, Hertz, Hours, Kelvins, Metres, Minutes,
+    AmpHours, Amps, Celsius, Fraction, Grams, Henries, Hertz, Hours, Kelvins, Litres, Metres, Minutes,
     Money, Ohms, Rpm, SquareMm, Volts, VoltsPerKelvin, VoltsPerRpm, WattHours, Watts,
 };
 
@@ -75,6 +75,7 @@ written! {
     VoltsPerKelvin "mV/K" "mV" 1e3 3;
     Money "" "" 1.0 3;
     Grams "g" "g" 1.0 3;
+    Litres "L" "L" 1.0 3;
 }
 
 /// A number with a fixed count of decimals, true minus, no negative zero.

@@ -145,6 +145,10 @@ quantity!(
     /// A mass, grams.
     Grams
 );
+quantity!(
+    /// A volume of gas, litres.
+    Litres
+);
 
 impl Hours {
     /// From minutes.
