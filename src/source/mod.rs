@@ -16,16 +16,25 @@
 //! # Ok::<(), ampledger::source::WindingError>(())
 //! ```
 
+mod alternator;
 mod bridge;
+mod constants;
 mod half_wave;
+mod inductance;
 mod lamps;
 mod rectifier;
 mod regulator;
 mod segment;
 mod short_circuit;
+mod temperature;
 mod three_phase;
 mod winding;
 
+pub use alternator::{CurveError, HOT_DERATING_PER_KELVIN, OutputCurve};
+pub use constants::{
+    Constants, ConstantsError, Known, Rating, TYPICAL_RESISTIVE_SHARE, Typical,
+    typical_open_circuit,
+};
 pub use lamps::{AcOutput, lamps_on_ac};
 pub use rectifier::{Conduction, Output, Rectifier, cut_in_speed, rectified, rectified_dc};
 pub use regulator::{
@@ -33,4 +42,5 @@ pub use regulator::{
     shunt_regulated_heat,
 };
 pub use short_circuit::{copper_loss, short_circuit, short_circuit_through};
+pub use temperature::{COPPER_PER_KELVIN, MEASURED_AT, Magnets, Working, copper_at, copper_factor};
 pub use winding::{Phases, Winding, WindingError};
