@@ -18,10 +18,13 @@
 
 mod alternator;
 mod bridge;
+mod coil_bridge;
+mod coil_half_wave;
 mod constants;
 mod half_wave;
 mod inductance;
 mod lamps;
+mod no_battery;
 mod rectifier;
 mod regulator;
 mod segment;
@@ -36,6 +39,10 @@ pub use constants::{
     typical_open_circuit,
 };
 pub use lamps::{AcOutput, lamps_on_ac};
+pub use no_battery::{
+    CircuitError, CircuitLoad, CircuitOutput, coil_on_bridge, half_wave_coil, without_battery,
+    without_battery_loaded,
+};
 pub use rectifier::{Conduction, Output, Rectifier, cut_in_speed, rectified, rectified_dc};
 pub use regulator::{
     Range, SHUNT_HEAT_SPREAD, series_regulated_heat, series_regulated_rms, share_needed,

@@ -123,7 +123,12 @@ impl Segment {
 
     /// Where the current falls through zero between `low` and `high`; `low` when it has not risen at all there.
     pub(super) fn ends(&self, low: f64, high: f64) -> f64 {
-        root::falling(|t| self.above(t, 0.0), low, high)
+        self.falls_to(0.0, low, high)
+    }
+
+    /// Where the current falls through `level` between `low` and `high`; `low` when it is not above it there.
+    pub(super) fn falls_to(&self, level: f64, low: f64, high: f64) -> f64 {
+        root::falling(|t| self.above(t, level), low, high)
     }
 
     /// Where the current rises through `level` between `low` and `high`.
