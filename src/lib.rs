@@ -1,7 +1,14 @@
 //! ampledger plans the electrical load budget of engine-driven equipment.
 
 pub mod battery;
+pub mod build;
+pub mod bus;
 pub mod catalog;
+pub mod check;
+pub mod description;
+pub mod ledger;
+pub mod load;
+pub mod outlook;
 pub mod quantity;
 pub mod root;
 pub mod source;

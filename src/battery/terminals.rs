@@ -143,6 +143,14 @@ impl Terminals {
         Volts(self.emf * self.cells)
     }
 
+    /// Volts across the terminals at a current of the main branch alone, gas left out: the
+    /// closed form of the equation at [`current`](Terminals::current). A near bound of
+    /// [`volts`](Terminals::volts) from above.
+    #[must_use]
+    pub fn main_branch_volts(&self, main: Amps) -> Volts {
+        Volts(self.main_volts(main.0) * self.cells)
+    }
+
     /// Main current at a cell voltage, A.
     fn main(&self, cell_volts: f64) -> f64 {
         let x = cell_volts - self.emf;

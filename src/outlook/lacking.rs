@@ -1,0 +1,201 @@
+//! The charge that is lacking, and the current that is to spare.
+//!
+//! Both are one question: which constant current, added on the bus while the engine runs, puts
+//! the build on the edge of keeping up? Above zero it is lacking, below zero to spare. On the
+//! edge the settled cycle just touches the reserve. So the cycle is begun where it is lowest, at
+//! the reserve, and the current sought with which it comes back to it.
+
+use crate::battery::Charge;
+use crate::build::State;
+use crate::ledger::Machine;
+use crate::quantity::{AmpHours, Amps, Fraction, Hours};
+use crate::root::bracketed;
+
+/// A current beyond any source's: held at the highest setpoint whatever is drawn.
+const BEYOND: f64 = 1e5;
+/// Width to which the current is found, A; the answer is taken on the side that holds.
+const CLOSE: f64 = 1e-7;
+/// Width, as a share, to which a current is halved out where the touching cycle does not tell.
+const HALVED_TO: f64 = 2e-4;
+/// Times the lowest point of the cycle is looked for anew.
+const MOST_TURNS: u32 = 4;
+
+/// What is lacking.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Lacking {
+    /// This much charge each shift, as this current over the engine's running time.
+    Charge {
+        /// In each shift.
+        charge: AmpHours,
+        /// While the engine runs.
+        current: Amps,
+    },
+    /// No charging while the engine runs can help.
+    BeyondCharging,
+}
+
+/// Where the added current flows.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Spread {
+    /// In every running state.
+    Everywhere,
+    /// In one state only.
+    In(State),
+}
+
+/// A cycle begun at its lowest point with the reserve.
+#[derive(Clone, Copy, Debug)]
+struct Turn {
+    from: usize,
+    depletion: Fraction,
+}
+
+impl Machine {
+    /// The least current that makes it keep up from a full battery; for a build that does not.
+    #[must_use]
+    pub fn lacking(&self, reserve: Fraction) -> Lacking {
+        let hours = self.running_a_shift();
+        match self.edge(reserve, Spread::Everywhere) {
+            Some(current) if hours > Hours::ZERO => Lacking::Charge { charge: (current * hours).max(AmpHours::ZERO), current },
+            _ => Lacking::BeyondCharging,
+        }
+    }
+
+    /// The constant current on the edge of keeping up: above zero lacking, below zero to spare.
+    /// None if no current reaches the edge.
+    #[must_use]
+    pub fn edge(&self, reserve: Fraction, spread: Spread) -> Option<Amps> {
+        let mut search = Search {
+            machine: self.clone(),
+            spread,
+            reserve,
+            turn: Turn { from: 0, depletion: Fraction::ZERO },
+        };
+        let touching = search.current_for(|search| search.gain_touching())?;
+        Some(Amps(search.held_up_from_full(touching)))
+    }
+}
+
+/// A search for the current at the edge.
+struct Search {
+    machine: Machine,
+    spread: Spread,
+    reserve: Fraction,
+    turn: Turn,
+}
+
+impl Search {
+    fn add(&mut self, current: f64) {
+        match self.spread {
+            Spread::Everywhere => self.machine.set_extra(Amps(current)),
+            Spread::In(state) => self.machine.set_extra_in(state, Amps(current)),
+        }
+    }
+
+    /// The current at which a gain of charge over the cycle is nought.
+    fn current_for(&mut self, gain_of: impl Fn(&mut Search) -> f64) -> Option<f64> {
+        let mut gain = |current: f64| {
+            self.add(current);
+            gain_of(self)
+        };
+        let here = gain(0.0);
+        let capacity = self.machine.battery.cmax().0 / self.machine.running.0.max(1e-6);
+        let step = (1.2 * here.abs() * capacity).max(0.01);
+        let mut gain = |current: f64| {
+            self.add(current);
+            gain_of(self)
+        };
+        let (mut low, mut high) = ((0.0, here), (0.0, here));
+        if here < 0.0 {
+            if gain(BEYOND) < 0.0 {
+                return None;
+            }
+            let mut reach = step;
+            while high.1 < 0.0 {
+                low = high;
+                high = (reach, gain(reach));
+                reach *= 2.0;
+            }
+        } else {
+            let mut reach = step;
+            while low.1 >= 0.0 {
+                if low.0 < -BEYOND {
+                    return None;
+                }
+                high = low;
+                low = (-reach, gain(-reach));
+                reach *= 2.0;
+            }
+        }
+        let known = [low, high];
+        let root = bracketed(
+            |x| known.iter().find(|(at, _)| *at == x).map_or_else(|| gain(x), |(_, gain)| *gain),
+            low.0,
+            high.0,
+            CLOSE,
+        );
+        root.ok().map(|x| x + CLOSE)
+    }
+
+    /// The edge when a full battery holds itself up with less current than the touching cycle
+    /// needs, as constant powers allow: halved out between that and a current that fails.
+    fn held_up_from_full(&mut self, touching: f64) -> f64 {
+        let width = CLOSE.max(HALVED_TO * touching.abs());
+        let mut holds = touching;
+        let mut reach = 4.0 * width;
+        let mut fails = loop {
+            let lower = holds - reach;
+            if !self.keeps_up(lower) {
+                break lower;
+            }
+            if lower < -BEYOND {
+                return lower;
+            }
+            holds = lower;
+            reach *= 4.0;
+        };
+        while holds - fails > width {
+            let middle = 0.5 * (holds + fails);
+            if self.keeps_up(middle) {
+                holds = middle;
+            } else {
+                fails = middle;
+            }
+        }
+        holds
+    }
+
+    fn keeps_up(&mut self, current: f64) -> bool {
+        self.add(current);
+        self.machine.outlook(Charge::FULL, self.reserve).keeps_up()
+    }
+
+    /// Gain of charge over a cycle that just touches the reserve. `turn` carries the lowest
+    /// point and the depletion there from one call to the next.
+    fn gain_touching(&mut self) -> f64 {
+        let (machine, reserve, turn) = (&self.machine, self.reserve, &mut self.turn);
+        let mut start = reserve;
+        let mut gain = f64::NAN;
+        for _ in 0..MOST_TURNS {
+            let passed = machine.pass_around(turn.from, Charge { soc: start, depletion: turn.depletion });
+            gain = passed.end.soc.0 - start.0;
+            turn.depletion = passed.end.depletion;
+            let under = reserve.0 - passed.lowest.0;
+            if under <= 1e-10 {
+                break;
+            }
+            let lowest_at = passed.lowest_after % machine.cycle.len();
+            if lowest_at == turn.from {
+                if gain < 0.0 && (passed.lowest.0 - passed.end.soc.0).abs() < 1e-12 {
+                    break;
+                }
+                start += Fraction(under);
+            } else {
+                turn.from = lowest_at;
+                turn.depletion = Fraction::ZERO;
+                start = reserve;
+            }
+        }
+        gain
+    }
+}

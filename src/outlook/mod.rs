@@ -1,0 +1,11 @@
+//! What becomes of the charge, shift after shift: where it settles, when it breaks the reserve,
+//! how much charge is lacking and how much is to spare.
+
+mod lacking;
+mod settle;
+
+#[cfg(test)]
+mod tests;
+
+pub use lacking::{Lacking, Spread};
+pub use settle::Outlook;

@@ -1,0 +1,167 @@
+//! Where the charge settles when the cycle is repeated without end, or when it breaks.
+//!
+//! The charge at the beginning of a cycle maps to that at its end: s' = F(s). F rises with s, so
+//! from a full battery the charges fall to the greatest fixed point of F, or through the reserve.
+//! Plain repetition is the definition ([`Machine::repeat`]); here the fixed point is found by
+//! root search, which gives the same answer in a dozen cycles.
+
+use crate::battery::Charge;
+use crate::ledger::Machine;
+use crate::quantity::Fraction;
+use crate::root::bracketed;
+
+/// Cycles repeated plainly before the fixed point is searched for.
+const PLAIN: u32 = 3;
+/// Change of charge over a cycle that counts as none.
+const STILL: f64 = 1e-9;
+/// Where between the touching cycle (0) and the charge reached (1) a cycle that holds itself up
+/// is looked for, from the top.
+const PROBES: [f64; 6] = [0.95, 0.8, 0.6, 0.4, 0.2, 0.0];
+/// Most rounds of any search here; each closes in by a fixed factor or stops.
+const MOST_ROUNDS: u32 = 60;
+/// Most cycles counted one by one towards a break.
+const MOST_CYCLES: u32 = 20_000;
+
+/// What repeating the cycle without end comes to.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Outlook {
+    /// The charge settles and never goes under the reserve.
+    Settles {
+        /// Charge at the beginning of each cycle.
+        charge: Charge,
+        /// Lowest charge in it.
+        lowest: Fraction,
+    },
+    /// A shift breaks the reserve.
+    Breaks {
+        /// Shifts carried before it.
+        shifts: u32,
+        /// Charge at the beginning of the cycle that breaks it.
+        begins: Charge,
+    },
+}
+
+impl Outlook {
+    /// Whether it keeps up without end.
+    #[must_use]
+    pub fn keeps_up(&self) -> bool {
+        matches!(self, Outlook::Settles { .. })
+    }
+}
+
+impl Machine {
+    /// What repeating the cycle from a charge comes to.
+    #[must_use]
+    pub fn outlook(&self, start: Charge, reserve: Fraction) -> Outlook {
+        if start.soc < reserve {
+            return Outlook::Breaks { shifts: 0, begins: start };
+        }
+        let mut charge = start;
+        let mut last = None;
+        for cycle in 0..PLAIN {
+            let passed = self.pass(charge, reserve);
+            if let Some(shift) = passed.broke {
+                return Outlook::Breaks { shifts: cycle * self.shifts + shift, begins: charge };
+            }
+            let change = passed.end.soc - charge.soc;
+            last = Some(passed.lowest);
+            if change.0.abs() < STILL {
+                return Outlook::Settles { charge: passed.end, lowest: passed.lowest };
+            }
+            charge = passed.end;
+        }
+        let lowest = last.unwrap_or(charge.soc);
+        match self.fixed_point(charge, lowest, reserve) {
+            Some((charge, lowest)) => Outlook::Settles { charge, lowest },
+            None => self.count(charge, reserve, PLAIN),
+        }
+    }
+
+    /// Plain repetition: the definition, for at most `cycles` cycles.
+    #[must_use]
+    pub fn repeat(&self, start: Charge, reserve: Fraction, cycles: u32) -> Outlook {
+        let mut charge = start;
+        let mut lowest = start.soc;
+        for cycle in 0..cycles {
+            let passed = self.pass(charge, reserve);
+            if let Some(shift) = passed.broke {
+                return Outlook::Breaks { shifts: cycle * self.shifts + shift, begins: charge };
+            }
+            let still = (passed.end.soc - charge.soc).abs() < Fraction(1e-12);
+            charge = passed.end;
+            lowest = passed.lowest;
+            if still {
+                break;
+            }
+        }
+        Outlook::Settles { charge, lowest }
+    }
+
+    fn count(&self, charge: Charge, reserve: Fraction, before: u32) -> Outlook {
+        match self.repeat(charge, reserve, MOST_CYCLES) {
+            Outlook::Breaks { shifts, begins } => Outlook::Breaks { shifts: before * self.shifts + shifts, begins },
+            settled => settled,
+        }
+    }
+
+    /// A fixed point whose cycle holds the reserve, if one is found.
+    ///
+    /// `charge` has been reached by repetition, `lowest` is the lowest of the cycle before it.
+    /// While the charge falls, a fixed point lies below it if some cycle between here and the
+    /// one that just touches the reserve ends no lower than it began. (Constant powers draw more
+    /// amps the lower the bus, so a build can hold itself up from a full battery and not from a
+    /// low one: the touching cycle alone does not tell.)
+    fn fixed_point(&self, charge: Charge, lowest: Fraction, reserve: Fraction) -> Option<(Charge, Fraction)> {
+        let at = |soc: f64| {
+            let passed = self.pass_around(0, Charge { soc: Fraction(soc), depletion: charge.depletion });
+            (passed.end.soc.0 - soc, passed)
+        };
+        let (here, passed) = at(charge.soc.0);
+        let (low, high) = if here >= 0.0 {
+            if passed.lowest < reserve {
+                return None;
+            }
+            ((charge.soc.0, here), (1.0, at(1.0).0))
+        } else {
+            let touching = self.touching(charge, lowest, reserve)?;
+            let span = charge.soc.0 - touching;
+            let mut high = (charge.soc.0, here);
+            let held = PROBES.iter().find_map(|share| {
+                let soc = touching + share * span;
+                let gain = at(soc).0;
+                if gain < 0.0 {
+                    high = (soc, gain);
+                }
+                (gain >= 0.0).then_some((soc, gain))
+            });
+            (held?, high)
+        };
+        let soc = if high.1 >= 0.0 {
+            high.0
+        } else {
+            let ends = [low, high];
+            let gain = |x: f64| ends.iter().find(|end| end.0 == x).map_or_else(|| at(x).0, |end| end.1);
+            bracketed(gain, low.0, high.0, STILL).ok()?
+        };
+        let (_, passed) = at(soc);
+        Some((Charge { soc: Fraction(soc), ..passed.end }, passed.lowest.max(reserve)))
+    }
+
+    /// The charge at the beginning of the cycle whose lowest charge is the reserve; none if that
+    /// is not below the charge reached.
+    fn touching(&self, charge: Charge, lowest: Fraction, reserve: Fraction) -> Option<f64> {
+        let mut soc = charge.soc.0 - (lowest.0 - reserve.0);
+        for _ in 0..MOST_ROUNDS {
+            if soc >= charge.soc.0 || soc < 0.0 {
+                return None;
+            }
+            let passed = self.pass_around(0, Charge { soc: Fraction(soc), depletion: charge.depletion });
+            let over = passed.lowest.0 - reserve.0;
+            if over.abs() < 1e-10 {
+                break;
+            }
+            soc -= over;
+        }
+        Some(soc)
+    }
+}
