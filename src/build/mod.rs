@@ -8,7 +8,7 @@ pub mod source;
 pub use accessory::{Accessory, Draw, Duty, Inrush, Works};
 pub use source::{Alternator, Regulator, Source, SourceKind, WindingSource};
 
-use crate::battery::Label;
+use crate::battery::{self, Label};
 use crate::quantity::{Amps, Celsius, Fraction, Hours, Money, Ohms, Rpm, Tolerance, Volts};
 
 /// Where a number comes from.
@@ -107,6 +107,21 @@ pub struct Starter {
     pub least_volts: Option<Figure<Volts>>,
 }
 
+impl Starter {
+    /// What its starts ask of the battery.
+    #[must_use]
+    pub fn asks(&self) -> battery::Starter {
+        battery::Starter {
+            draw: self.draw.value,
+            time: self.time.value,
+            attempts: self.starts.value,
+            rest: self.rest.value,
+            cable: self.cable.value,
+            least: self.least_volts.as_ref().map(|v| v.value),
+        }
+    }
+}
+
 /// The battery: its label, and what the user wants kept in it.
 #[derive(Clone, Debug)]
 pub struct BatterySpec {
@@ -175,7 +190,10 @@ impl Build {
     #[must_use]
     pub fn state_name(&self, state: State) -> &str {
         match state {
-            State::Running(speed) => self.speeds.get(speed).map_or("running", |s| s.name.as_str()),
+            State::Running(speed) => self
+                .speeds
+                .get(speed)
+                .map_or("running", |s| s.name.as_str()),
             State::Crank => "crank",
             State::Stopped => "stopped",
             State::Parked => "parked",

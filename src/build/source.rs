@@ -2,8 +2,10 @@
 
 use super::Figure;
 use crate::description::charging::RegulatorKind;
-use crate::quantity::{Amps, Celsius, Fraction, Henries, Kelvins, Money, Ohms, Rpm, Volts, VoltsPerKelvin};
-use crate::source::{Magnets, Rectifier, Winding};
+use crate::quantity::{
+    Amps, Celsius, Fraction, Henries, Kelvins, Money, Ohms, Rpm, Volts, VoltsPerKelvin,
+};
+use crate::source::{Magnets, OutputCurve, Rectifier, Winding};
 
 /// One source of current.
 #[derive(Clone, Debug)]
@@ -65,8 +67,8 @@ pub struct WindingSource {
 /// A belt-driven alternator.
 #[derive(Clone, Debug)]
 pub struct Alternator {
-    /// Output curve: alternator speed and amps, rising in speed.
-    pub curve: Vec<(Rpm, Amps)>,
+    /// Output curve by alternator speed.
+    pub curve: OutputCurve,
     /// Alternator turns for one of the engine.
     pub ratio: Figure<Fraction>,
     /// Bus volts the curve was taken at.
@@ -91,5 +93,14 @@ impl Regulator {
     #[must_use]
     pub fn setpoint(&self, air: Celsius) -> Volts {
         self.holds.value + self.per_degree * air.above(Celsius(25.0))
+    }
+}
+
+impl Alternator {
+    /// Amps at an engine speed, whatever the bus volts below the setpoint (to first order a
+    /// belt-driven alternator's output does not depend on them).
+    #[must_use]
+    pub fn output(&self, engine: Rpm) -> Amps {
+        self.curve.driven(engine, self.ratio.value, self.hotter)
     }
 }

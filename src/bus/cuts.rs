@@ -23,7 +23,10 @@ impl Cuts {
         let mut all: Vec<f64> = limits.map(|v| v.0).collect();
         all.sort_by(f64::total_cmp);
         all.dedup();
-        Cuts { limits: all, width: LETTING_GO_CELL * f64::from(cells) }
+        Cuts {
+            limits: all,
+            width: LETTING_GO_CELL * f64::from(cells),
+        }
     }
 
     /// Number of classes, the one without a limit counted.
@@ -35,7 +38,9 @@ impl Cuts {
     /// The class of a lower limit.
     #[must_use]
     pub fn class(&self, limit: Option<Volts>) -> usize {
-        limit.and_then(|v| self.limits.iter().position(|l| *l == v.0)).map_or(0, |k| k + 1)
+        limit
+            .and_then(|v| self.limits.iter().position(|l| *l == v.0))
+            .map_or(0, |k| k + 1)
     }
 
     /// Whether nothing ever drops out.

@@ -52,7 +52,14 @@ struct Sums {
 }
 
 impl Sums {
-    fn add(&mut self, share: f64, volts: f64, loads: f64, terminals: &Terminals, climate: &Climate) {
+    fn add(
+        &mut self,
+        share: f64,
+        volts: f64,
+        loads: f64,
+        terminals: &Terminals,
+        climate: &Climate,
+    ) {
         let battery = terminals.current(Volts(volts));
         self.share += share;
         self.battery += share * battery.total.0;
@@ -69,7 +76,11 @@ impl Sums {
         let w = 1.0 / self.share.max(f64::MIN_POSITIVE);
         let (loads, bus) = (w * self.loads, w * self.bus);
         let spread = w * self.loads2 - loads * loads;
-        let gives = if spread > 1e-9 { (w * self.bus_loads - loads * bus) / spread } else { 0.0 };
+        let gives = if spread > 1e-9 {
+            (w * self.bus_loads - loads * bus) / spread
+        } else {
+            0.0
+        };
         Flow {
             battery: Amps(w * self.battery),
             main: Amps(w * self.main),
@@ -100,11 +111,24 @@ pub fn flow(bus: &Bus<'_>, cases: &Coincidences, cuts: &Cuts, climate: &Climate)
 }
 
 /// Every case by itself, accessories dropping out below their limits.
-fn with_cuts(bus: &Bus<'_>, cases: &Coincidences, cuts: &Cuts, climate: &Climate, boundaries: &[Boundary], sums: &mut Sums) {
+fn with_cuts(
+    bus: &Bus<'_>,
+    cases: &Coincidences,
+    cuts: &Cuts,
+    climate: &Climate,
+    boundaries: &[Boundary],
+    sums: &mut Sums,
+) {
     for (case, (share, _)) in cases.cases().enumerate() {
         let draw = cuts.gated(cases.by_class(case));
         let volts = bus.operating_point(&draw, boundaries);
-        sums.add(share.0, volts, draw.drawn(volts, bus.filaments).0, bus.terminals, climate);
+        sums.add(
+            share.0,
+            volts,
+            draw.drawn(volts, bus.filaments).0,
+            bus.terminals,
+            climate,
+        );
     }
 }
 
@@ -116,14 +140,28 @@ struct Region<'c> {
     cases: Vec<(f64, &'c LoadSum)>,
 }
 
-fn by_region(bus: &Bus<'_>, cases: &Coincidences, climate: &Climate, boundaries: &[Boundary], sums: &mut Sums) {
+fn by_region(
+    bus: &Bus<'_>,
+    cases: &Coincidences,
+    climate: &Climate,
+    boundaries: &[Boundary],
+    sums: &mut Sums,
+) {
     let mut regions: Vec<Region<'_>> = Vec::with_capacity(boundaries.len() + 1);
     let mut high = bus.high;
     for boundary in boundaries {
-        regions.push(Region { low: boundary.volts, high, cases: Vec::new() });
+        regions.push(Region {
+            low: boundary.volts,
+            high,
+            cases: Vec::new(),
+        });
         high = boundary.volts;
     }
-    regions.push(Region { low: bus.low, high, cases: Vec::new() });
+    regions.push(Region {
+        low: bus.low,
+        high,
+        cases: Vec::new(),
+    });
     let mut held: Vec<(f64, f64)> = vec![(0.0, 0.0); boundaries.len()];
     'cases: for (share, sum) in cases.cases() {
         for (k, boundary) in boundaries.iter().enumerate() {
@@ -144,7 +182,13 @@ fn by_region(bus: &Bus<'_>, cases: &Coincidences, climate: &Climate, boundaries:
     }
     for (boundary, (share, drawn)) in boundaries.iter().zip(&held) {
         if *share > 0.0 {
-            sums.add(*share, boundary.volts, drawn / share, bus.terminals, climate);
+            sums.add(
+                *share,
+                boundary.volts,
+                drawn / share,
+                bus.terminals,
+                climate,
+            );
         }
     }
     for region in &regions {
@@ -161,9 +205,19 @@ impl Region<'_> {
             return;
         }
         let at = At::new(Volts(bus.terminals.emf().0), bus.filaments);
-        let loads: Vec<f64> = self.cases.iter().map(|(_, sum)| sum.current(at).0).collect();
+        let loads: Vec<f64> = self
+            .cases
+            .iter()
+            .map(|(_, sum)| sum.current(at).0)
+            .collect();
         let share: f64 = self.cases.iter().map(|c| c.0).sum();
-        let mean = self.cases.iter().zip(&loads).map(|(c, i)| c.0 * i).sum::<f64>() / share;
+        let mean = self
+            .cases
+            .iter()
+            .zip(&loads)
+            .map(|(c, i)| c.0 * i)
+            .sum::<f64>()
+            / share;
         for heavy in [false, true] {
             let half: Vec<(f64, f64, &LoadSum)> = self
                 .cases
@@ -180,7 +234,13 @@ impl Region<'_> {
 
     fn solve(&self, bus: &Bus<'_>, climate: &Climate, share: f64, sum: &LoadSum, sums: &mut Sums) {
         let volts = bus.balance(sum, self.low, self.high, bus.guess(sum));
-        sums.add(share, volts, sum.drawn(volts, bus.filaments).0, bus.terminals, climate);
+        sums.add(
+            share,
+            volts,
+            sum.drawn(volts, bus.filaments).0,
+            bus.terminals,
+            climate,
+        );
     }
 }
 
@@ -201,14 +261,25 @@ fn nodes(cases: &[(f64, f64, &LoadSum)]) -> Vec<(f64, LoadSum)> {
         return cases.iter().map(|(p, _, sum)| (*p, **sum)).collect();
     }
     let mean = cases.iter().map(|(p, i, _)| p * i).sum::<f64>() / share;
-    let moment = |n: i32| cases.iter().map(|(p, i, _)| p * (i - mean).powi(n)).sum::<f64>() / share;
-    let centre: LoadSum = cases.iter().map(|(p, _, sum)| sum.share(Fraction(p / share))).sum();
+    let moment = |n: i32| {
+        cases
+            .iter()
+            .map(|(p, i, _)| p * (i - mean).powi(n))
+            .sum::<f64>()
+            / share
+    };
+    let centre: LoadSum = cases
+        .iter()
+        .map(|(p, _, sum)| sum.share(Fraction(p / share)))
+        .sum();
     let variance = moment(2);
     if variance < 1e-12 {
         return vec![(share, centre)];
     }
-    let tilt: LoadSum =
-        cases.iter().map(|(p, i, sum)| sum.share(Fraction(p * (i - mean) / (share * variance)))).sum();
+    let tilt: LoadSum = cases
+        .iter()
+        .map(|(p, i, sum)| sum.share(Fraction(p * (i - mean) / (share * variance))))
+        .sum();
     let sigma = variance.sqrt();
     let half_skew = 0.5 * moment(3) / (variance * sigma);
     let root = (1.0 + half_skew * half_skew).sqrt();

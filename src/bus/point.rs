@@ -49,10 +49,24 @@ impl Drawn for LoadSum {
 }
 
 impl<'a> Bus<'a> {
-    pub fn new(supply: &'a Supply, terminals: &'a Terminals, filaments: bool, cells: u32) -> Bus<'a> {
+    pub fn new(
+        supply: &'a Supply,
+        terminals: &'a Terminals,
+        filaments: bool,
+        cells: u32,
+    ) -> Bus<'a> {
         let cells = f64::from(cells);
-        let (low, high) = (LEAST_CELL_VOLTS * cells, super::supply::MOST_CELL_VOLTS * cells);
-        Bus { supply, terminals, filaments, low, high }
+        let (low, high) = (
+            LEAST_CELL_VOLTS * cells,
+            super::supply::MOST_CELL_VOLTS * cells,
+        );
+        Bus {
+            supply,
+            terminals,
+            filaments,
+            low,
+            high,
+        }
     }
 
     /// What may be drawn at some volts, sources less battery, and its slope.
@@ -64,7 +78,8 @@ impl<'a> Bus<'a> {
 
     /// Setpoints and the battery's own voltage, highest first.
     pub fn boundaries(&self) -> Vec<Boundary> {
-        let mut volts: Vec<(f64, bool)> = self.supply.setpoints().iter().map(|v| (*v, true)).collect();
+        let mut volts: Vec<(f64, bool)> =
+            self.supply.setpoints().iter().map(|v| (*v, true)).collect();
         if self.supply.setpoints().is_empty() && self.supply.extra_holds() {
             volts.push((self.supply.ceiling_with_extra(), true));
         }
@@ -73,13 +88,25 @@ impl<'a> Bus<'a> {
             volts.push((rest, false));
         }
         volts.sort_by(|a, b| b.0.total_cmp(&a.0));
-        volts.iter().map(|(v, holds)| self.boundary(*v, *holds)).collect()
+        volts
+            .iter()
+            .map(|(v, holds)| self.boundary(*v, *holds))
+            .collect()
     }
 
     fn boundary(&self, volts: f64, holds: bool) -> Boundary {
         let below = self.spare(volts, Side::Below).0;
-        let above = if holds { self.spare(volts, Side::Above).0 } else { below };
-        Boundary { volts, above, below, at: At::new(Volts(volts), self.filaments) }
+        let above = if holds {
+            self.spare(volts, Side::Above).0
+        } else {
+            below
+        };
+        Boundary {
+            volts,
+            above,
+            below,
+            at: At::new(Volts(volts), self.filaments),
+        }
     }
 
     /// The balance of a draw between two voltages where nothing switches: Newton's steps, kept
@@ -93,7 +120,11 @@ impl<'a> Bus<'a> {
     /// battery can give even at the lowest volts, the lowest volts are the answer.
     pub fn balance(&self, draw: &impl Drawn, low: f64, high: f64, guess: f64) -> f64 {
         let (mut lo, mut hi) = (low, high);
-        let mut volts = if guess > lo && guess < hi { guess } else { 0.5 * (lo + hi) };
+        let mut volts = if guess > lo && guess < hi {
+            guess
+        } else {
+            0.5 * (lo + hi)
+        };
         let mut last = f64::INFINITY;
         for _ in 0..MOST_STEPS {
             let (spare, spare_slope) = self.spare(volts, Side::Below);
@@ -107,7 +138,11 @@ impl<'a> Bus<'a> {
             let slope = spare_slope - drawn_slope;
             let newton = volts - excess / slope;
             if excess.abs() < BALANCED || hi - lo < 1e-13 * hi {
-                return if newton > low && newton < high { newton } else { volts };
+                return if newton > low && newton < high {
+                    newton
+                } else {
+                    volts
+                };
             }
             let closes = slope < 0.0 && newton > lo && newton < hi && excess.abs() <= 0.5 * last;
             last = excess.abs();

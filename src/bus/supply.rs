@@ -51,7 +51,9 @@ enum Exact {
 impl Exact {
     fn amps(&self, volts: f64) -> f64 {
         match self {
-            Exact::Winding(winding, rectifier, rpm) => source::rectified_dc(winding, rectifier, *rpm, Volts(volts)).0,
+            Exact::Winding(winding, rectifier, rpm) => {
+                source::rectified_dc(winding, rectifier, *rpm, Volts(volts)).0
+            }
             Exact::Constant(amps) => *amps,
         }
     }
@@ -61,7 +63,10 @@ impl Supply {
     /// Nothing: engine off.
     #[must_use]
     pub fn none(cells: u32) -> Supply {
-        Supply { ceiling: MOST_CELL_VOLTS * f64::from(cells), ..Supply::default() }
+        Supply {
+            ceiling: MOST_CELL_VOLTS * f64::from(cells),
+            ..Supply::default()
+        }
     }
 
     /// The sources that feed the battery bus, at a speed.
@@ -77,14 +82,30 @@ impl Supply {
         setpoints.sort_by(|a, b| b.total_cmp(a));
         setpoints.dedup();
         let ceiling = setpoints.first().copied().unwrap_or(most);
-        Supply { feeds, setpoints, ceiling, extra: 0.0 }
+        Supply {
+            feeds,
+            setpoints,
+            ceiling,
+            extra: 0.0,
+        }
     }
 
     /// A charger of constant current that tapers at its volts.
     #[must_use]
     pub fn charger(amps: Amps, holds: Volts) -> Supply {
-        let feed = Feed { holds: Some(holds.0), from: 0.0, step: 1.0, points: Vec::new(), exact: Exact::Constant(amps.0) };
-        Supply { feeds: vec![feed], setpoints: vec![holds.0], ceiling: holds.0, extra: 0.0 }
+        let feed = Feed {
+            holds: Some(holds.0),
+            from: 0.0,
+            step: 1.0,
+            points: Vec::new(),
+            exact: Exact::Constant(amps.0),
+        };
+        Supply {
+            feeds: vec![feed],
+            setpoints: vec![holds.0],
+            ceiling: holds.0,
+            extra: 0.0,
+        }
     }
 
     /// The same with a constant current added that never lifts the bus above the highest
@@ -125,7 +146,10 @@ impl Supply {
                 slope += di;
             }
         }
-        if self.extra < 0.0 || volts < self.ceiling || (volts <= self.ceiling && side == Side::Below) {
+        if self.extra < 0.0
+            || volts < self.ceiling
+            || (volts <= self.ceiling && side == Side::Below)
+        {
             amps += self.extra;
         }
         (amps, slope)
@@ -135,7 +159,13 @@ impl Supply {
     /// and the extra current left out.
     #[must_use]
     pub fn available(&self, bus: Volts) -> Amps {
-        Amps(self.feeds.iter().filter(|f| f.gives(bus.0, Side::Below)).map(|f| f.amps(bus.0).0).sum())
+        Amps(
+            self.feeds
+                .iter()
+                .filter(|f| f.gives(bus.0, Side::Below))
+                .map(|f| f.amps(bus.0).0)
+                .sum(),
+        )
     }
 }
 
@@ -145,9 +175,15 @@ impl Feed {
         let cells = f64::from(cells);
         let exact = match &source.kind {
             SourceKind::Winding(w) => Exact::Winding(w.constants, w.rectifier?, rpm),
-            SourceKind::Alternator(_) => Exact::Constant(0.0),
+            SourceKind::Alternator(a) => Exact::Constant(a.output(rpm).0),
         };
-        let mut feed = Feed { holds, from: TABLE_FROM_CELL * cells, step: TABLE_STEP_CELL * cells, points: Vec::new(), exact };
+        let mut feed = Feed {
+            holds,
+            from: TABLE_FROM_CELL * cells,
+            step: TABLE_STEP_CELL * cells,
+            points: Vec::new(),
+            exact,
+        };
         if let Exact::Winding(..) = exact {
             feed.tabulate(holds.unwrap_or(MOST_CELL_VOLTS * cells));
         }
@@ -158,7 +194,9 @@ impl Feed {
     fn tabulate(&mut self, to: f64) {
         let count = ((to - self.from) / self.step).ceil().max(1.0) as usize + 1;
         self.step = (to - self.from) / (count - 1) as f64;
-        let amps: Vec<f64> = (0..count).map(|k| self.exact.amps(self.from + self.step * k as f64)).collect();
+        let amps: Vec<f64> = (0..count)
+            .map(|k| self.exact.amps(self.from + self.step * k as f64))
+            .collect();
         let slope = |k: usize| -> f64 {
             let (a, b, c) = (k.saturating_sub(1), k, (k + 1).min(count - 1));
             if a == b {
@@ -169,7 +207,9 @@ impl Feed {
                 (amps[c] - amps[a]) / (2.0 * self.step)
             }
         };
-        self.points = (0..count).map(|k| (amps[k], if count < 3 { 0.0 } else { slope(k) })).collect();
+        self.points = (0..count)
+            .map(|k| (amps[k], if count < 3 { 0.0 } else { slope(k) }))
+            .collect();
     }
 
     fn gives(&self, volts: f64, side: Side) -> bool {
@@ -188,13 +228,19 @@ impl Feed {
         if x < 0.0 {
             let h = self.step;
             let here = self.exact.amps(volts);
-            return (here, (self.exact.amps(volts + 0.01 * h) - here) / (0.01 * h));
+            return (
+                here,
+                (self.exact.amps(volts + 0.01 * h) - here) / (0.01 * h),
+            );
         }
         let k = (x as usize).min(self.points.len() - 2);
         let t = x - k as f64;
         let ((a, da), (b, db)) = (self.points[k], self.points[k + 1]);
         let (da, db) = (da * self.step, db * self.step);
         let (c2, c3) = (3.0 * (b - a) - 2.0 * da - db, 2.0 * (a - b) + da + db);
-        (a + t * (da + t * (c2 + t * c3)), (da + t * (2.0 * c2 + 3.0 * t * c3)) / self.step)
+        (
+            a + t * (da + t * (c2 + t * c3)),
+            (da + t * (2.0 * c2 + 3.0 * t * c3)) / self.step,
+        )
     }
 }

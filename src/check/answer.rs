@@ -3,7 +3,9 @@
 //! Field names are those of the JSON; each ends in its unit. Charge is a fraction of full.
 
 use crate::build::Assumed;
-use crate::quantity::{AmpHours, Amps, Celsius, Fraction, Grams, Hours, Minutes, Rpm, Volts, Watts};
+use crate::quantity::{
+    AmpHours, Amps, Celsius, Fraction, Grams, Hours, Minutes, Rpm, Volts, Watts,
+};
 use serde::{Serialize, Serializer};
 
 /// Does the charging system keep up?
@@ -34,7 +36,10 @@ impl<T: Copy> ByState<T> {
     /// The value in a state.
     #[must_use]
     pub fn get(&self, state: &str) -> Option<T> {
-        self.0.iter().find(|(name, _)| name == state).map(|(_, value)| *value)
+        self.0
+            .iter()
+            .find(|(name, _)| name == state)
+            .map(|(_, value)| *value)
     }
 }
 

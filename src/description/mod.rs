@@ -7,10 +7,14 @@ pub mod accessory;
 pub mod charging;
 
 pub use accessory::{AccessoryText, DrawText, DutyText, InrushText, LawName, WorksText};
-pub use charging::{AlternatorText, ChargingText, RatedText, ReadingText, RectifierText, RegulatorText, WindingText};
+pub use charging::{
+    AlternatorText, ChargingText, RatedText, ReadingText, RectifierText, RegulatorText, WindingText,
+};
 
 use crate::battery::Chemistry;
-use crate::quantity::{AmpHours, Amps, Celsius, Fraction, Hours, Money, Ohms, Rpm, Tolerance, Volts};
+use crate::quantity::{
+    AmpHours, Amps, Celsius, Fraction, Hours, Money, Ohms, Rpm, Tolerance, Volts,
+};
 
 /// A value as written, with its path (`accessories[2].duty.governed`) and its tolerance.
 #[derive(Clone, Debug, PartialEq)]

@@ -9,7 +9,11 @@ use crate::quantity::Fraction;
 /// What is always on in a state, by class of lower limit, and what cycles in it.
 ///
 /// `active` are accessories on the bus with some duty in the state, with their index in the build.
-pub(super) fn cyclers(active: &[(usize, &Accessory)], state: State, cuts: &Cuts) -> (Vec<LoadSum>, Vec<Cycler>) {
+pub(super) fn cyclers(
+    active: &[(usize, &Accessory)],
+    state: State,
+    cuts: &Cuts,
+) -> (Vec<LoadSum>, Vec<Cycler>) {
     let classes = cuts.classes();
     let mut steady = vec![LoadSum::NONE; classes];
     let mut cycling = Vec::new();
@@ -47,5 +51,9 @@ fn sum_of(accessory: &Accessory) -> LoadSum {
 }
 
 fn member(accessory: &Accessory, state: State, cuts: &Cuts) -> (Fraction, usize, LoadSum) {
-    (accessory.duty.share(state), cuts.class(accessory.works.low), sum_of(accessory))
+    (
+        accessory.duty.share(state),
+        cuts.class(accessory.works.low),
+        sum_of(accessory),
+    )
 }

@@ -91,7 +91,12 @@ impl Machine {
         for _ in 0..build.days.map_or(0, |d| d.parked) {
             machine.add_leg(build, State::Parked, DAY, machine.shifts - 1, false);
         }
-        machine.running = machine.cycle.iter().filter(|leg| machine.connected[leg.wired].runs).map(|leg| leg.time).sum();
+        machine.running = machine
+            .cycle
+            .iter()
+            .filter(|leg| machine.connected[leg.wired].runs)
+            .map(|leg| leg.time)
+            .sum();
         Some(machine)
     }
 
@@ -103,10 +108,13 @@ impl Machine {
 
     /// Parking, with the shop charger on for its part of it.
     fn add_parking(&mut self, build: &Build, parked: Hours, shift: u32) {
-        let (before, on) = build.charger.as_ref().map_or((parked, Hours::ZERO), |charger| {
-            let before = charger.after.value.min(parked);
-            (before, charger.time.value.min(parked - before))
-        });
+        let (before, on) = build
+            .charger
+            .as_ref()
+            .map_or((parked, Hours::ZERO), |charger| {
+                let before = charger.after.value.min(parked);
+                (before, charger.time.value.min(parked - before))
+            });
         self.add_leg(build, State::Parked, before, shift, false);
         self.add_leg(build, State::Parked, on, shift, true);
         self.add_leg(build, State::Parked, parked - before - on, shift, false);
@@ -116,15 +124,33 @@ impl Machine {
         if time <= Hours::ZERO {
             return;
         }
-        let found = self.connected.iter().position(|w| w.state == state && w.charging == charging);
+        let found = self
+            .connected
+            .iter()
+            .position(|w| w.state == state && w.charging == charging);
         let wired = found.unwrap_or_else(|| {
-            let charger = if charging { build.charger.as_ref() } else { None };
+            let charger = if charging {
+                build.charger.as_ref()
+            } else {
+                None
+            };
             let runs = matches!(state, State::Running(_));
-            self.connected.push(Wired { state, bus: connect(build, state, charger), runs, charging });
+            self.connected.push(Wired {
+                state,
+                bus: connect(build, state, charger),
+                runs,
+                charging,
+            });
             self.connected.len() - 1
         });
         let rests = state == State::Parked && !charging;
-        self.cycle.push(Leg { state, wired, time, step: if rests { REST_STEP } else { STEP }, shift });
+        self.cycle.push(Leg {
+            state,
+            wired,
+            time,
+            step: if rests { REST_STEP } else { STEP },
+            shift,
+        });
     }
 
     /// Adds a constant current on the bus in every running state, or takes one.
@@ -136,7 +162,11 @@ impl Machine {
 
     /// The same in one running state only.
     pub fn set_extra_in(&mut self, state: State, extra: Amps) {
-        for wired in self.connected.iter_mut().filter(|w| w.runs && w.state == state) {
+        for wired in self
+            .connected
+            .iter_mut()
+            .filter(|w| w.runs && w.state == state)
+        {
             wired.bus.supply.set_extra(extra);
         }
     }
@@ -155,19 +185,35 @@ pub fn connect(build: &Build, state: State, charger: Option<&Charger>) -> Connec
         _ => Supply::none(cells),
     };
     let reference = Volts(REFERENCE_CELL_VOLTS * f64::from(cells));
-    let on_bus: Vec<(usize, &Accessory)> =
-        build.accessories.iter().enumerate().filter(|(_, a)| a.circuit.is_none()).collect();
+    let on_bus: Vec<(usize, &Accessory)> = build
+        .accessories
+        .iter()
+        .enumerate()
+        .filter(|(_, a)| a.circuit.is_none())
+        .collect();
     if state == State::Parked {
-        let parasitic: LoadSum = on_bus.iter().map(|(_, a)| LoadSum::of(Draw::Current(a.parked), a.count)).sum();
-        return Connected { supply, loads: Coincidences::new(&[parasitic], &[], reference), cuts: Cuts::default() };
+        let parasitic: LoadSum = on_bus
+            .iter()
+            .map(|(_, a)| LoadSum::of(Draw::Current(a.parked), a.count))
+            .sum();
+        return Connected {
+            supply,
+            loads: Coincidences::new(&[parasitic], &[], reference),
+            cuts: Cuts::default(),
+        };
     }
-    let active: Vec<(usize, &Accessory)> =
-        on_bus.into_iter().filter(|(_, a)| a.duty.share(state) > Fraction::ZERO).collect();
+    let active: Vec<(usize, &Accessory)> = on_bus
+        .into_iter()
+        .filter(|(_, a)| a.duty.share(state) > Fraction::ZERO)
+        .collect();
     let cuts = Cuts::new(active.iter().filter_map(|(_, a)| a.works.low), cells);
     let (mut steady, cycling) = cyclers(&active, state, &cuts);
     if let (State::Crank, Some(starter)) = (state, &build.starter) {
-        let draw = starter.draw.value;
-        steady[0] += LoadSum::current_of(draw);
+        steady[0] += LoadSum::current_of(starter.asks().draw_at(build.air.value));
     }
-    Connected { supply, loads: Coincidences::new(&steady, &cycling, reference), cuts }
+    Connected {
+        supply,
+        loads: Coincidences::new(&steady, &cycling, reference),
+        cuts,
+    }
 }

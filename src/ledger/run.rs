@@ -32,7 +32,12 @@ impl Machine {
     }
 
     fn pass_from(&self, from: usize, start: Charge, floor: Fraction, stop: bool) -> Passed {
-        let mut passed = Passed { end: start, lowest: start.soc, lowest_after: from, broke: None };
+        let mut passed = Passed {
+            end: start,
+            lowest: start.soc,
+            lowest_after: from,
+            broke: None,
+        };
         let legs = self.cycle.len();
         for k in 0..legs {
             let index = (from + k) % legs;
@@ -55,11 +60,22 @@ impl Machine {
 
     /// Runs the legs of the first shift and the parking after it, showing every step: the leg's
     /// index, when the step begins, and the step. `longest` caps every step's length.
-    pub fn walk(&self, start: Charge, longest: Option<Hours>, mut show: impl FnMut(usize, Hours, &Stride)) -> Charge {
+    pub fn walk(
+        &self,
+        start: Charge,
+        longest: Option<Hours>,
+        mut show: impl FnMut(usize, Hours, &Stride),
+    ) -> Charge {
         let mut charge = start;
         let mut clock = Hours::ZERO;
-        for (index, leg) in self.cycle.iter().enumerate().take_while(|(_, leg)| leg.shift == 0) {
-            let (count, time) = Machine::steps_of(leg, longest.map_or(leg.step, |l| l.min(leg.step)));
+        for (index, leg) in self
+            .cycle
+            .iter()
+            .enumerate()
+            .take_while(|(_, leg)| leg.shift == 0)
+        {
+            let (count, time) =
+                Machine::steps_of(leg, longest.map_or(leg.step, |l| l.min(leg.step)));
             for _ in 0..count {
                 let stride = self.stride(leg, charge, time);
                 show(index, clock, &stride);

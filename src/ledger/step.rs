@@ -41,14 +41,27 @@ impl Machine {
             let raw = charge.soc.0 + (main * time) / capacity;
             let soc = raw.clamp(0.0, 1.0);
             let depletion = self.climate.depletion_after(charge.depletion, target, time);
-            (Charge { soc: Fraction(soc), depletion }, raw - soc)
+            (
+                Charge {
+                    soc: Fraction(soc),
+                    depletion,
+                },
+                raw - soc,
+            )
         };
         let first = bus.flow(&self.climate, charge, self.cells);
         let (predicted, _) = move_on(first.main, first.depletion);
         let second = bus.flow(&self.climate, predicted, self.cells);
         let target = Fraction(0.5 * (first.depletion.0 + second.depletion.0));
         let (after, over) = move_on(0.5 * (first.main + second.main), target);
-        Stride { time, first, second, before: charge, after, spilled: over * capacity }
+        Stride {
+            time,
+            first,
+            second,
+            before: charge,
+            after,
+            spilled: over * capacity,
+        }
     }
 
     /// Number of steps a leg is cut into, and their length.

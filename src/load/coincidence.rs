@@ -56,13 +56,27 @@ impl Coincidences {
         Coincidences::from_cases(&cases, heaviest, classes)
     }
 
-    fn from_cases(cases: &[(f64, Vec<LoadSum>)], heaviest: Vec<LoadSum>, classes: usize) -> Coincidences {
-        let totals: Vec<LoadSum> = cases.iter().map(|(_, sums)| sums.iter().copied().sum()).collect();
-        let mean = cases.iter().zip(&totals).map(|((p, _), total)| total.share(Fraction(*p))).sum();
+    fn from_cases(
+        cases: &[(f64, Vec<LoadSum>)],
+        heaviest: Vec<LoadSum>,
+        classes: usize,
+    ) -> Coincidences {
+        let totals: Vec<LoadSum> = cases
+            .iter()
+            .map(|(_, sums)| sums.iter().copied().sum())
+            .collect();
+        let mean = cases
+            .iter()
+            .zip(&totals)
+            .map(|((p, _), total)| total.share(Fraction(*p)))
+            .sum();
         let heaviest_total: LoadSum = heaviest.iter().copied().sum();
         Coincidences {
             shares: cases.iter().map(|(p, _)| *p).collect(),
-            sums: cases.iter().flat_map(|(_, sums)| sums.iter().copied()).collect(),
+            sums: cases
+                .iter()
+                .flat_map(|(_, sums)| sums.iter().copied())
+                .collect(),
             filaments: heaviest_total.has_filaments(),
             totals,
             heaviest,
@@ -124,7 +138,12 @@ impl Cycler {
     /// One accessory on for a share of the time.
     #[must_use]
     pub fn single(share: Fraction, class: usize, classes: usize, sum: LoadSum) -> Cycler {
-        Cycler { cases: vec![(share.rest(), in_class(class, classes, LoadSum::NONE)), (share, in_class(class, classes, sum))] }
+        Cycler {
+            cases: vec![
+                (share.rest(), in_class(class, classes, LoadSum::NONE)),
+                (share, in_class(class, classes, sum)),
+            ],
+        }
     }
 
     /// Accessories whose on-times coincide: whenever a lesser duty is on, the greater ones are.
@@ -149,7 +168,11 @@ impl Cycler {
     pub fn apart(members: &[(Fraction, usize, LoadSum)], classes: usize) -> Cycler {
         let on: f64 = members.iter().map(|m| m.0.0).sum();
         let mut cases = vec![(Fraction((1.0 - on).max(0.0)), vec![LoadSum::NONE; classes])];
-        cases.extend(members.iter().map(|(share, class, sum)| (*share, in_class(*class, classes, *sum))));
+        cases.extend(
+            members
+                .iter()
+                .map(|(share, class, sum)| (*share, in_class(*class, classes, *sum))),
+        );
         Cycler { cases: kept(cases) }
     }
 }
@@ -178,7 +201,11 @@ fn add(into: &mut [LoadSum], sums: &[LoadSum]) {
 }
 
 fn total_current(sums: &[LoadSum], reference: Volts) -> f64 {
-    sums.iter().copied().sum::<LoadSum>().current_at(reference).0
+    sums.iter()
+        .copied()
+        .sum::<LoadSum>()
+        .current_at(reference)
+        .0
 }
 
 fn heaviest_case(cycler: &Cycler, reference: Volts) -> Option<&[LoadSum]> {
@@ -203,8 +230,10 @@ fn joined(cases: &[(f64, Vec<LoadSum>)], cycler: &Cycler) -> Vec<(f64, Vec<LoadS
 }
 
 fn sort_by_current(cases: &mut Vec<(f64, Vec<LoadSum>)>, reference: Volts) {
-    let mut keyed: Vec<(f64, (f64, Vec<LoadSum>))> =
-        std::mem::take(cases).into_iter().map(|case| (total_current(&case.1, reference), case)).collect();
+    let mut keyed: Vec<(f64, (f64, Vec<LoadSum>))> = std::mem::take(cases)
+        .into_iter()
+        .map(|case| (total_current(&case.1, reference), case))
+        .collect();
     keyed.sort_by(|a, b| a.0.total_cmp(&b.0));
     cases.extend(keyed.into_iter().map(|(_, case)| case));
 }
@@ -213,7 +242,10 @@ fn sort_by_current(cases: &mut Vec<(f64, Vec<LoadSum>)>, reference: Volts) {
 /// two cases that keep its share, mean and variance of current.
 fn merged(mut cases: Vec<(f64, Vec<LoadSum>)>, reference: Volts) -> Vec<(f64, Vec<LoadSum>)> {
     sort_by_current(&mut cases, reference);
-    let currents: Vec<f64> = cases.iter().map(|c| total_current(&c.1, reference)).collect();
+    let currents: Vec<f64> = cases
+        .iter()
+        .map(|c| total_current(&c.1, reference))
+        .collect();
     let (low, high) = (currents[0], currents[currents.len() - 1]);
     let cells = MOST_CASES / 2;
     let width = (high - low) / cells as f64;
@@ -223,7 +255,11 @@ fn merged(mut cases: Vec<(f64, Vec<LoadSum>)>, reference: Volts) -> Vec<(f64, Ve
     let mut out = Vec::with_capacity(MOST_CASES);
     let mut from = 0;
     for cell in 0..cells {
-        let edge = if cell + 1 == cells { f64::INFINITY } else { low + width * (cell + 1) as f64 };
+        let edge = if cell + 1 == cells {
+            f64::INFINITY
+        } else {
+            low + width * (cell + 1) as f64
+        };
         let mut to = from;
         while to < cases.len() && currents[to] < edge {
             to += 1;

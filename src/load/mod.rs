@@ -49,39 +49,66 @@ impl At {
         At {
             volts: v,
             inverse: 1.0 / v,
-            filament: if filaments { v.powf(FILAMENT_EXPONENT) } else { 0.0 },
+            filament: if filaments {
+                v.powf(FILAMENT_EXPONENT)
+            } else {
+                0.0
+            },
         }
     }
 }
 
 impl LoadSum {
     /// Nothing on.
-    pub const NONE: LoadSum = LoadSum { amps: 0.0, siemens: 0.0, watts: 0.0, filament: 0.0 };
+    pub const NONE: LoadSum = LoadSum {
+        amps: 0.0,
+        siemens: 0.0,
+        watts: 0.0,
+        filament: 0.0,
+    };
 
     /// One accessory's draw, `count` of them.
     #[must_use]
     pub fn of(draw: Draw, count: u32) -> LoadSum {
         let n = f64::from(count);
         match draw {
-            Draw::Current(amps) => LoadSum { amps: n * amps.0, ..LoadSum::NONE },
-            Draw::Resistance(ohms) => LoadSum { siemens: n / ohms.0, ..LoadSum::NONE },
-            Draw::Power(watts) => LoadSum { watts: n * watts.0, ..LoadSum::NONE },
-            Draw::Filament { power, at } => {
-                LoadSum { filament: n * power.0 / at.0.powf(1.0 + FILAMENT_EXPONENT), ..LoadSum::NONE }
-            }
+            Draw::Current(amps) => LoadSum {
+                amps: n * amps.0,
+                ..LoadSum::NONE
+            },
+            Draw::Resistance(ohms) => LoadSum {
+                siemens: n / ohms.0,
+                ..LoadSum::NONE
+            },
+            Draw::Power(watts) => LoadSum {
+                watts: n * watts.0,
+                ..LoadSum::NONE
+            },
+            Draw::Filament { power, at } => LoadSum {
+                filament: n * power.0 / at.0.powf(1.0 + FILAMENT_EXPONENT),
+                ..LoadSum::NONE
+            },
         }
     }
 
     /// A constant current: a starter, or a spare current to be found.
     #[must_use]
     pub fn current_of(amps: Amps) -> LoadSum {
-        LoadSum { amps: amps.0, ..LoadSum::NONE }
+        LoadSum {
+            amps: amps.0,
+            ..LoadSum::NONE
+        }
     }
 
     /// Its current at some volts.
     #[must_use]
     pub fn current(&self, at: At) -> Amps {
-        Amps(self.amps + self.siemens * at.volts + self.watts * at.inverse + self.filament * at.filament)
+        Amps(
+            self.amps
+                + self.siemens * at.volts
+                + self.watts * at.inverse
+                + self.filament * at.filament,
+        )
     }
 
     /// Its current at some volts, worked out on its own.
@@ -93,7 +120,8 @@ impl LoadSum {
     /// How its current changes with volts, A/V: below zero where constant powers rule.
     #[must_use]
     pub fn slope(&self, at: At) -> f64 {
-        self.siemens - self.watts * at.inverse * at.inverse + FILAMENT_EXPONENT * self.filament * at.filament * at.inverse
+        self.siemens - self.watts * at.inverse * at.inverse
+            + FILAMENT_EXPONENT * self.filament * at.filament * at.inverse
     }
 
     /// Whether any filament is in it.
@@ -198,14 +226,33 @@ mod tests {
     /// (encyclopaedia and textbook laws, derived).
     #[test]
     fn laws_of_draw() {
-        let bulb = |w, at| Draw::Filament { power: Watts(w), at: Volts(at) };
+        let bulb = |w, at| Draw::Filament {
+            power: Watts(w),
+            at: Volts(at),
+        };
         near(current(bulb(55.0, 12.0), Volts(13.2)).0, 4.8300, 0.0005);
-        near(filament_power(Watts(21.0), Volts(12.0), Volts(13.5)).0, 25.206, 0.005);
+        near(
+            filament_power(Watts(21.0), Volts(12.0), Volts(13.5)).0,
+            25.206,
+            0.005,
+        );
         near(filament_light(Volts(1.0), Volts(1.1)).0, 1.3827, 1e-4);
         near(filament_life(Volts(1.0), Volts(1.05)).0, 0.5303, 1e-4);
-        near(current(Draw::Power(Watts(48.0)), Volts(14.0)).0, 3.4286, 0.0005);
-        near(current(Draw::Power(Watts(48.0)), Volts(12.0)).0, 4.0000, 0.0005);
-        near(current(Draw::Resistance(Ohms(90.0)), Volts(14.0)).0, 0.1556, 0.0005);
+        near(
+            current(Draw::Power(Watts(48.0)), Volts(14.0)).0,
+            3.4286,
+            0.0005,
+        );
+        near(
+            current(Draw::Power(Watts(48.0)), Volts(12.0)).0,
+            4.0000,
+            0.0005,
+        );
+        near(
+            current(Draw::Resistance(Ohms(90.0)), Volts(14.0)).0,
+            0.1556,
+            0.0005,
+        );
         let hot = coil_at(Ohms(3.0), Celsius(100.0));
         near(hot.0, 3.9432, 0.0005);
         near((Volts(12.0) / hot).0, 3.0432, 0.0005);
@@ -218,7 +265,10 @@ mod tests {
         let clutch = Draw::Resistance(coil_at(Ohms(2.9), Celsius(80.0)));
         let draws = [
             clutch,
-            Draw::Filament { power: Watts(54.0), at: Volts(12.0) },
+            Draw::Filament {
+                power: Watts(54.0),
+                at: Volts(12.0),
+            },
             Draw::Power(Watts(18.0)),
             Draw::Current(Amps(0.7)),
             Draw::Current(Amps(0.02)),

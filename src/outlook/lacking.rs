@@ -56,7 +56,10 @@ impl Machine {
     pub fn lacking(&self, reserve: Fraction) -> Lacking {
         let hours = self.running_a_shift();
         match self.edge(reserve, Spread::Everywhere) {
-            Some(current) if hours > Hours::ZERO => Lacking::Charge { charge: (current * hours).max(AmpHours::ZERO), current },
+            Some(current) if hours > Hours::ZERO => Lacking::Charge {
+                charge: (current * hours).max(AmpHours::ZERO),
+                current,
+            },
             _ => Lacking::BeyondCharging,
         }
     }
@@ -69,7 +72,10 @@ impl Machine {
             machine: self.clone(),
             spread,
             reserve,
-            turn: Turn { from: 0, depletion: Fraction::ZERO },
+            turn: Turn {
+                from: 0,
+                depletion: Fraction::ZERO,
+            },
         };
         let touching = search.current_for(|search| search.gain_touching())?;
         Some(Amps(search.held_up_from_full(touching)))
@@ -129,7 +135,12 @@ impl Search {
         }
         let known = [low, high];
         let root = bracketed(
-            |x| known.iter().find(|(at, _)| *at == x).map_or_else(|| gain(x), |(_, gain)| *gain),
+            |x| {
+                known
+                    .iter()
+                    .find(|(at, _)| *at == x)
+                    .map_or_else(|| gain(x), |(_, gain)| *gain)
+            },
             low.0,
             high.0,
             CLOSE,
@@ -177,7 +188,13 @@ impl Search {
         let mut start = reserve;
         let mut gain = f64::NAN;
         for _ in 0..MOST_TURNS {
-            let passed = machine.pass_around(turn.from, Charge { soc: start, depletion: turn.depletion });
+            let passed = machine.pass_around(
+                turn.from,
+                Charge {
+                    soc: start,
+                    depletion: turn.depletion,
+                },
+            );
             gain = passed.end.soc.0 - start.0;
             turn.depletion = passed.end.depletion;
             let under = reserve.0 - passed.lowest.0;

@@ -54,19 +54,28 @@ impl Machine {
     #[must_use]
     pub fn outlook(&self, start: Charge, reserve: Fraction) -> Outlook {
         if start.soc < reserve {
-            return Outlook::Breaks { shifts: 0, begins: start };
+            return Outlook::Breaks {
+                shifts: 0,
+                begins: start,
+            };
         }
         let mut charge = start;
         let mut last = None;
         for cycle in 0..PLAIN {
             let passed = self.pass(charge, reserve);
             if let Some(shift) = passed.broke {
-                return Outlook::Breaks { shifts: cycle * self.shifts + shift, begins: charge };
+                return Outlook::Breaks {
+                    shifts: cycle * self.shifts + shift,
+                    begins: charge,
+                };
             }
             let change = passed.end.soc - charge.soc;
             last = Some(passed.lowest);
             if change.0.abs() < STILL {
-                return Outlook::Settles { charge: passed.end, lowest: passed.lowest };
+                return Outlook::Settles {
+                    charge: passed.end,
+                    lowest: passed.lowest,
+                };
             }
             charge = passed.end;
         }
@@ -85,7 +94,10 @@ impl Machine {
         for cycle in 0..cycles {
             let passed = self.pass(charge, reserve);
             if let Some(shift) = passed.broke {
-                return Outlook::Breaks { shifts: cycle * self.shifts + shift, begins: charge };
+                return Outlook::Breaks {
+                    shifts: cycle * self.shifts + shift,
+                    begins: charge,
+                };
             }
             let still = (passed.end.soc - charge.soc).abs() < Fraction(1e-12);
             charge = passed.end;
@@ -99,7 +111,10 @@ impl Machine {
 
     fn count(&self, charge: Charge, reserve: Fraction, before: u32) -> Outlook {
         match self.repeat(charge, reserve, MOST_CYCLES) {
-            Outlook::Breaks { shifts, begins } => Outlook::Breaks { shifts: before * self.shifts + shifts, begins },
+            Outlook::Breaks { shifts, begins } => Outlook::Breaks {
+                shifts: before * self.shifts + shifts,
+                begins,
+            },
             settled => settled,
         }
     }
@@ -111,9 +126,20 @@ impl Machine {
     /// one that just touches the reserve ends no lower than it began. (Constant powers draw more
     /// amps the lower the bus, so a build can hold itself up from a full battery and not from a
     /// low one: the touching cycle alone does not tell.)
-    fn fixed_point(&self, charge: Charge, lowest: Fraction, reserve: Fraction) -> Option<(Charge, Fraction)> {
+    fn fixed_point(
+        &self,
+        charge: Charge,
+        lowest: Fraction,
+        reserve: Fraction,
+    ) -> Option<(Charge, Fraction)> {
         let at = |soc: f64| {
-            let passed = self.pass_around(0, Charge { soc: Fraction(soc), depletion: charge.depletion });
+            let passed = self.pass_around(
+                0,
+                Charge {
+                    soc: Fraction(soc),
+                    depletion: charge.depletion,
+                },
+            );
             (passed.end.soc.0 - soc, passed)
         };
         let (here, passed) = at(charge.soc.0);
@@ -140,11 +166,21 @@ impl Machine {
             high.0
         } else {
             let ends = [low, high];
-            let gain = |x: f64| ends.iter().find(|end| end.0 == x).map_or_else(|| at(x).0, |end| end.1);
+            let gain = |x: f64| {
+                ends.iter()
+                    .find(|end| end.0 == x)
+                    .map_or_else(|| at(x).0, |end| end.1)
+            };
             bracketed(gain, low.0, high.0, STILL).ok()?
         };
         let (_, passed) = at(soc);
-        Some((Charge { soc: Fraction(soc), ..passed.end }, passed.lowest.max(reserve)))
+        Some((
+            Charge {
+                soc: Fraction(soc),
+                ..passed.end
+            },
+            passed.lowest.max(reserve),
+        ))
     }
 
     /// The charge at the beginning of the cycle whose lowest charge is the reserve; none if that
@@ -155,7 +191,13 @@ impl Machine {
             if soc >= charge.soc.0 || soc < 0.0 {
                 return None;
             }
-            let passed = self.pass_around(0, Charge { soc: Fraction(soc), depletion: charge.depletion });
+            let passed = self.pass_around(
+                0,
+                Charge {
+                    soc: Fraction(soc),
+                    depletion: charge.depletion,
+                },
+            );
             let over = passed.lowest.0 - reserve.0;
             if over.abs() < 1e-10 {
                 break;

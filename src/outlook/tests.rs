@@ -5,8 +5,8 @@
 use super::{Lacking, Outlook};
 use crate::battery::{Charge, Chemistry, Label};
 use crate::build::{
-    Accessory, BatterySpec, Build, Draw, Duty, Figure, Origin, Regulator, Source, SourceKind, Speed, State, Step,
-    WindingSource, Works,
+    Accessory, BatterySpec, Build, Draw, Duty, Figure, Origin, Regulator, Source, SourceKind,
+    Speed, State, Step, WindingSource, Works,
 };
 use crate::description::accessory::LoadKind;
 use crate::description::charging::RegulatorKind;
@@ -17,7 +17,12 @@ use crate::quantity::{
 use crate::source::{Magnets, Rectifier, Winding};
 
 fn figure<T>(value: T) -> Figure<T> {
-    Figure { value, origin: Origin::Stated, tolerance: None, path: String::new() }
+    Figure {
+        value,
+        origin: Origin::Stated,
+        tolerance: None,
+        path: String::new(),
+    }
 }
 
 struct Case {
@@ -47,7 +52,11 @@ fn accessory(k: usize, draw: Draw, running: [f64; 2], stopped: f64) -> Accessory
             stopped: figure(Fraction(stopped)),
             crank: figure(Fraction::ZERO),
         },
-        works: Works { low: None, high: None, stated: false },
+        works: Works {
+            low: None,
+            high: None,
+            stated: false,
+        },
         inrush: None,
         circuit: None,
         parked: Amps::ZERO,
@@ -114,8 +123,12 @@ impl Case {
     fn build(&self) -> Build {
         let mut label = Label::new(Chemistry::Flooded, AmpHours(self.battery.0));
         label.cold_cranking = Some(Amps(self.battery.1));
-        let mut accessories: Vec<Accessory> =
-            self.loads.iter().enumerate().map(|(k, (draw, duty, stopped))| accessory(k, *draw, *duty, *stopped)).collect();
+        let mut accessories: Vec<Accessory> = self
+            .loads
+            .iter()
+            .enumerate()
+            .map(|(k, (draw, duty, stopped))| accessory(k, *draw, *duty, *stopped))
+            .collect();
         let mut clock = accessory(99, Draw::Current(Amps(self.parked.1)), [0.0, 0.0], 0.0);
         clock.parked = Amps(self.parked.1);
         accessories.push(clock);
@@ -125,7 +138,10 @@ impl Case {
             speeds: ["idle", "governed"]
                 .iter()
                 .zip(self.speeds)
-                .map(|(name, rpm)| Speed { name: (*name).into(), rpm: figure(Rpm(rpm)) })
+                .map(|(name, rpm)| Speed {
+                    name: (*name).into(),
+                    rpm: figure(Rpm(rpm)),
+                })
                 .collect(),
             starter: None,
             sources: vec![self.source()],
@@ -138,7 +154,14 @@ impl Case {
                 part: None,
             }),
             accessories,
-            shift: self.shift.iter().map(|(state, hours)| Step { state: *state, time: figure(Hours(*hours)) }).collect(),
+            shift: self
+                .shift
+                .iter()
+                .map(|(state, hours)| Step {
+                    state: *state,
+                    time: figure(Hours(*hours)),
+                })
+                .collect(),
             parked: figure(Hours(self.parked.0)),
             start: Fraction::ONE,
             days: None,
@@ -156,7 +179,10 @@ fn full_wave_drop(drop: f64) -> Rectifier {
 
 /// Four builds with what the slow computation makes of them: charge after each step, balance.
 fn cases() -> Vec<(Case, Vec<f64>, f64)> {
-    let lamp = |w: f64| Draw::Filament { power: Watts(w), at: Volts(13.2) };
+    let lamp = |w: f64| Draw::Filament {
+        power: Watts(w),
+        at: Volts(13.2),
+    };
     let w1 = (27.0, 3600.0, 0.16, 0.38e-3, 16);
     vec![
         (
@@ -172,7 +198,13 @@ fn cases() -> Vec<(Case, Vec<f64>, f64)> {
                     (Draw::Current(Amps(5.0)), [0.5, 0.4], 0.0),
                 ],
                 speeds: [1750.0, 3450.0],
-                shift: vec![(IDLE, 0.3), (GOVERNED, 1.5), (State::Stopped, 0.25), (GOVERNED, 1.6), (IDLE, 0.25)],
+                shift: vec![
+                    (IDLE, 0.3),
+                    (GOVERNED, 1.5),
+                    (State::Stopped, 0.25),
+                    (GOVERNED, 1.6),
+                    (IDLE, 0.25),
+                ],
                 parked: (15.0, 0.015),
             },
             vec![0.95114, 0.97844, 0.97843, 0.99271, 0.95197],
@@ -187,7 +219,12 @@ fn cases() -> Vec<(Case, Vec<f64>, f64)> {
                 air: 15.0,
                 loads: vec![(Draw::Current(Amps(0.6)), [1.0, 1.0], 0.0)],
                 speeds: [1700.0, 3300.0],
-                shift: vec![(IDLE, 0.15), (GOVERNED, 0.9), (State::Stopped, 0.1), (GOVERNED, 0.6)],
+                shift: vec![
+                    (IDLE, 0.15),
+                    (GOVERNED, 0.9),
+                    (State::Stopped, 0.1),
+                    (GOVERNED, 0.6),
+                ],
                 parked: (18.0, 0.01),
             },
             vec![0.99605, 1.0, 1.0, 1.0],
@@ -208,7 +245,13 @@ fn cases() -> Vec<(Case, Vec<f64>, f64)> {
                     (Draw::Current(Amps(5.0)), [0.0, 0.0], 1.0),
                 ],
                 speeds: [1500.0, 3500.0],
-                shift: vec![(IDLE, 0.25), (GOVERNED, 2.0), (State::Stopped, 0.4), (IDLE, 0.2), (GOVERNED, 1.5)],
+                shift: vec![
+                    (IDLE, 0.25),
+                    (GOVERNED, 2.0),
+                    (State::Stopped, 0.4),
+                    (IDLE, 0.2),
+                    (GOVERNED, 1.5),
+                ],
                 parked: (13.0, 0.03),
             },
             vec![0.96481, 0.89414, 0.8495, 0.82288, 0.80731],
@@ -252,9 +295,15 @@ fn charge_after_each_step() {
             }
         });
         for (have, want) in charges.iter().zip(ends) {
-            assert!((have - want).abs() < 5e-4, "case {k}: {charges:?} for {ends:?}");
+            assert!(
+                (have - want).abs() < 5e-4,
+                "case {k}: {charges:?} for {ends:?}"
+            );
         }
-        assert!((ah - balance).abs() < 0.005 * balance.abs() + 0.01, "case {k}: {ah} for {balance}");
+        assert!(
+            (ah - balance).abs() < 0.005 * balance.abs() + 0.01,
+            "case {k}: {ah} for {balance}"
+        );
     }
 }
 
@@ -263,17 +312,26 @@ fn verdicts_of_the_slow_computation() {
     let all = cases();
     let of = |k: usize, reserve: f64| machine(&all[k].0).outlook(Charge::FULL, Fraction(reserve));
     let settles = |outlook: Outlook, at: f64| match outlook {
-        Outlook::Settles { charge, .. } => assert!((charge.soc.0 - at).abs() < 2e-3, "{charge:?} for {at}"),
+        Outlook::Settles { charge, .. } => {
+            assert!((charge.soc.0 - at).abs() < 2e-3, "{charge:?} for {at}")
+        }
         Outlook::Breaks { .. } => panic!("{outlook:?}"),
     };
     settles(of(0, 0.4), 0.92419);
     settles(of(1, 0.4), 0.99152);
-    assert!(matches!(of(2, 0.75), Outlook::Breaks { shifts: 1, .. }), "{:?}", of(2, 0.75));
+    assert!(
+        matches!(of(2, 0.75), Outlook::Breaks { shifts: 1, .. }),
+        "{:?}",
+        of(2, 0.75)
+    );
     assert!(matches!(of(3, 0.7), Outlook::Breaks { shifts: 0, .. }));
     for (k, reserve, want) in [(2, 0.75, 14.736), (3, 0.7, 18.398)] {
         match machine(&all[k].0).lacking(Fraction(reserve)) {
             Lacking::Charge { charge, .. } => {
-                assert!((charge.0 - want).abs() < 0.01 * want + 0.03, "case {k}: {charge:?} for {want}");
+                assert!(
+                    (charge.0 - want).abs() < 0.01 * want + 0.03,
+                    "case {k}: {charge:?} for {want}"
+                );
             }
             Lacking::BeyondCharging => panic!("case {k}: charging helps"),
         }
@@ -283,13 +341,27 @@ fn verdicts_of_the_slow_computation() {
 /// The edge found by starting at the reserve is the edge found by trying currents one by one.
 #[test]
 fn the_edge_divides_keeping_up_from_not() {
-    for (k, reserve) in [(0, 0.93), (0, 0.4), (1, 0.9), (2, 0.75), (2, 0.4), (3, 0.7), (3, 0.3)] {
+    for (k, reserve) in [
+        (0, 0.93),
+        (0, 0.4),
+        (1, 0.9),
+        (2, 0.75),
+        (2, 0.4),
+        (3, 0.7),
+        (3, 0.3),
+    ] {
         let mut machine = machine(&cases()[k].0);
-        let edge = machine.edge(Fraction(reserve), super::Spread::Everywhere).expect("an edge");
+        let edge = machine
+            .edge(Fraction(reserve), super::Spread::Everywhere)
+            .expect("an edge");
         for (off, keeps) in [(2e-3, true), (-2e-3, false)] {
             machine.set_extra(edge + Amps(off));
             let outlook = machine.outlook(Charge::FULL, Fraction(reserve));
-            assert_eq!(outlook.keeps_up(), keeps, "case {k} at {reserve}: edge {edge:?} {off}: {outlook:?}");
+            assert_eq!(
+                outlook.keeps_up(),
+                keeps,
+                "case {k} at {reserve}: edge {edge:?} {off}: {outlook:?}"
+            );
         }
     }
 }

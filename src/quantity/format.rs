@@ -19,8 +19,8 @@
 //! ```
 
 use super::{
-    AmpHours, Amps, Celsius, Fraction, Grams, Henries, Hertz, Hours, Kelvins, Litres, Metres, Minutes,
-    Money, Ohms, Rpm, SquareMm, Volts, VoltsPerKelvin, VoltsPerRpm, WattHours, Watts,
+    AmpHours, Amps, Celsius, Fraction, Grams, Henries, Hertz, Hours, Kelvins, Litres, Metres,
+    Minutes, Money, Ohms, Rpm, SquareMm, Volts, VoltsPerKelvin, VoltsPerRpm, WattHours, Watts,
 };
 
 /// What stands for a number that is not finite.
@@ -85,7 +85,11 @@ fn plain(number: f64, decimals: usize) -> String {
     }
     let text = format!("{:.decimals$}", number.abs());
     let nothing = text.bytes().all(|b| b == b'0' || b == b'.');
-    if number < 0.0 && !nothing { format!("{MINUS}{text}") } else { text }
+    if number < 0.0 && !nothing {
+        format!("{MINUS}{text}")
+    } else {
+        text
+    }
 }
 
 /// Decimals that show `digits` significant digits of a number, at most six.
@@ -94,8 +98,16 @@ fn decimals_of(number: f64, digits: i32) -> usize {
         return 0;
     }
     // The exponent after rounding, so that 9.996 counts as 10.0.
-    let scientific = format!("{:.*e}", usize::try_from(digits - 1).unwrap_or(0), number.abs());
-    let exponent = scientific.split('e').nth(1).and_then(|e| e.parse::<i32>().ok()).unwrap_or(0);
+    let scientific = format!(
+        "{:.*e}",
+        usize::try_from(digits - 1).unwrap_or(0),
+        number.abs()
+    );
+    let exponent = scientific
+        .split('e')
+        .nth(1)
+        .and_then(|e| e.parse::<i32>().ok())
+        .unwrap_or(0);
     usize::try_from((digits - 1 - exponent).clamp(0, 6)).unwrap_or(0)
 }
 
@@ -111,7 +123,11 @@ fn significant(number: f64, digits: i32) -> String {
 
 /// A number and its unit, or the number alone where the unit is empty.
 fn join(number: String, unit: &str) -> String {
-    if unit.is_empty() { number } else { format!("{number} {unit}") }
+    if unit.is_empty() {
+        number
+    } else {
+        format!("{number} {unit}")
+    }
 }
 
 /// In a sentence: three significant digits (four for volts and rpm), zeros at the end dropped,
@@ -160,7 +176,11 @@ pub fn fixed_unit<Q: Written>(quantity: Q, decimals: usize) -> String {
 /// Puts a plus sign before a text whose number is above zero and does not read as nothing.
 fn plus(number: f64, text: String) -> String {
     let shows = text.bytes().any(|b| (b'1'..=b'9').contains(&b));
-    if number > 0.0 && number.is_finite() && shows { format!("+{text}") } else { text }
+    if number > 0.0 && number.is_finite() && shows {
+        format!("+{text}")
+    } else {
+        text
+    }
 }
 
 /// Decimals for a column: the largest value shows three digits, none shows more than two decimals.
@@ -232,7 +252,11 @@ pub fn duration(time: Hours) -> String {
         return NO_NUMBER.to_owned();
     }
     let seconds = time.seconds().abs();
-    let sign = if time.0 < 0.0 && seconds >= 0.05 { MINUS.to_string() } else { String::new() };
+    let sign = if time.0 < 0.0 && seconds >= 0.05 {
+        MINUS.to_string()
+    } else {
+        String::new()
+    };
     if seconds < 0.05 {
         return "0 min".to_owned();
     }
@@ -270,7 +294,10 @@ pub fn temperature(value: Celsius) -> String {
 #[must_use]
 pub fn money(amount: Money, currency: &str) -> String {
     let cents = plain(amount.0, 2);
-    join(cents.strip_suffix(".00").unwrap_or(&cents).to_owned(), currency)
+    join(
+        cents.strip_suffix(".00").unwrap_or(&cents).to_owned(),
+        currency,
+    )
 }
 
 /// A count with its noun: `1 shift`, `3 shifts`.
@@ -331,7 +358,11 @@ mod tests {
             (54000.0, "15 h"),
             (-720.0, "−12 min"),
         ] {
-            assert_eq!(duration(Hours::from_seconds(seconds)), wanted, "{seconds} s");
+            assert_eq!(
+                duration(Hours::from_seconds(seconds)),
+                wanted,
+                "{seconds} s"
+            );
         }
     }
 
@@ -353,11 +384,17 @@ mod tests {
             for share in [Fraction(x), Fraction(x / 3.0)] {
                 let written = precise(share);
                 let number: f64 = written.trim_end_matches(" %").parse().expect("a number");
-                assert!((Fraction::of(number) / share - 1.0).abs() < 4.5e-16, "{written}");
+                assert!(
+                    (Fraction::of(number) / share - 1.0).abs() < 4.5e-16,
+                    "{written}"
+                );
             }
             let written = precise(Henries(-x));
             let number: f64 = written.trim_end_matches(" mH").parse().expect("a number");
-            assert!((Henries::of(number) / Henries(-x) - 1.0).abs() < 4.5e-16, "{written}");
+            assert!(
+                (Henries::of(number) / Henries(-x) - 1.0).abs() < 4.5e-16,
+                "{written}"
+            );
             x *= 1.618_033;
         }
         assert_eq!(precise_duration(Hours(1.5)), "1 h 30 min");

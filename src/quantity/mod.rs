@@ -17,8 +17,8 @@
 //! let nonsense = Volts(12.0) + Amps(3.0);
 //! ```
 
-pub mod format;
 pub mod bounds;
+pub mod format;
 pub mod ops;
 pub mod parse;
 pub mod unit;
