@@ -75,6 +75,8 @@ pub struct Build {
     pub charger: Option<Charger>,
     /// All that was assumed, in the order of the file's sections.
     pub assumed: Vec<Assumed>,
+    /// What was assumed of the wiring: it bears on wires, fuses and relays only.
+    pub wiring_assumed: Vec<Assumed>,
     /// What the reader should know of the figures: guards hit, parts from memory.
     pub notes: Vec<String>,
     /// Currency of the prices: a label.

@@ -70,6 +70,8 @@ pub struct EngineText {
 pub struct StarterText {
     /// Path of the mapping.
     pub path: String,
+    /// Catalog part.
+    pub part: Option<Written<String>>,
     /// Current while cranking a warm (27 °C) engine.
     pub draw: Option<Written<Amps>>,
     /// Time of one start.

@@ -167,6 +167,7 @@ impl Case {
             days: None,
             charger: None,
             assumed: Vec::new(),
+            wiring_assumed: Vec::new(),
             notes: Vec::new(),
             currency: String::new(),
         }
