@@ -11,6 +11,10 @@ const WATER_MOLE: f64 = 18.015;
 /// Volume of one mole of an ideal gas at 25 °C and 101.325 kPa, litres.
 const GAS_MOLE: f64 = 24.465;
 
+/// Share of hydrogen in air from which the mixture burns.
+/// Source: 4 % is the figure commonly used; OSHA prints 4.1 %.
+pub const HYDROGEN_BURNS: Fraction = Fraction(0.04);
+
 impl Chemistry {
     /// Share of the gas that leaves the battery; the rest recombines to water.
     /// Flooded 1; valve-regulated 0.05: common practice, no single source (0.01
@@ -52,6 +56,13 @@ impl Battery {
     #[must_use]
     pub fn hydrogen_freed(&self, gassed: AmpHours) -> Litres {
         Litres(self.moles(gassed) * GAS_MOLE)
+    }
+
+    /// Still air that the hydrogen of a charge spent on gassing makes explosive:
+    /// its volume over [`HYDROGEN_BURNS`].
+    #[must_use]
+    pub fn explosive_air(&self, gassed: AmpHours) -> Litres {
+        self.hydrogen_freed(gassed) / HYDROGEN_BURNS.0
     }
 
     /// Moles of water split whose gas leaves the battery.

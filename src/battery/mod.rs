@@ -43,6 +43,7 @@ mod worked;
 
 pub use climate::{Charge, Climate, Rates};
 pub use crank::{Binds, Cranked, FREEZING_MARGIN, LEAST_CHARGE, StartFloor, StartMargin, Starter};
+pub use gassing::HYDROGEN_BURNS;
 pub use label::{Chemistry, Label};
 pub use note::Note;
 pub use rundown::Rundown;
