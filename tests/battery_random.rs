@@ -181,6 +181,9 @@ fn health_scales_capacity_and_resistance() {
     assert!((Battery::from_label(&measured).resistance().0 - 0.006).abs() < 1e-15);
 }
 
+/// Makes a label one that no battery has.
+type Spoil = fn(&mut Label);
+
 #[test]
 fn impossible_labels_are_mended_and_told() {
     let plain = Label {
@@ -189,86 +192,43 @@ fn impossible_labels_are_mended_and_told() {
         ..Label::new(Chemistry::Flooded, AmpHours(30.0))
     };
     assert_eq!(Battery::from_label(&plain).notes(), []);
-    let bad: [(Label, &str); 11] = [
+    let bad: [(Spoil, &str); 11] = [
         (
-            Label {
-                capacity: AmpHours(f64::NAN),
-                ..plain
-            },
+            |l| l.capacity = AmpHours(f64::NAN),
             "`capacity` is out of range",
         ),
         (
-            Label {
-                capacity: AmpHours(-3.0),
-                ..plain
-            },
+            |l| l.capacity = AmpHours(-3.0),
             "`capacity` is out of range",
         ),
+        (|l| l.health = Fraction(0.0), "`health` is out of range"),
+        (|l| l.gassing = Fraction(50.0), "`gassing` is out of range"),
         (
-            Label {
-                health: Fraction(0.0),
-                ..plain
-            },
-            "`health` is out of range",
-        ),
-        (
-            Label {
-                gassing: Fraction(50.0),
-                ..plain
-            },
-            "`gassing` is out of range",
-        ),
-        (
-            Label {
-                reserve_capacity: Some(Hours(9.0)),
-                ..plain
-            },
+            |l| l.reserve_capacity = Some(Hours(9.0)),
             "reserve_capacity` of 540 min",
         ),
         (
-            Label {
-                reserve_capacity: Some(Hours(0.1)),
-                ..plain
-            },
+            |l| l.reserve_capacity = Some(Hours(0.1)),
             "does not go with the 20 h",
         ),
+        (|l| l.reserve_amps = Amps(1.6), "too near the 20 h current"),
         (
-            Label {
-                reserve_amps: Amps(1.6),
-                ..plain
-            },
-            "too near the 20 h current",
-        ),
-        (
-            Label {
-                reserve_capacity: None,
-                ..plain
-            },
+            |l| l.reserve_capacity = None,
             "Peukert exponent 1.25 assumed",
         ),
         (
-            Label {
-                cold_cranking: None,
-                ..plain
-            },
+            |l| l.cold_cranking = None,
             "no cold-cranking rating stated, 240 A",
         ),
+        (|l| l.cold_cranking = Some(Amps(9000.0)), "implausibly high"),
         (
-            Label {
-                cold_cranking: Some(Amps(9000.0)),
-                ..plain
-            },
-            "implausibly high",
-        ),
-        (
-            Label {
-                rest_full: Some(Volts(11.0)),
-                ..plain
-            },
+            |l| l.rest_full = Some(Volts(11.0)),
             "no lead-acid battery's",
         ),
     ];
-    for (label, told) in bad {
+    for (spoil, told) in bad {
+        let mut label = plain;
+        spoil(&mut label);
         let battery = Battery::from_label(&label);
         let said: Vec<String> = battery.notes().iter().map(Note::to_string).collect();
         assert!(said.iter().any(|s| s.contains(told)), "{told}: {said:?}");

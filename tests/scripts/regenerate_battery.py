@@ -153,10 +153,10 @@ def write(folder):
         with open(folder / name, "w", newline="") as out:
             if name.endswith(".json"):
                 json.dump(figures, out, indent=1)
-                continue
-            header, rows = figures
-            csv.writer(out).writerow(header)
-            csv.writer(out).writerows([f"{x:.6g}" for x in row] for row in rows)
+            else:
+                header, rows = figures
+                csv.writer(out).writerow(header)
+                csv.writer(out).writerows([f"{x:.6g}" for x in row] for row in rows)
         print("wrote", folder / name)
 
 
