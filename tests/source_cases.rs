@@ -78,7 +78,7 @@ impl Row {
         }
     }
 
-    fn into_bus(&self, bus: f64) -> Output {
+    fn output(&self, bus: f64) -> Output {
         rectified(
             &self.winding(),
             &self.rectifier(),
@@ -106,7 +106,7 @@ impl Row {
 #[test]
 fn rectifiers() {
     for row in rows(&["half", "bridge", "bridge3"], 50) {
-        let out = row.into_bus(row.V);
+        let out = row.output(row.V);
         row.near(
             "mean",
             out.dc.0,
@@ -212,7 +212,7 @@ fn heat_under_a_series_regulator_is_inside_its_range() {
         .into_iter()
         .filter(holding)
     {
-        let available = row.into_bus(row.V_set.unwrap());
+        let available = row.output(row.V_set.unwrap());
         let range = series_regulated_heat(&row.winding(), &available, Amps(row.I_dc.unwrap()));
         let heat = copper_loss(&row.winding(), Amps(row.I_rms));
         assert!(
@@ -226,7 +226,7 @@ fn heat_under_a_series_regulator_is_inside_its_range() {
 #[test]
 fn heat_under_a_shunt_regulator_is_inside_its_spread() {
     for row in rows(&["bridge_shunt"], 2) {
-        let available = row.into_bus(row.V_set.unwrap());
+        let available = row.output(row.V_set.unwrap());
         let shorted = short_circuit(&row.winding(), Rpm(row.rpm));
         let heat =
             shunt_regulated_heat(&row.winding(), &available, shorted, Amps(row.I_dc.unwrap()));

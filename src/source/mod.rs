@@ -20,6 +20,7 @@ mod alternator;
 mod bridge;
 mod coil_bridge;
 mod coil_half_wave;
+mod coil_three_phase;
 mod constants;
 mod half_wave;
 mod inductance;

@@ -6,11 +6,11 @@
 use super::rectifier::Rectifier;
 use super::segment::Circuit;
 use super::winding::{Phases, Winding};
-use super::{coil_bridge, coil_half_wave};
+use super::{coil_bridge, coil_half_wave, coil_three_phase};
 use crate::quantity::{Amps, Henries, Ohms, Rpm, Volts, Watts};
 use crate::root::{self, RootError};
 use serde::Serialize;
-use std::f64::consts::PI;
+use std::f64::consts::{FRAC_PI_3, PI};
 use std::fmt;
 
 /// What hangs on a rectified circuit without a battery. At least one of the two.
@@ -42,8 +42,13 @@ pub struct CircuitOutput {
 pub enum CircuitError {
     /// Nothing hangs on it, or a resistance or inductance is zero, negative or not finite.
     Load,
-    /// Three phases without a battery are not computed.
+    /// On three phases only a bridge feeding coils alone is computed.
     ThreePhase,
+    /// The currents of three phases overlap by more than a sixth of a cycle, beyond which the equations do not hold.
+    Overlap {
+        /// The volts would be less than this.
+        under: Volts,
+    },
     /// The search for the operating point failed.
     Root(RootError),
 }
@@ -53,8 +58,16 @@ impl fmt::Display for CircuitError {
         match self {
             CircuitError::Load => write!(f, "the circuit's load has no lawful resistance"),
             CircuitError::ThreePhase => {
-                write!(f, "a three-phase winding without a battery is not computed")
+                write!(
+                    f,
+                    "without a battery a three-phase winding can only feed coils through a bridge"
+                )
             }
+            CircuitError::Overlap { under } => write!(
+                f,
+                "the load is too heavy for the three-phase winding: under {:.1} V its currents overlap without end",
+                under.0
+            ),
             CircuitError::Root(error) => write!(f, "the circuit has no operating point: {error}"),
         }
     }
@@ -92,9 +105,6 @@ pub(super) struct Driver {
 
 impl Driver {
     fn new(winding: &Winding, rectifier: &Rectifier, rpm: Rpm) -> Result<Driver, CircuitError> {
-        if winding.phases() == Phases::Three {
-            return Err(CircuitError::ThreePhase);
-        }
         let c = winding.at(rpm);
         let drops = rectifier.drops().0.max(0.0);
         if !(c.e.is_finite() && c.x.is_finite() && drops.is_finite()) {
@@ -127,22 +137,26 @@ impl Driver {
 #[derive(Clone, Copy, Debug)]
 enum Kind {
     Bridge,
+    ThreePhaseBridge,
     HalfWave,
     HalfWaveFreewheel,
 }
 
 impl Kind {
-    fn of(rectifier: &Rectifier, freewheel: bool) -> Kind {
-        match rectifier {
-            Rectifier::FullWave { .. } => Kind::Bridge,
-            Rectifier::HalfWave { .. } if freewheel => Kind::HalfWaveFreewheel,
-            Rectifier::HalfWave { .. } => Kind::HalfWave,
+    fn of(winding: &Winding, rectifier: &Rectifier, freewheel: bool) -> Result<Kind, CircuitError> {
+        match (rectifier, winding.phases()) {
+            (Rectifier::FullWave { .. }, Phases::One) => Ok(Kind::Bridge),
+            (Rectifier::FullWave { .. }, Phases::Three) => Ok(Kind::ThreePhaseBridge),
+            (Rectifier::HalfWave { .. }, Phases::Three) => Err(CircuitError::ThreePhase),
+            (Rectifier::HalfWave { .. }, Phases::One) if freewheel => Ok(Kind::HalfWaveFreewheel),
+            (Rectifier::HalfWave { .. }, Phases::One) => Ok(Kind::HalfWave),
         }
     }
 
     fn means(self, driver: &Driver, coil: f64) -> Means {
         match self {
             Kind::Bridge => coil_bridge::means(driver, coil),
+            Kind::ThreePhaseBridge => coil_three_phase::means(driver, coil).0,
             Kind::HalfWave => coil_half_wave::means(driver, coil),
             Kind::HalfWaveFreewheel => coil_half_wave::means_freewheel(driver, coil),
         }
@@ -152,13 +166,14 @@ impl Kind {
     fn most_volts(self, driver: &Driver) -> f64 {
         match self {
             Kind::Bridge => 2.0 * driver.c.e / PI,
+            Kind::ThreePhaseBridge => 3.0 * 3.0_f64.sqrt() * driver.c.e / PI,
             Kind::HalfWave => driver.c.e,
             Kind::HalfWaveFreewheel => driver.c.e / PI,
         }
     }
 
     /// The coil's steady current: mean volts fall as it rises, so V(I) = R_coil I has one root.
-    fn settle(self, driver: &Driver, coil: Option<Ohms>) -> Result<CircuitOutput, RootError> {
+    fn settle(self, driver: &Driver, coil: Option<Ohms>) -> Result<CircuitOutput, CircuitError> {
         let nothing = self.means(driver, 0.0);
         if nothing.volts <= 0.0 {
             return Ok(CircuitOutput::default());
@@ -172,6 +187,13 @@ impl Kind {
                 (amps, self.means(driver, amps))
             }
         };
+        if matches!(self, Kind::ThreePhaseBridge)
+            && coil_three_phase::means(driver, amps).1 > FRAC_PI_3
+        {
+            return Err(CircuitError::Overlap {
+                under: Volts(found.volts),
+            });
+        }
         Ok(CircuitOutput {
             volts: Volts(found.volts),
             coil: Amps(amps),
@@ -193,7 +215,7 @@ fn lawful(resistance: Option<Ohms>) -> bool {
 /// inductance grows; with a coil of 50 mH the current reads 0.1 to 0.7 % high (against a circuit simulator).
 ///
 /// # Errors
-/// [`CircuitError`]: no lawful load, a three-phase winding, no operating point. What one diode gives a coil alone,
+/// [`CircuitError`]: no lawful load, three phases feeding more than coils, no operating point. What one diode gives a coil alone,
 /// with no freewheel diode, depends on the coil's inductance and is [`half_wave_coil`]'s.
 pub fn without_battery(
     winding: &Winding,
@@ -202,14 +224,17 @@ pub fn without_battery(
     load: &CircuitLoad,
     freewheel: bool,
 ) -> Result<CircuitOutput, CircuitError> {
-    let kind = Kind::of(rectifier, freewheel);
+    let kind = Kind::of(winding, rectifier, freewheel)?;
     let coil_counts = load.coil.is_some() && !matches!(kind, Kind::HalfWave);
     if !(coil_counts || load.resistive.is_some()) || !lawful(load.coil) || !lawful(load.resistive) {
         return Err(CircuitError::Load);
     }
+    if load.resistive.is_some() && matches!(kind, Kind::ThreePhaseBridge) {
+        return Err(CircuitError::ThreePhase);
+    }
     let mut driver = Driver::new(winding, rectifier, rpm)?;
     driver.beside = load.resistive.map_or(f64::INFINITY, |r| r.0);
-    Ok(kind.settle(&driver, load.coil)?)
+    kind.settle(&driver, load.coil)
 }
 
 /// Ohms that a load of no current counts as.
@@ -232,7 +257,10 @@ pub fn without_battery_loaded(
     if !lawful(coil) {
         return Err(CircuitError::Load);
     }
-    let kind = Kind::of(rectifier, freewheel);
+    let kind = Kind::of(winding, rectifier, freewheel)?;
+    if matches!(kind, Kind::ThreePhaseBridge) {
+        return Err(CircuitError::ThreePhase);
+    }
     let driver = Driver::new(winding, rectifier, rpm)?;
     let at = |v: f64| {
         let beside = (v / current(Volts(v)).0).min(NEXT_TO_OPEN);
@@ -270,7 +298,7 @@ pub fn without_battery_loaded(
         (high, low) = (low, 0.9 * low);
     }
     let volts = root::bracketed(excess, low, high, 1e-12 * top)?;
-    Ok(at(volts)?)
+    at(volts)
 }
 
 /// A bridge feeding a coil alone: [`without_battery`] for the usual clutch circuit. `drop` is one diode's.
@@ -304,8 +332,11 @@ pub fn half_wave_coil(
     coil: Ohms,
     inductance: Henries,
 ) -> Result<CircuitOutput, CircuitError> {
-    if !lawful(Some(coil)) || !(inductance.is_finite() && inductance.0 >= 0.0) {
+    if !(lawful(Some(coil)) && inductance.is_finite() && inductance.0 >= 0.0) {
         return Err(CircuitError::Load);
+    }
+    if winding.phases() == Phases::Three {
+        return Err(CircuitError::ThreePhase);
     }
     let driver = Driver::new(winding, &Rectifier::HalfWave { drop }, rpm)?;
     let reactance = 2.0 * PI * winding.frequency(rpm).0.max(0.0) * inductance.0;

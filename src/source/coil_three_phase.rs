@@ -1,0 +1,64 @@
+//! A three-phase bridge that feeds a steady coil current, with no battery.
+
+use super::no_battery::{Driver, Means};
+use super::segment::{Circuit, Segment};
+use std::f64::consts::{FRAC_PI_3, FRAC_PI_6, PI};
+
+/// Means over a cycle of a three-phase bridge that feeds a steady current I, and the overlap angle, rad.
+///
+/// Equation, δ measured from where the EMFs of the leaving and the coming phase are equal:
+/// ```text
+/// the coming phase's current:  X di/dδ + R i = (√3/2) E sin δ + R I/2,  0 at δs = −asin(RI/√3E),  I at δe
+/// V = (3/π)[(E/2)(sin δe − sin δs) − (RI/2)(δe − δs) + E (cos(δe + π/6) − cos(δs + 5π/6))
+///           − RI (2π/3 − δe + δs)] − 2Vf
+/// ```
+/// where E peak line-to-neutral volts; R, X of one phase, ohms; V mean volts across the load.
+///
+/// Valid while the overlap δe − δs is at most π/3: the caller checks. R = 0: V = 1.35 V_LL − (3/π) X I − 2Vf and
+/// cos δe = 1 − 2XI/√3E. Beyond, the same equations are followed so that a search has a curve to follow.
+///
+/// Source: derived; the form for R = 0 in Mohan, Undeland and Robbins, Power Electronics (from memory).
+pub(super) fn means(d: &Driver, coil: f64) -> (Means, f64) {
+    let (e, r) = (d.c.e, d.c.r);
+    let line = 3.0_f64.sqrt() * e;
+    if e <= 0.0 || r * coil >= line {
+        return (
+            Means {
+                volts: -d.drops,
+                ..Means::default()
+            },
+            PI,
+        );
+    }
+    let starts = -(r * coil / line).asin();
+    let pair = Circuit {
+        e: 0.5 * line,
+        ..d.c
+    };
+    let coming = Segment::new(&pair, 0.0, -0.5 * r * coil, starts, 0.0);
+    let latest = PI - starts.abs();
+    if coming.current(latest) <= coil {
+        return (
+            Means {
+                volts: -d.drops,
+                ..Means::default()
+            },
+            PI,
+        );
+    }
+    let ends = coming.rises_to(coil, starts, latest);
+    let overlap = ends - starts;
+    let window = 2.0 * FRAC_PI_3;
+    let upper = 0.5 * e * (ends.sin() - starts.sin()) - 0.5 * r * coil * overlap
+        + e * ((ends + FRAC_PI_6).cos() - (starts + window + FRAC_PI_6).cos())
+        - r * coil * (window - overlap);
+    let (charge, square) = (coming.charge(ends), coming.square(ends));
+    // Rising, steady for what is left of a third of a cycle, falling as the mirror of the next one's rise.
+    let half_cycle = 2.0 * square - 2.0 * coil * charge + coil * coil * window;
+    let means = Means {
+        volts: 3.0 / PI * upper - d.drops,
+        power: 0.0,
+        winding_square: half_cycle / PI,
+    };
+    (means, overlap)
+}
