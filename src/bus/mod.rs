@@ -8,6 +8,8 @@ mod cuts;
 mod mean;
 mod point;
 mod supply;
+#[cfg(test)]
+mod tests;
 
 pub use cuts::Cuts;
 pub use mean::Flow;

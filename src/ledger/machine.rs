@@ -153,6 +153,14 @@ impl Machine {
         });
     }
 
+    /// Whether any constant power draws from the bus while the engine runs.
+    #[must_use]
+    pub fn has_constant_powers(&self) -> bool {
+        self.connected
+            .iter()
+            .any(|w| w.runs && w.bus.loads.heaviest_total().has_constant_powers())
+    }
+
     /// Adds a constant current on the bus in every running state, or takes one.
     pub fn set_extra(&mut self, extra: Amps) {
         for wired in self.connected.iter_mut().filter(|w| w.runs) {

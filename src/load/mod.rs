@@ -130,6 +130,12 @@ impl LoadSum {
         self.filament != 0.0
     }
 
+    /// Whether any constant power is in it.
+    #[must_use]
+    pub fn has_constant_powers(&self) -> bool {
+        self.watts != 0.0
+    }
+
     /// Whether nothing is in it.
     #[must_use]
     pub fn is_none(&self) -> bool {

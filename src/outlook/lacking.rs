@@ -15,8 +15,16 @@ use crate::root::bracketed;
 const BEYOND: f64 = 1e5;
 /// Width to which the current is found, A; the answer is taken on the side that holds.
 const CLOSE: f64 = 1e-7;
-/// Width, as a share, to which a current is halved out where the touching cycle does not tell.
-const HALVED_TO: f64 = 2e-4;
+/// Where between the reserve and the highest charge kept a cycle that holds itself up with less
+/// is looked for: at 1 − e^(−t) of the way, since a battery filled in every shift settles just
+/// under the highest.
+const DEPTHS: [f64; 7] = [13.0, 6.0, 3.5, 2.2, 1.4, 0.8, 0.35];
+/// Rounds in which the depths beside the best are tried.
+const REFINED: u32 = 3;
+/// Gain of charge that counts as a closed cycle.
+const CLOSED: f64 = 1e-9;
+/// Width, as a share of the current, to which it is found.
+const FOUND_TO: f64 = 2e-5;
 /// Times the lowest point of the cycle is looked for anew.
 const MOST_TURNS: u32 = 4;
 
@@ -77,7 +85,10 @@ impl Machine {
                 depletion: Fraction::ZERO,
             },
         };
-        let touching = search.current_for(|search| search.gain_touching())?;
+        let touching = search.current_for(0.0, |search| search.gain_touching())?;
+        if !self.has_constant_powers() {
+            return Some(Amps(touching));
+        }
         Some(Amps(search.held_up_from_full(touching)))
     }
 }
@@ -98,42 +109,37 @@ impl Search {
         }
     }
 
-    /// The current at which a gain of charge over the cycle is nought.
-    fn current_for(&mut self, gain_of: impl Fn(&mut Search) -> f64) -> Option<f64> {
-        let mut gain = |current: f64| {
-            self.add(current);
-            gain_of(self)
-        };
-        let here = gain(0.0);
+    /// The current at which a gain of charge over the cycle is nought, looked for from `start`.
+    fn current_for(&mut self, start: f64, gain_of: impl Fn(&mut Search) -> f64) -> Option<f64> {
         let capacity = self.machine.battery.cmax().0 / self.machine.running.0.max(1e-6);
-        let step = (1.2 * here.abs() * capacity).max(0.01);
         let mut gain = |current: f64| {
             self.add(current);
             gain_of(self)
         };
-        let (mut low, mut high) = ((0.0, here), (0.0, here));
+        let here = gain(start);
+        let mut reach = (1.2 * here.abs() * capacity).max(0.01);
+        let (mut low, mut high) = ((start, here), (start, here));
         if here < 0.0 {
             if gain(BEYOND) < 0.0 {
                 return None;
             }
-            let mut reach = step;
             while high.1 < 0.0 {
                 low = high;
-                high = (reach, gain(reach));
+                high = (start + reach, gain(start + reach));
                 reach *= 2.0;
             }
         } else {
-            let mut reach = step;
             while low.1 >= 0.0 {
                 if low.0 < -BEYOND {
                     return None;
                 }
                 high = low;
-                low = (-reach, gain(-reach));
+                low = (start - reach, gain(start - reach));
                 reach *= 2.0;
             }
         }
         let known = [low, high];
+        let tolerance = CLOSE.max(FOUND_TO * high.0.abs());
         let root = bracketed(
             |x| {
                 known
@@ -143,42 +149,66 @@ impl Search {
             },
             low.0,
             high.0,
-            CLOSE,
+            tolerance,
         );
-        root.ok().map(|x| x + CLOSE)
+        root.ok().map(|x| (x + tolerance).min(high.0))
     }
 
     /// The edge when a full battery holds itself up with less current than the touching cycle
-    /// needs, as constant powers allow: halved out between that and a current that fails.
+    /// needs, as constant powers allow: the least current with which any cycle above the reserve
+    /// closes.
     fn held_up_from_full(&mut self, touching: f64) -> f64 {
-        let width = CLOSE.max(HALVED_TO * touching.abs());
-        let mut holds = touching;
-        let mut reach = 4.0 * width;
-        let mut fails = loop {
-            let lower = holds - reach;
-            if !self.keeps_up(lower) {
-                break lower;
-            }
-            if lower < -BEYOND {
-                return lower;
-            }
-            holds = lower;
-            reach *= 4.0;
-        };
-        while holds - fails > width {
-            let middle = 0.5 * (holds + fails);
-            if self.keeps_up(middle) {
-                holds = middle;
-            } else {
-                fails = middle;
+        self.add(BEYOND);
+        let top = 1.0 + self.gain_from(1.0);
+        let mut least = touching;
+        let mut best = None;
+        for (k, depth) in DEPTHS.iter().enumerate() {
+            if self.lowers(&mut least, top, *depth) {
+                best = Some(k);
             }
         }
-        holds
+        let Some(best) = best else { return touching };
+        let mut around = [
+            DEPTHS[best.saturating_sub(1)],
+            DEPTHS[best],
+            DEPTHS[(best + 1).min(DEPTHS.len() - 1)],
+        ];
+        for _ in 0..REFINED {
+            let (before, after) = (0.5 * (around[0] + around[1]), 0.5 * (around[1] + around[2]));
+            around = if self.lowers(&mut least, top, before) {
+                [around[0], before, around[1]]
+            } else if self.lowers(&mut least, top, after) {
+                [around[1], after, around[2]]
+            } else {
+                [before, around[1], after]
+            };
+        }
+        least
     }
 
-    fn keeps_up(&mut self, current: f64) -> bool {
-        self.add(current);
-        self.machine.outlook(Charge::FULL, self.reserve).keeps_up()
+    /// Lowers the least current to that with which the cycle at a depth closes, if that is less.
+    fn lowers(&mut self, least: &mut f64, top: f64, depth: f64) -> bool {
+        let soc = self.reserve.0 + (1.0 - (-depth).exp()) * (top - self.reserve.0);
+        self.add(*least);
+        if self.gain_from(soc) <= CLOSED {
+            return false;
+        }
+        match self.current_for(*least, |search| search.gain_from(soc)) {
+            Some(current) if current < *least => {
+                *least = current;
+                true
+            }
+            _ => false,
+        }
+    }
+
+    /// Gain over a cycle begun where the touching cycle is lowest, with a charge.
+    fn gain_from(&mut self, soc: f64) -> f64 {
+        let begin = Charge {
+            soc: Fraction(soc),
+            depletion: self.turn.depletion,
+        };
+        self.machine.pass_around(self.turn.from, begin).end.soc.0 - soc
     }
 
     /// Gain of charge over a cycle that just touches the reserve. `turn` carries the lowest

@@ -60,7 +60,8 @@ impl Machine {
             };
         }
         let mut charge = start;
-        let mut last = None;
+        let mut lowest = start.soc;
+        let mut changes = [0.0; 2];
         for cycle in 0..PLAIN {
             let passed = self.pass(charge, reserve);
             if let Some(shift) = passed.broke {
@@ -69,18 +70,17 @@ impl Machine {
                     begins: charge,
                 };
             }
-            let change = passed.end.soc - charge.soc;
-            last = Some(passed.lowest);
-            if change.0.abs() < STILL {
+            changes = [changes[1], passed.end.soc.0 - charge.soc.0];
+            lowest = passed.lowest;
+            if changes[1].abs() < STILL {
                 return Outlook::Settles {
                     charge: passed.end,
-                    lowest: passed.lowest,
+                    lowest,
                 };
             }
             charge = passed.end;
         }
-        let lowest = last.unwrap_or(charge.soc);
-        match self.fixed_point(charge, lowest, reserve) {
+        match self.fixed_point(charge, lowest, reserve, limit(charge, changes)) {
             Some((charge, lowest)) => Outlook::Settles { charge, lowest },
             None => self.count(charge, reserve, PLAIN),
         }
@@ -131,6 +131,7 @@ impl Machine {
         charge: Charge,
         lowest: Fraction,
         reserve: Fraction,
+        limit: Option<f64>,
     ) -> Option<(Charge, Fraction)> {
         let at = |soc: f64| {
             let passed = self.pass_around(
@@ -148,6 +149,14 @@ impl Machine {
                 return None;
             }
             ((charge.soc.0, here), (1.0, at(1.0).0))
+        } else if let Some(near) = limit
+            .map(|soc| (soc, at(soc)))
+            .filter(|(_, (gain, _))| *gain >= 0.0)
+        {
+            if near.1.1.lowest < reserve {
+                return None;
+            }
+            ((near.0, near.1.0), (charge.soc.0, here))
         } else {
             let touching = self.touching(charge, lowest, reserve)?;
             let span = charge.soc.0 - touching;
@@ -206,4 +215,13 @@ impl Machine {
         }
         Some(soc)
     }
+}
+
+/// A charge a little under the limit of a falling sequence whose last two changes are given:
+/// Aitken's limit, and a quarter of the way to it further. None where it does not close in.
+fn limit(charge: Charge, changes: [f64; 2]) -> Option<f64> {
+    let ratio = changes[1] / changes[0];
+    let left = changes[1] * ratio / (1.0 - ratio);
+    let soc = charge.soc.0 + 1.25 * left;
+    (changes[1] < 0.0 && ratio > 0.0 && ratio < 0.98 && soc > 0.0).then_some(soc)
 }

@@ -366,3 +366,27 @@ fn the_edge_divides_keeping_up_from_not() {
         }
     }
 }
+
+#[test]
+#[ignore]
+fn timing() {
+    let all = cases();
+    for (k, reserve) in [(0, 0.4), (2, 0.75), (3, 0.7)] {
+        let m = machine(&all[k].0);
+        let t = std::time::Instant::now();
+        let mm = machine(&all[k].0);
+        let t0 = t.elapsed();
+        let t = std::time::Instant::now();
+        let _ = mm.pass_around(0, Charge::FULL);
+        let t1 = t.elapsed();
+        let t = std::time::Instant::now();
+        let o = m.outlook(Charge::FULL, Fraction(reserve));
+        let t2 = t.elapsed();
+        let t = std::time::Instant::now();
+        let _ = m.lacking(Fraction(reserve));
+        println!(
+            "{k}: new {t0:?} pass {t1:?} outlook {t2:?} lacking {:?} {o:?}",
+            t.elapsed()
+        );
+    }
+}
