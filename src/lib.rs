@@ -10,6 +10,7 @@ pub mod description;
 pub mod ledger;
 pub mod load;
 pub mod outlook;
+pub mod problem;
 pub mod quantity;
 pub mod report;
 pub mod root;

@@ -5,11 +5,24 @@
 
 pub mod accessory;
 pub mod charging;
+mod lower;
+mod open;
+pub mod path;
+pub mod places;
+mod raw;
+mod read;
+mod scan;
+pub mod set;
 
 pub use accessory::{AccessoryText, DrawText, DutyText, InrushText, LawName, WorksText};
 pub use charging::{
     AlternatorText, ChargingText, RatedText, ReadingText, RectifierText, RegulatorText, WindingText,
 };
+pub use read::{
+    bytes_of, read, read_accessory, read_battery, read_charging, read_file, read_kit, read_set,
+    read_starter,
+};
+pub use set::Assignment;
 
 use crate::battery::Chemistry;
 use crate::quantity::{
@@ -153,6 +166,17 @@ pub struct ChargerText {
     /// How long it stays on.
     pub time: Option<Written<Hours>>,
     /// Price.
+    pub price: Option<Written<Money>>,
+}
+
+/// A kit of a catalog: accessories added to a machine together.
+#[derive(Clone, Debug, Default)]
+pub struct KitText {
+    /// Path of the mapping.
+    pub path: String,
+    /// What it adds.
+    pub accessories: Vec<AccessoryText>,
+    /// Price of it all; the sum of its parts where none is written.
     pub price: Option<Written<Money>>,
 }
 

@@ -1,6 +1,6 @@
 //! What each written value may be: one table, which also words the messages.
 
-use super::unit::{self, Conversion, Unit};
+use super::unit::{self, Unit};
 use super::{
     AmpHours, Amps, Celsius, Fraction, Henries, Hours, Metres, Money, Ohms, Rpm, Volts,
     VoltsPerKelvin, Watts,
@@ -24,11 +24,7 @@ impl Limit {
     fn value<T: Unit>(self) -> f64 {
         match unit::find(self.unit, T::DIMENSION) {
             None => self.amount,
-            Some(row) => match (row.conversion, self.unit) {
-                // exact where a factor's rounding would shut out the limit itself
-                (Conversion::Times(_), "%") => self.amount / 100.0,
-                (conversion, _) => conversion.apply(self.amount),
-            },
+            Some(row) => row.conversion.apply(self.amount),
         }
     }
 }

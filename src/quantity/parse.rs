@@ -9,8 +9,8 @@ mod reader;
 pub use error::{ParseError, ParseErrorKind};
 pub use phrase::{at_speed, between, rated, surge};
 
-use super::unit::{Dimension, Unit};
-use super::{Fraction, Tolerance};
+use super::unit::{self, Dimension, Unit};
+use super::{Amps, Fraction, Ohms, Tolerance, Watts};
 use reader::Reader;
 
 /// A quantity as written, with the tolerance written beside it.
@@ -54,6 +54,52 @@ pub fn parse<T: Unit>(text: &str) -> Result<Measured<T>, ParseError> {
 /// [`ParseError`], as [`parse`].
 pub fn factor(text: &str) -> Result<Measured<Fraction>, ParseError> {
     Ok(measure(text, Dimension::Factor)?.map(Fraction))
+}
+
+/// What an accessory draws, by the unit written.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Draw {
+    /// `A`.
+    Current(Amps),
+    /// `ohm`.
+    Resistance(Ohms),
+    /// `W`.
+    Power(Watts),
+}
+
+/// Reads a power, a current or a resistance: `55 W`, `5 A`, `3.1 ohm`.
+///
+/// # Errors
+/// [`ParseError`]; of the three readings, that of the one which came furthest.
+pub fn draw(text: &str) -> Result<Measured<Draw>, ParseError> {
+    let mut worst: Option<ParseError> = None;
+    let readings = [Dimension::Power, Dimension::Current, Dimension::Resistance];
+    let form = |dimension, amount| match dimension {
+        Dimension::Current => Draw::Current(Amps(amount)),
+        Dimension::Resistance => Draw::Resistance(Ohms(amount)),
+        _ => Draw::Power(Watts(amount)),
+    };
+    for dimension in readings {
+        match measure(text, dimension) {
+            Ok(measured) => return Ok(measured.map(|x| form(dimension, x))),
+            Err(e) if worst.as_ref().is_none_or(|w| e.range.start > w.range.start) => {
+                worst = Some(e)
+            }
+            Err(_) => {}
+        }
+    }
+    let mut error = worst.unwrap_or(ParseError {
+        range: 0..0,
+        kind: ParseErrorKind::Empty,
+        wanted: Dimension::Draw,
+    });
+    if error.wanted == Dimension::Power {
+        error.wanted = Dimension::Draw;
+        if let ParseErrorKind::UnknownUnit { found, near } = &mut error.kind {
+            *near = unit::nearest(&unit::plain(found), Dimension::Draw);
+        }
+    }
+    Err(error)
 }
 
 /// Reads a whole number: poles, a count.

@@ -43,6 +43,8 @@ pub enum Dimension {
     Times,
     /// A plain number without a unit.
     Factor,
+    /// What an accessory draws: a power, a current or a resistance.
+    Draw,
 }
 
 impl Dimension {
@@ -67,6 +69,7 @@ impl Dimension {
             Dimension::Share => "a share in per cent",
             Dimension::Times => "a multiple",
             Dimension::Factor => "a plain number",
+            Dimension::Draw => "a power, a current or a resistance",
         }
     }
 
@@ -76,7 +79,7 @@ impl Dimension {
         match self {
             Dimension::Voltage => "14.2 V",
             Dimension::Current => "5 A",
-            Dimension::Power => "55 W",
+            Dimension::Power | Dimension::Draw => "55 W",
             Dimension::Resistance => "3.1 ohm",
             Dimension::Inductance => "0.4 mH",
             Dimension::Frequency => "50 Hz",
@@ -98,8 +101,17 @@ impl Dimension {
     pub fn units(self) -> impl Iterator<Item = &'static str> {
         UNITS
             .iter()
-            .filter(move |u| u.dimension == self && u.offered)
+            .filter(move |u| self.covers(u.dimension) && u.offered)
             .map(|u| u.word)
+    }
+
+    /// Whether a unit of the other dimension will do.
+    fn covers(self, other: Dimension) -> bool {
+        let draw = matches!(
+            other,
+            Dimension::Power | Dimension::Current | Dimension::Resistance
+        );
+        self == other || (self == Dimension::Draw && draw)
     }
 }
 
@@ -140,6 +152,8 @@ measures!(
 pub(crate) enum Conversion {
     /// Multiply.
     Times(f64),
+    /// Divide: exact for `350 mA` where a factor of 0.001 would not be.
+    Per(f64),
     /// Degrees Fahrenheit to degrees Celsius.
     Fahrenheit,
     /// American wire gauge to square millimetres.
@@ -151,6 +165,7 @@ impl Conversion {
     pub(crate) fn apply(self, written: f64) -> f64 {
         match self {
             Conversion::Times(factor) => written * factor,
+            Conversion::Per(parts) => written / parts,
             Conversion::Fahrenheit => (written - 32.0) * 5.0 / 9.0,
             Conversion::Gauge => gauge_section(written),
         }
@@ -183,88 +198,89 @@ pub(crate) struct UnitWord {
 }
 
 /// A row whose spelling messages offer.
-const fn unit(word: &'static str, dimension: Dimension, factor: f64) -> UnitWord {
+const fn unit(word: &'static str, dimension: Dimension, conversion: Conversion) -> UnitWord {
     UnitWord {
         word,
         dimension,
-        conversion: Conversion::Times(factor),
+        conversion,
         offered: true,
     }
 }
 
 /// A row that is understood but not offered.
-const fn also(word: &'static str, dimension: Dimension, factor: f64) -> UnitWord {
+const fn also(word: &'static str, dimension: Dimension, conversion: Conversion) -> UnitWord {
     UnitWord {
         word,
         dimension,
-        conversion: Conversion::Times(factor),
+        conversion,
         offered: false,
     }
 }
 
+use Conversion::{Per, Times};
 use Dimension as D;
 
 /// Every spelling. Where one word measures two things (`V` at a setpoint and per degree), the first row names it in messages.
 pub(crate) const UNITS: &[UnitWord] = &[
-    unit("V", D::Voltage, 1.0),
-    unit("mV", D::Voltage, 1e-3),
-    also("volt", D::Voltage, 1.0),
-    also("volts", D::Voltage, 1.0),
-    unit("A", D::Current, 1.0),
-    unit("mA", D::Current, 1e-3),
-    also("uA", D::Current, 1e-6),
-    also("amp", D::Current, 1.0),
-    also("amps", D::Current, 1.0),
-    unit("W", D::Power, 1.0),
-    unit("kW", D::Power, 1e3),
-    also("mW", D::Power, 1e-3),
-    also("watt", D::Power, 1.0),
-    also("watts", D::Power, 1.0),
-    unit("ohm", D::Resistance, 1.0),
-    unit("mΩ", D::Resistance, 1e-3),
-    also("Ω", D::Resistance, 1.0),
-    also("ohms", D::Resistance, 1.0),
-    also("mohm", D::Resistance, 1e-3),
-    also("kΩ", D::Resistance, 1e3),
-    also("kohm", D::Resistance, 1e3),
-    unit("mH", D::Inductance, 1e-3),
-    unit("uH", D::Inductance, 1e-6),
-    unit("H", D::Inductance, 1.0),
-    unit("Hz", D::Frequency, 1.0),
-    unit("rpm", D::Speed, 1.0),
-    unit("Ah", D::Charge, 1.0),
-    also("mAh", D::Charge, 1e-3),
-    unit("h", D::Duration, 1.0),
-    unit("min", D::Duration, 1.0 / 60.0),
-    unit("s", D::Duration, 1.0 / 3600.0),
-    unit("d", D::Duration, 24.0),
-    also("ms", D::Duration, 1.0 / 3_600_000.0),
-    also("hour", D::Duration, 1.0),
-    also("hours", D::Duration, 1.0),
-    also("hr", D::Duration, 1.0),
-    also("hrs", D::Duration, 1.0),
-    also("minute", D::Duration, 1.0 / 60.0),
-    also("minutes", D::Duration, 1.0 / 60.0),
-    also("mins", D::Duration, 1.0 / 60.0),
-    also("second", D::Duration, 1.0 / 3600.0),
-    also("seconds", D::Duration, 1.0 / 3600.0),
-    also("sec", D::Duration, 1.0 / 3600.0),
-    also("day", D::Duration, 24.0),
-    also("days", D::Duration, 24.0),
-    unit("m", D::Length, 1.0),
-    unit("cm", D::Length, 1e-2),
-    unit("ft", D::Length, 0.3048),
-    unit("in", D::Length, 0.0254),
-    also("mm", D::Length, 1e-3),
-    unit("mm2", D::Section, 1.0),
+    unit("V", D::Voltage, Times(1.0)),
+    unit("mV", D::Voltage, Per(1e3)),
+    also("volt", D::Voltage, Times(1.0)),
+    also("volts", D::Voltage, Times(1.0)),
+    unit("A", D::Current, Times(1.0)),
+    unit("mA", D::Current, Per(1e3)),
+    also("uA", D::Current, Per(1e6)),
+    also("amp", D::Current, Times(1.0)),
+    also("amps", D::Current, Times(1.0)),
+    unit("W", D::Power, Times(1.0)),
+    unit("kW", D::Power, Times(1e3)),
+    also("mW", D::Power, Per(1e3)),
+    also("watt", D::Power, Times(1.0)),
+    also("watts", D::Power, Times(1.0)),
+    unit("ohm", D::Resistance, Times(1.0)),
+    unit("mΩ", D::Resistance, Per(1e3)),
+    also("Ω", D::Resistance, Times(1.0)),
+    also("ohms", D::Resistance, Times(1.0)),
+    also("mohm", D::Resistance, Per(1e3)),
+    also("kΩ", D::Resistance, Times(1e3)),
+    also("kohm", D::Resistance, Times(1e3)),
+    unit("mH", D::Inductance, Per(1e3)),
+    unit("uH", D::Inductance, Per(1e6)),
+    unit("H", D::Inductance, Times(1.0)),
+    unit("Hz", D::Frequency, Times(1.0)),
+    unit("rpm", D::Speed, Times(1.0)),
+    unit("Ah", D::Charge, Times(1.0)),
+    also("mAh", D::Charge, Per(1e3)),
+    unit("h", D::Duration, Times(1.0)),
+    unit("min", D::Duration, Per(60.0)),
+    unit("s", D::Duration, Per(3600.0)),
+    unit("d", D::Duration, Times(24.0)),
+    also("ms", D::Duration, Per(3.6e6)),
+    also("hour", D::Duration, Times(1.0)),
+    also("hours", D::Duration, Times(1.0)),
+    also("hr", D::Duration, Times(1.0)),
+    also("hrs", D::Duration, Times(1.0)),
+    also("minute", D::Duration, Per(60.0)),
+    also("minutes", D::Duration, Per(60.0)),
+    also("mins", D::Duration, Per(60.0)),
+    also("second", D::Duration, Per(3600.0)),
+    also("seconds", D::Duration, Per(3600.0)),
+    also("sec", D::Duration, Per(3600.0)),
+    also("day", D::Duration, Times(24.0)),
+    also("days", D::Duration, Times(24.0)),
+    unit("m", D::Length, Times(1.0)),
+    unit("cm", D::Length, Per(100.0)),
+    unit("ft", D::Length, Times(0.3048)),
+    unit("in", D::Length, Times(0.0254)),
+    also("mm", D::Length, Per(1e3)),
+    unit("mm2", D::Section, Times(1.0)),
     UnitWord {
         word: "AWG",
         dimension: D::Section,
         conversion: Conversion::Gauge,
         offered: true,
     },
-    unit("°C", D::Temperature, 1.0),
-    also("C", D::Temperature, 1.0),
+    unit("°C", D::Temperature, Times(1.0)),
+    also("C", D::Temperature, Times(1.0)),
     UnitWord {
         word: "F",
         dimension: D::Temperature,
@@ -277,21 +293,21 @@ pub(crate) const UNITS: &[UnitWord] = &[
         conversion: Conversion::Fahrenheit,
         offered: false,
     },
-    unit("K", D::Difference, 1.0),
-    also("°C", D::Difference, 1.0),
-    also("C", D::Difference, 1.0),
-    also("°F", D::Difference, 5.0 / 9.0),
-    also("F", D::Difference, 5.0 / 9.0),
-    unit("mV", D::Drift, 1e-3),
-    unit("V", D::Drift, 1.0),
-    also("mV/K", D::Drift, 1e-3),
-    also("mV/°C", D::Drift, 1e-3),
-    also("mV/C", D::Drift, 1e-3),
-    also("V/K", D::Drift, 1.0),
-    also("V/°C", D::Drift, 1.0),
-    unit("%", D::Share, 0.01),
-    unit("x", D::Times, 1.0),
-    also("times", D::Times, 1.0),
+    unit("K", D::Difference, Times(1.0)),
+    also("°C", D::Difference, Times(1.0)),
+    also("C", D::Difference, Times(1.0)),
+    also("°F", D::Difference, Per(1.8)),
+    also("F", D::Difference, Per(1.8)),
+    unit("mV", D::Drift, Per(1e3)),
+    unit("V", D::Drift, Times(1.0)),
+    also("mV/K", D::Drift, Per(1e3)),
+    also("mV/°C", D::Drift, Per(1e3)),
+    also("mV/C", D::Drift, Per(1e3)),
+    also("V/K", D::Drift, Times(1.0)),
+    also("V/°C", D::Drift, Times(1.0)),
+    unit("%", D::Share, Per(100.0)),
+    unit("x", D::Times, Times(1.0)),
+    also("times", D::Times, Times(1.0)),
 ];
 
 /// The word with the code points that look alike made one: `µ` and `μ` to `u`, both ohm signs, `×` to `x`, `²` to `2`.
@@ -322,7 +338,7 @@ pub(crate) fn measured_by(word: &str) -> Option<Dimension> {
 
 /// The unit nearest to an unknown word: the same letters in another case first, then one letter off.
 pub(crate) fn nearest(word: &str, dimension: Dimension) -> Option<&'static str> {
-    let rows = || UNITS.iter().filter(|u| u.dimension == dimension);
+    let rows = || UNITS.iter().filter(|u| dimension.covers(u.dimension));
     let lower = word.to_lowercase();
     rows()
         .find(|u| u.word != word && u.word.to_lowercase() == lower)

@@ -62,16 +62,16 @@ impl<'a> Reader<'a> {
 
     /// A number with its unit, in the quantity's own unit.
     pub(super) fn quantity(&mut self) -> Result<f64, ParseError> {
-        if self.wanted == Dimension::Section {
-            if let Some(section) = self.gauge()? {
-                return Ok(section);
-            }
+        if self.wanted == Dimension::Section
+            && let Some(section) = self.gauge()?
+        {
+            return Ok(section);
         }
         let number = self.number()?;
         let (unit, word) = self.unit(&number)?;
         let mut value = unit.apply(number.value);
-        if let (Dimension::Duration, Conversion::Times(first)) = (self.wanted, unit) {
-            value = self.more_time(value, first)?;
+        if self.wanted == Dimension::Duration {
+            value = self.more_time(value, unit.apply(1.0))?;
         }
         if !value.is_finite() {
             return self.fail(number.range.start..word.end, |found| {
@@ -115,13 +115,11 @@ impl<'a> Reader<'a> {
             }
             let number = self.number()?;
             let (unit, word) = self.unit(&number)?;
-            let Conversion::Times(factor) = unit else {
-                return Ok(hours);
-            };
+            let factor = unit.apply(1.0);
             if factor >= last {
                 return self.fail(word, |found| ParseErrorKind::Order { found });
             }
-            hours += number.value * factor;
+            hours += unit.apply(number.value);
             last = factor;
         }
     }

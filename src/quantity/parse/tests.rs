@@ -362,6 +362,64 @@ fn errors_name_what_stands_there() {
 }
 
 #[test]
+fn a_draw_is_told_by_its_unit() {
+    assert_eq!(draw("55 W").map(|m| m.value), Ok(Draw::Power(Watts(55.0))));
+    assert_eq!(
+        draw("350 mA").map(|m| m.value),
+        Ok(Draw::Current(Amps(0.35)))
+    );
+    assert_eq!(
+        draw("3.1 ohm ± 8 %").map(|m| m.value),
+        Ok(Draw::Resistance(Ohms(3.1)))
+    );
+    let say = |text: &str| {
+        draw(text).map_err(|e| (text[e.range.clone()].to_string(), e.to_string(), e.label()))
+    };
+    let same = |a: &str, b: &str, c: &str| Err((a.to_string(), b.to_string(), c.to_string()));
+    assert_eq!(
+        say("55 V").map(|_| ()),
+        same(
+            "V",
+            "wrong unit: `V` is a voltage, a power, a current or a resistance is needed",
+            "a voltage"
+        )
+    );
+    assert_eq!(
+        say("55").map(|_| ()),
+        same(
+            "55",
+            "unit missing: `55` must be a power, a current or a resistance",
+            "a number without a unit: `A`, `mA`, `W`, `kW`, `ohm` or `mΩ`"
+        )
+    );
+    assert_eq!(
+        say("5 a").map(|_| ()),
+        same(
+            "a",
+            "unknown unit `a`: a power, a current or a resistance is needed",
+            "did you mean `A`?"
+        )
+    );
+    // the tolerance is held against the law that was written
+    assert_eq!(
+        say("5 A ± 3 W").map(|_| ()),
+        same(
+            "W",
+            "wrong unit: `W` is a power, a current is needed",
+            "a power"
+        )
+    );
+    assert_eq!(
+        say("55 W ± 3 A").map(|_| ()),
+        same(
+            "A",
+            "wrong unit: `A` is a current, a power, a current or a resistance is needed",
+            "a current"
+        )
+    );
+}
+
+#[test]
 fn messages_are_sentences() {
     let say = |text: &str| parse::<Watts>(text).map_err(|e| (e.to_string(), e.label(), e.help()));
     let same = |a: &str, b: &str, c: &str| Err((a.to_string(), b.to_string(), c.to_string()));

@@ -1,0 +1,174 @@
+//! From the keys as serde read them to typed values, all that is wrong gathered on the way.
+
+mod accessory;
+mod battery;
+mod charging;
+mod engine;
+mod fit;
+mod leaf;
+mod rest;
+
+use super::Description;
+use super::path;
+use super::places::Places;
+use super::raw::{self, Keys, List, Map, Named, Node};
+use crate::problem::words::nearest;
+use crate::problem::{Problem, Problems, Shape, ShapeProblem};
+
+/// What lowering reads beside the raw keys, and the problems found so far.
+pub(super) struct Lower<'a> {
+    text: &'a str,
+    places: &'a Places,
+    /// Mappings with a misspelt key, and the key that was meant.
+    misspelt: Vec<(String, &'static str)>,
+    /// Gathered in passing.
+    pub(super) problems: Problems,
+}
+
+impl<'a> Lower<'a> {
+    /// Begins with nothing wrong.
+    pub(super) fn new(text: &'a str, places: &'a Places) -> Self {
+        Lower {
+            text,
+            places,
+            misspelt: Vec::new(),
+            problems: Problems::default(),
+        }
+    }
+
+    fn problem(&mut self, problem: Problem) {
+        self.problems.push(problem);
+    }
+
+    /// A key that must be there and is not. Where a misspelt key stands for it, that has been told.
+    fn missing(&mut self, path: &str, key: &'static str, example: &'static str) {
+        if self
+            .misspelt
+            .iter()
+            .any(|(at, meant)| at == path && *meant == key)
+        {
+            return;
+        }
+        self.problem(Problem::value(path, ShapeProblem::Missing { key, example }));
+    }
+
+    /// A value of another shape than its key wants, or none.
+    fn wrong_shape<L, M>(&mut self, node: &Node<L, M>, path: &str, wanted: &'static str) {
+        let found = match node {
+            Node::Absent => return,
+            Node::Null => {
+                // `~` and `null` leave a key out on purpose
+                let written = self.places.find(path).and_then(|f| self.text.get(f.value));
+                if written.is_none_or(|w| w.trim().is_empty()) {
+                    self.problem(Problem::value(path, ShapeProblem::NoValue { wanted }));
+                }
+                return;
+            }
+            Node::Text(_) | Node::Plain => Shape::Single,
+            Node::List(_) => Shape::List,
+            Node::Mapping(_) => Shape::Mapping,
+        };
+        self.problem(Problem::value(
+            path,
+            ShapeProblem::WrongShape { found, wanted },
+        ));
+    }
+
+    /// The keys of a mapping; those that are not known are told.
+    fn keys<'k, T>(&mut self, keys: &'k Keys<T>, path: &str) -> &'k T {
+        for found in &keys.unknown {
+            let problem = ShapeProblem::UnknownKey {
+                found: found.clone(),
+                known: keys.known.to_vec(),
+            };
+            self.problem(Problem::key(path::key(path, found), problem));
+            if let Some(meant) = nearest(found, keys.known.iter().copied()) {
+                self.misspelt.push((path.to_owned(), meant));
+            }
+        }
+        &keys.body
+    }
+
+    /// The keys of a mapping, where one stands.
+    pub(super) fn map<'k, T>(&mut self, node: &'k Map<T>, path: &str) -> Option<&'k T> {
+        match node {
+            Node::Mapping(keys) => Some(self.keys(keys, path)),
+            other => {
+                self.wrong_shape(other, path, "a mapping of keys");
+                None
+            }
+        }
+    }
+
+    /// The entries of a list, where one stands.
+    fn list<'k, T>(&mut self, node: &'k List<T>, path: &str) -> Option<&'k [T]> {
+        match node {
+            Node::List(entries) => Some(entries),
+            other => {
+                self.wrong_shape(other, path, "a list");
+                None
+            }
+        }
+    }
+
+    /// The entries of a mapping with names of the user's choice.
+    fn named<'k, T>(&mut self, node: &'k Named<T>, path: &str) -> Option<&'k [(String, T)]> {
+        match node {
+            Node::Mapping(names) => Some(&names.0),
+            other => {
+                self.wrong_shape(other, path, "a mapping of names to values");
+                None
+            }
+        }
+    }
+
+    /// The whole file. None where something that must be there is wrong; the problems say what.
+    pub(super) fn file(&mut self, root: &Map<raw::File>) -> Option<Description> {
+        let file = self.map(root, "")?;
+        let build = self.name("", "build", &file.build);
+        if file.build.is_absent() {
+            self.missing("", "build", "build: Orchard mower, evening work");
+        }
+        let engine = self.engine(&file.engine);
+        let charging = self.charging_list(&file.charging);
+        let battery = self
+            .map(&file.battery, "battery")
+            .map(|b| self.battery(b, "battery"));
+        let accessories = self.accessories(&file.accessories, "accessories");
+        if file.accessories.is_absent() {
+            self.missing("", "accessories", "accessories: []");
+        }
+        let shift = self.shift(&file.shift);
+        let air = self.quantity("", "air", &file.air, &crate::quantity::bounds::AIR);
+        let parked = self.quantity(
+            "",
+            "parked",
+            &file.parked,
+            &crate::quantity::bounds::PARKED_TIME,
+        );
+        let days = self.days(&file.days);
+        let charger = self.charger(&file.charger);
+        let may = self.map(&file.may, "may").map(|m| self.may(m));
+        let wiring = self
+            .map(&file.wiring, "wiring")
+            .map(|w| self.wiring(w))
+            .unwrap_or_default();
+        self.fit(&engine, &accessories, &shift, may.as_ref());
+        let build = build?;
+        let whole = Description {
+            build,
+            air,
+            engine,
+            charging,
+            battery,
+            accessories,
+            shift,
+            parked,
+            days,
+            charger,
+            may,
+            wiring,
+        };
+        self.problems.is_empty().then_some(whole)
+    }
+}

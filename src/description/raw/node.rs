@@ -1,0 +1,242 @@
+//! A value of any shape, read by serde without losing what stands there.
+//!
+//! Serde stops at the first surprise. Here nothing surprises: a wrong shape is kept as such,
+//! an unknown key is set aside, and both are told later together with all else that is wrong.
+
+use serde::de::value::StringDeserializer;
+use serde::de::{
+    Deserialize, DeserializeSeed, Deserializer, IgnoredAny, IntoDeserializer, MapAccess, SeqAccess,
+    Visitor,
+};
+use std::fmt;
+use std::marker::PhantomData;
+
+/// A value as found: `L` is what a list would be, `M` what a mapping would be.
+#[derive(Clone, Debug, Default)]
+pub(crate) enum Node<L, M> {
+    /// The key is not there.
+    #[default]
+    Absent,
+    /// Nothing, `~` or `null`.
+    Null,
+    /// Text.
+    Text(String),
+    /// What YAML takes for a number or a truth value; its text stands in the file.
+    Plain,
+    /// A list.
+    List(L),
+    /// A mapping.
+    Mapping(M),
+}
+
+/// A single value.
+pub(crate) type Leaf = Node<Refused, Refused>;
+/// A mapping with known keys.
+pub(crate) type Map<T> = Node<Refused, Keys<T>>;
+/// A list.
+pub(crate) type List<T> = Node<Vec<T>, Refused>;
+/// A mapping with keys of the user's choice.
+pub(crate) type Named<T> = Node<Refused, Names<T>>;
+
+impl<L, M> Node<L, M> {
+    /// Whether the key is not there.
+    pub(crate) fn is_absent(&self) -> bool {
+        matches!(self, Node::Absent)
+    }
+}
+
+/// A collection where none belongs.
+#[derive(Clone, Copy, Debug)]
+pub(crate) struct Refused;
+
+/// A mapping with known keys, and what stood beside them.
+#[derive(Clone, Debug)]
+pub(crate) struct Keys<T> {
+    /// The known keys.
+    pub(crate) body: T,
+    /// Keys that are not known.
+    pub(crate) unknown: Vec<String>,
+    /// The keys that are.
+    pub(crate) known: &'static [&'static str],
+}
+
+/// Keys of the user's choice, in the order written; of one given twice, the first.
+#[derive(Clone, Debug)]
+pub(crate) struct Names<T>(pub(crate) Vec<(String, T)>);
+
+/// What can stand for a list.
+pub(crate) trait FromSeq<'de>: Sized {
+    fn from_seq<A: SeqAccess<'de>>(list: A) -> Result<Self, A::Error>;
+}
+
+/// What can stand for a mapping.
+pub(crate) trait FromMap<'de>: Sized {
+    fn from_map<A: MapAccess<'de>>(map: A) -> Result<Self, A::Error>;
+}
+
+impl<'de> FromSeq<'de> for Refused {
+    fn from_seq<A: SeqAccess<'de>>(mut list: A) -> Result<Self, A::Error> {
+        while list.next_element::<IgnoredAny>()?.is_some() {}
+        Ok(Refused)
+    }
+}
+
+impl<'de> FromMap<'de> for Refused {
+    fn from_map<A: MapAccess<'de>>(mut map: A) -> Result<Self, A::Error> {
+        while map.next_entry::<IgnoredAny, IgnoredAny>()?.is_some() {}
+        Ok(Refused)
+    }
+}
+
+impl<'de, T: Deserialize<'de>> FromSeq<'de> for Vec<T> {
+    fn from_seq<A: SeqAccess<'de>>(mut list: A) -> Result<Self, A::Error> {
+        let mut out = Vec::new();
+        while let Some(entry) = list.next_element()? {
+            out.push(entry);
+        }
+        Ok(out)
+    }
+}
+
+impl<'de, T: Deserialize<'de>> FromMap<'de> for Names<T> {
+    fn from_map<A: MapAccess<'de>>(mut map: A) -> Result<Self, A::Error> {
+        let mut out: Vec<(String, T)> = Vec::new();
+        let mut seen = std::collections::BTreeSet::new();
+        while let Some((key, value)) = map.next_entry::<String, T>()? {
+            if seen.insert(key.clone()) {
+                out.push((key, value));
+            }
+        }
+        Ok(Names(out))
+    }
+}
+
+impl<'de, T: Deserialize<'de>> FromMap<'de> for Keys<T> {
+    fn from_map<A: MapAccess<'de>>(map: A) -> Result<Self, A::Error> {
+        let mut aside = Aside::default();
+        let body = T::deserialize(Sieve {
+            map,
+            aside: &mut aside,
+        })?;
+        Ok(Keys {
+            body,
+            unknown: aside.unknown,
+            known: aside.known,
+        })
+    }
+}
+
+impl<'de, L: FromSeq<'de>, M: FromMap<'de>> Deserialize<'de> for Node<L, M> {
+    fn deserialize<D: Deserializer<'de>>(deserializer: D) -> Result<Self, D::Error> {
+        deserializer.deserialize_any(AnyShape(PhantomData))
+    }
+}
+
+/// Visits whatever stands there.
+struct AnyShape<L, M>(PhantomData<(L, M)>);
+
+macro_rules! plain {
+    ($($visit:ident($type:ty)),*) => { $(
+        fn $visit<E>(self, _: $type) -> Result<Self::Value, E> { Ok(Node::Plain) }
+    )* };
+}
+
+impl<'de, L: FromSeq<'de>, M: FromMap<'de>> Visitor<'de> for AnyShape<L, M> {
+    type Value = Node<L, M>;
+
+    fn expecting(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        f.write_str("a value, a list or a mapping")
+    }
+    plain!(
+        visit_bool(bool),
+        visit_i64(i64),
+        visit_u64(u64),
+        visit_i128(i128),
+        visit_u128(u128),
+        visit_f64(f64)
+    );
+    fn visit_str<E>(self, text: &str) -> Result<Self::Value, E> {
+        Ok(Node::Text(text.to_owned()))
+    }
+    fn visit_unit<E>(self) -> Result<Self::Value, E> {
+        Ok(Node::Null)
+    }
+    fn visit_seq<A: SeqAccess<'de>>(self, list: A) -> Result<Self::Value, A::Error> {
+        L::from_seq(list).map(Node::List)
+    }
+    fn visit_map<A: MapAccess<'de>>(self, map: A) -> Result<Self::Value, A::Error> {
+        M::from_map(map).map(Node::Mapping)
+    }
+}
+
+/// What the sieve held back.
+#[derive(Default)]
+struct Aside {
+    unknown: Vec<String>,
+    known: &'static [&'static str],
+}
+
+/// Gives a struct's own keys to it, each once, and sets the others aside.
+struct Sieve<'a, A> {
+    map: A,
+    aside: &'a mut Aside,
+}
+
+impl<'de, A: MapAccess<'de>> Deserializer<'de> for Sieve<'_, A> {
+    type Error = A::Error;
+
+    fn deserialize_struct<V: Visitor<'de>>(
+        self,
+        _name: &'static str,
+        fields: &'static [&'static str],
+        visitor: V,
+    ) -> Result<V::Value, A::Error> {
+        self.aside.known = fields;
+        visitor.visit_map(Sieved {
+            map: self.map,
+            aside: self.aside,
+            given: vec![false; fields.len()],
+        })
+    }
+    fn deserialize_any<V: Visitor<'de>>(self, visitor: V) -> Result<V::Value, A::Error> {
+        visitor.visit_map(self.map)
+    }
+    serde::forward_to_deserialize_any! {
+        bool i8 i16 i32 i64 i128 u8 u16 u32 u64 u128 f32 f64 char str string bytes byte_buf option unit
+        unit_struct newtype_struct seq tuple tuple_struct map enum identifier ignored_any
+    }
+}
+
+struct Sieved<'a, A> {
+    map: A,
+    aside: &'a mut Aside,
+    given: Vec<bool>,
+}
+
+impl<'de, A: MapAccess<'de>> MapAccess<'de> for Sieved<'_, A> {
+    type Error = A::Error;
+
+    fn next_key_seed<K: DeserializeSeed<'de>>(
+        &mut self,
+        seed: K,
+    ) -> Result<Option<K::Value>, A::Error> {
+        while let Some(key) = self.map.next_key::<String>()? {
+            let field = self.aside.known.iter().position(|known| *known == key);
+            match field.and_then(|i| self.given.get_mut(i)) {
+                Some(given) if !*given => {
+                    *given = true;
+                    let key: StringDeserializer<A::Error> = key.into_deserializer();
+                    return seed.deserialize(key).map(Some);
+                }
+                // given twice: the scan tells of it
+                Some(_) => {}
+                None => self.aside.unknown.push(key),
+            }
+            self.map.next_value::<IgnoredAny>()?;
+        }
+        Ok(None)
+    }
+    fn next_value_seed<V: DeserializeSeed<'de>>(&mut self, seed: V) -> Result<V::Value, A::Error> {
+        self.map.next_value_seed(seed)
+    }
+}

@@ -1,0 +1,181 @@
+//! Entry points: bytes or a file to a [`Description`], with every problem of the file at once.
+
+use super::lower::Lower;
+use super::raw::{self, Map};
+use super::set::{self, Assignment};
+use super::{
+    AccessoryText, BatteryText, ChargingText, Description, KitText, StarterText, open, scan,
+};
+use crate::problem::{FileProblem, Problem, Problems, Refusal, Source, TextProblem};
+use serde::de::DeserializeOwned;
+use std::path::Path;
+
+/// Reads a build file from its bytes. `name` is what messages call it.
+///
+/// # Errors
+/// [`Refusal`] with every problem found, in the order of the file.
+pub fn read(name: &str, bytes: &[u8]) -> Result<(Description, Source), Refusal> {
+    read_set(name, bytes, &[])
+}
+
+/// Reads a build file with `--set` assignments put into its text first.
+///
+/// # Errors
+/// As [`read`]; and assignments that cannot be done.
+pub fn read_set(
+    name: &str,
+    bytes: &[u8],
+    assignments: &[Assignment],
+) -> Result<(Description, Source), Refusal> {
+    let (source, problems) = open_text(name, bytes)?;
+    let (source, problems) = if assignments.is_empty() {
+        (source, problems)
+    } else {
+        set::set(source, assignments)?
+    };
+    lowered(source, problems, |low, root| low.file(root))
+}
+
+/// Reads a build file from a path.
+///
+/// # Errors
+/// As [`read`]; and files that are missing, unreadable, or a folder.
+pub fn read_file(
+    path: &Path,
+    assignments: &[Assignment],
+) -> Result<(Description, Source), Refusal> {
+    let name = path.display().to_string();
+    let bytes = bytes_of(path, &name)?;
+    read_set(&name, &bytes, assignments)
+}
+
+/// The bytes of a file that is not too large.
+///
+/// # Errors
+/// [`Refusal`]: missing, a folder, unreadable, over the limit.
+pub fn bytes_of(path: &Path, name: &str) -> Result<Vec<u8>, Refusal> {
+    use std::io::{ErrorKind, Read};
+    let refuse = |kind: FileProblem| {
+        let source = Source {
+            name: name.to_owned(),
+            ..Source::default()
+        };
+        Refusal::new(source, Problem::whole(kind))
+    };
+    let told = |e: &std::io::Error| match e.kind() {
+        ErrorKind::NotFound => FileProblem::Missing,
+        ErrorKind::IsADirectory => FileProblem::Folder,
+        _ => FileProblem::Unreadable { why: e.to_string() },
+    };
+    if path.is_dir() {
+        return Err(refuse(FileProblem::Folder));
+    }
+    let file = std::fs::File::open(path).map_err(|e| refuse(told(&e)))?;
+    let mut bytes = Vec::new();
+    // one byte past the limit is enough to refuse it
+    let limit = crate::problem::text::MOST_BYTES + 1;
+    file.take(limit)
+        .read_to_end(&mut bytes)
+        .map_err(|e| refuse(told(&e)))?;
+    Ok(bytes)
+}
+
+macro_rules! parts {
+    ($($(#[$doc:meta])* $name:ident: $raw:ident => $text:ident by $lower:ident;)*) => { $(
+        $(#[$doc])*
+        ///
+        /// # Errors
+        /// [`Refusal`] with every problem found.
+        pub fn $name(name: &str, text: &str) -> Result<$text, Refusal> {
+            part(name, text, |low, raw: &raw::$raw| low.$lower(raw, ""))
+        }
+    )* };
+}
+parts!(
+    /// Reads the keys of a catalog's winding or alternator.
+    read_charging: Charging => ChargingText by charging;
+    /// Reads the keys of a catalog's battery.
+    read_battery: Battery => BatteryText by battery;
+    /// Reads the keys of a catalog's starter.
+    read_starter: Starter => StarterText by starter;
+    /// Reads the keys of a catalog's accessory.
+    read_accessory: Accessory => AccessoryText by accessory;
+    /// Reads the keys of a catalog's kit.
+    read_kit: Kit => KitText by kit;
+);
+
+/// Reads one mapping as a part.
+fn part<R: DeserializeOwned, T>(
+    name: &str,
+    text: &str,
+    lower: impl FnOnce(&mut Lower<'_>, &R) -> T,
+) -> Result<T, Refusal> {
+    let (source, problems) = open_text(name, text.as_bytes())?;
+    let lower = |low: &mut Lower<'_>, root: &Map<R>| low.map(root, "").map(|raw| lower(low, raw));
+    lowered(source, problems, lower).map(|(part, _)| part)
+}
+
+/// Bytes to text and places.
+pub(super) fn open_text(name: &str, bytes: &[u8]) -> Result<(Source, Problems), Refusal> {
+    let mut source = Source {
+        name: name.to_owned(),
+        ..Source::default()
+    };
+    source.text = match open::text(bytes) {
+        Ok(text) => text,
+        Err((text, problems)) => {
+            source.text = text;
+            return Err(Refusal::new(source, problems));
+        }
+    };
+    match scan::scan(&source.text) {
+        Ok((places, problems)) => {
+            source.places = places;
+            Ok((source, problems))
+        }
+        Err(problems) => Err(Refusal::new(source, problems)),
+    }
+}
+
+/// Text and places to typed values, by serde's reading of the same text.
+fn lowered<R: DeserializeOwned, T>(
+    source: Source,
+    mut problems: Problems,
+    lower: impl FnOnce(&mut Lower<'_>, &Map<R>) -> Option<T>,
+) -> Result<(T, Source), Refusal> {
+    let root: Map<R> = match serde_yaml::from_str(&source.text) {
+        Ok(root) => root,
+        Err(e) => {
+            problems.push(second_reader(&source.text, &e));
+            return Err(Refusal::new(source, problems));
+        }
+    };
+    let mut low = Lower::new(&source.text, &source.places);
+    let value = lower(&mut low, &root);
+    problems.append(low.problems);
+    match value {
+        Some(value) if problems.is_empty() => Ok((value, source)),
+        _ => Err(Refusal::new(source, problems)),
+    }
+}
+
+/// What only the second reader refuses: bad indentation within quotes and brackets, for the most part.
+fn second_reader(text: &str, e: &serde_yaml::Error) -> Problem {
+    let at = e.location().map_or(0, |l| l.index().min(text.len()));
+    let at = (0..=at)
+        .rev()
+        .find(|i| text.is_char_boundary(*i))
+        .unwrap_or(0);
+    let end = text[at..].chars().next().map_or(at, |c| at + c.len_utf8());
+    if let Some(tab) = scan::tab_near(text, at) {
+        return Problem::text(TextProblem::Tab, tab);
+    }
+    let what = e.to_string();
+    let what = what
+        .split(" at line ")
+        .next()
+        .unwrap_or(&what)
+        .replace('`', "\"");
+    let hint = Some("check the indentation and the brackets of this line");
+    Problem::text(TextProblem::Syntax { what, hint }, at..end)
+}

@@ -1,0 +1,442 @@
+//! One pass over a file's YAML events: where every value stands, and everything that is refused before a key means anything.
+
+use super::places::{Child, Content, Key, Place, Places};
+use crate::problem::{Problem, Problems, TextProblem, text::MOST_DEEP, text::MOST_VALUES};
+use saphyr_parser::{Event, Parser, ScalarStyle, ScanError, Span};
+use std::collections::BTreeMap;
+use std::ops::Range;
+
+/// The tree of a text, with the problems that did not stop the pass (keys given twice, tags).
+///
+/// Work and memory are bounded by the text's length; nothing recurses.
+///
+/// # Errors
+/// Not YAML, a second document, `<<`, keys that are not text, too deep, too many values, an alias loop: all problems up to there.
+pub(super) fn scan(text: &str) -> Result<(Places, Problems), Problems> {
+    let mut scan = Scan::new(text);
+    for event in Parser::new_from_str(text) {
+        let step = match event {
+            Ok((event, span)) => scan.event(event, span),
+            Err(e) => Err(Box::new(scan.syntax(&e))),
+        };
+        if let Err(problem) = step {
+            scan.problems.push(*problem);
+            return Err(scan.problems);
+        }
+    }
+    if scan.places.places.is_empty() {
+        scan.problems.push(Problem::text(TextProblem::Empty, 0..0));
+        return Err(scan.problems);
+    }
+    Ok((scan.places, scan.problems))
+}
+
+/// A list or mapping that is not yet closed.
+struct Frame {
+    start: usize,
+    anchor: usize,
+    /// Values counted before it.
+    before: u64,
+    /// Levels of lists and mappings below it, itself included.
+    height: usize,
+    flow: bool,
+    kind: FrameKind,
+}
+
+enum FrameKind {
+    List(Vec<Child>),
+    Mapping {
+        entries: Vec<(Key, Child)>,
+        seen: BTreeMap<String, Range<usize>>,
+        key: Option<(Key, bool)>,
+    },
+}
+
+/// A finished value behind an anchor.
+struct Anchor {
+    place: usize,
+    size: u64,
+    height: usize,
+}
+
+struct Scan<'a> {
+    text: &'a str,
+    /// Byte of each character, where the text is not plain ASCII.
+    bytes: Option<Vec<usize>>,
+    open: Vec<Frame>,
+    places: Places,
+    anchors: BTreeMap<usize, Anchor>,
+    count: u64,
+    documents: u32,
+    problems: Problems,
+}
+
+impl<'a> Scan<'a> {
+    fn new(text: &'a str) -> Self {
+        let table = || {
+            text.char_indices()
+                .map(|(at, _)| at)
+                .chain([text.len()])
+                .collect()
+        };
+        Scan {
+            text,
+            bytes: (!text.is_ascii()).then(table),
+            open: Vec::new(),
+            places: Places::default(),
+            anchors: BTreeMap::new(),
+            count: 0,
+            documents: 0,
+            problems: Problems::default(),
+        }
+    }
+
+    /// The byte of a character.
+    fn byte(&self, character: usize) -> usize {
+        match &self.bytes {
+            None => character.min(self.text.len()),
+            Some(table) => table.get(character).copied().unwrap_or(self.text.len()),
+        }
+    }
+
+    fn range(&self, span: Span) -> Range<usize> {
+        self.byte(span.start.index())..self.byte(span.end.index())
+    }
+
+    fn event(&mut self, event: Event<'_>, span: Span) -> Result<(), Box<Problem>> {
+        let range = self.range(span);
+        match event {
+            Event::DocumentStart(_) => {
+                self.documents += 1;
+                if self.documents > 1 {
+                    return Err(refused(TextProblem::SecondDocument, range));
+                }
+            }
+            Event::Scalar(text, style, anchor, tag) => {
+                if tag.is_some() {
+                    self.problems
+                        .push(Problem::text(TextProblem::Tag, range.clone()));
+                }
+                return self.scalar(&text, style, anchor, range);
+            }
+            Event::Alias(anchor) => return self.alias(anchor, range),
+            Event::SequenceStart(anchor, tag) => {
+                return self.begin(FrameKind::List(Vec::new()), anchor, tag.is_some(), range);
+            }
+            Event::MappingStart(anchor, tag) => {
+                let kind = FrameKind::Mapping {
+                    entries: Vec::new(),
+                    seen: BTreeMap::new(),
+                    key: None,
+                };
+                return self.begin(kind, anchor, tag.is_some(), range);
+            }
+            Event::SequenceEnd | Event::MappingEnd => self.end(range.start),
+            Event::Nothing | Event::StreamStart | Event::StreamEnd | Event::DocumentEnd => {}
+        }
+        Ok(())
+    }
+
+    /// Counts a value, or the values behind an alias.
+    fn more(&mut self, values: u64, at: &Range<usize>) -> Result<(), Box<Problem>> {
+        self.count = self.count.saturating_add(values);
+        if self.count > MOST_VALUES {
+            return Err(refused(TextProblem::TooMany, at.clone()));
+        }
+        Ok(())
+    }
+
+    /// Whether the next value is a key.
+    fn wants_key(&self) -> bool {
+        matches!(
+            self.open.last(),
+            Some(Frame {
+                kind: FrameKind::Mapping { key: None, .. },
+                ..
+            })
+        )
+    }
+
+    fn scalar(
+        &mut self,
+        text: &str,
+        style: ScalarStyle,
+        anchor: usize,
+        range: Range<usize>,
+    ) -> Result<(), Box<Problem>> {
+        self.more(1, &range)?;
+        let plain = style == ScalarStyle::Plain;
+        if self.wants_key() {
+            return self.key(text, plain, range);
+        }
+        let range = self.value_only(range);
+        self.places.places.push(Place {
+            span: range,
+            content: Content::Scalar {
+                text: text.to_owned(),
+                plain,
+            },
+            repeated: false,
+        });
+        let place = self.places.places.len() - 1;
+        if anchor > 0 {
+            self.anchors.insert(
+                anchor,
+                Anchor {
+                    place,
+                    size: 1,
+                    height: 0,
+                },
+            );
+        }
+        self.attach(Child { place, alias: None });
+        Ok(())
+    }
+
+    /// The span without line ends after it (a block of lines reaches to the next key).
+    fn value_only(&self, range: Range<usize>) -> Range<usize> {
+        let written = self.text.get(range.clone()).unwrap_or_default();
+        range.start..range.start + written.trim_end().len()
+    }
+
+    fn key(&mut self, text: &str, plain: bool, range: Range<usize>) -> Result<(), Box<Problem>> {
+        if text == "<<" && plain {
+            return Err(refused(TextProblem::MergeKey, range));
+        }
+        if text.is_empty() && plain {
+            return Err(refused(TextProblem::KeyNotText, range));
+        }
+        let Some(Frame {
+            kind: FrameKind::Mapping { seen, key, .. },
+            ..
+        }) = self.open.last_mut()
+        else {
+            return Ok(());
+        };
+        let first = seen.get(text).cloned();
+        if first.is_none() {
+            seen.insert(text.to_owned(), range.clone());
+        }
+        *key = Some((
+            Key {
+                text: text.to_owned(),
+                span: range.clone(),
+            },
+            first.is_some(),
+        ));
+        if let Some(first) = first {
+            self.problems.push(Problem::text(
+                TextProblem::DuplicateKey {
+                    key: text.to_owned(),
+                    first,
+                },
+                range,
+            ));
+        }
+        Ok(())
+    }
+
+    fn alias(&mut self, anchor: usize, range: Range<usize>) -> Result<(), Box<Problem>> {
+        if self.wants_key() {
+            return Err(refused(TextProblem::KeyNotText, range));
+        }
+        let Some(&Anchor {
+            place,
+            size,
+            height,
+        }) = self.anchors.get(&anchor)
+        else {
+            return Err(refused(TextProblem::AliasLoop, range));
+        };
+        self.more(size, &range)?;
+        if self.open.len() + height > MOST_DEEP {
+            return Err(refused(TextProblem::TooDeep, range));
+        }
+        if let Some(frame) = self.open.last_mut() {
+            frame.height = frame.height.max(height + 1);
+        }
+        if let Some(repeated) = self.places.places.get_mut(place) {
+            repeated.repeated = true;
+        }
+        self.attach(Child {
+            place,
+            alias: Some(range),
+        });
+        Ok(())
+    }
+
+    fn begin(
+        &mut self,
+        kind: FrameKind,
+        anchor: usize,
+        tagged: bool,
+        range: Range<usize>,
+    ) -> Result<(), Box<Problem>> {
+        self.more(1, &range)?;
+        if self.wants_key() {
+            return Err(refused(TextProblem::KeyNotText, range));
+        }
+        if tagged {
+            self.problems
+                .push(Problem::text(TextProblem::Tag, range.clone()));
+        }
+        if self.open.len() >= MOST_DEEP {
+            return Err(refused(TextProblem::TooDeep, range));
+        }
+        // an anchor's or tag's span reaches to the bracket, or to the first entry
+        let bracket = range.end.checked_sub(1).filter(|_| !range.is_empty());
+        let flow =
+            bracket.is_some_and(|b| matches!(self.text.as_bytes().get(b), Some(b'[' | b'{')));
+        let start = bracket.filter(|_| flow).unwrap_or(range.end);
+        self.open.push(Frame {
+            start,
+            anchor,
+            before: self.count - 1,
+            height: 1,
+            flow,
+            kind,
+        });
+        Ok(())
+    }
+
+    fn end(&mut self, bracket: usize) {
+        let Some(frame) = self.open.pop() else { return };
+        let Frame {
+            start,
+            anchor,
+            before,
+            height,
+            flow,
+            kind,
+        } = frame;
+        let (content, last) = match kind {
+            FrameKind::List(entries) => {
+                let last = entries.last().cloned();
+                (Content::List { flow, entries }, last)
+            }
+            FrameKind::Mapping { entries, .. } => {
+                let last = entries.last().map(|(_, child)| child.clone());
+                (Content::Mapping { flow, entries }, last)
+            }
+        };
+        let end = match last {
+            _ if flow => bracket + 1,
+            Some(Child {
+                alias: Some(alias), ..
+            }) => alias.end,
+            Some(Child { place, .. }) => {
+                self.places.places.get(place).map_or(start, |p| p.span.end)
+            }
+            None => start,
+        };
+        self.places.places.push(Place {
+            span: start..end.max(start),
+            content,
+            repeated: false,
+        });
+        let place = self.places.places.len() - 1;
+        if anchor > 0 {
+            self.anchors.insert(
+                anchor,
+                Anchor {
+                    place,
+                    size: self.count - before,
+                    height,
+                },
+            );
+        }
+        if let Some(above) = self.open.last_mut() {
+            above.height = above.height.max(height + 1);
+        }
+        self.attach(Child { place, alias: None });
+    }
+
+    /// Puts a finished value into what holds it.
+    fn attach(&mut self, child: Child) {
+        match self.open.last_mut().map(|f| &mut f.kind) {
+            None => {}
+            Some(FrameKind::List(entries)) => entries.push(child),
+            Some(FrameKind::Mapping { entries, key, .. }) => {
+                if let Some((key, false)) = key.take() {
+                    entries.push((key, child));
+                }
+            }
+        }
+    }
+
+    /// A syntax error, told as a tab where it is one.
+    fn syntax(&self, e: &ScanError) -> Problem {
+        let at = self.byte(e.marker().index());
+        if let Some(tab) = tab_near(self.text, at) {
+            return Problem::text(TextProblem::Tab, tab);
+        }
+        let end = self.text[at..]
+            .char_indices()
+            .nth(1)
+            .map_or(self.text.len(), |(i, _)| at + i);
+        let what = e.info().replace(['`', '\''], "\"");
+        let hint = hint(self.text, at, &what);
+        Problem::text(TextProblem::Syntax { what, hint }, at..end)
+    }
+}
+
+/// A tab in the indentation of the line of an error, or of the next.
+pub(super) fn tab_near(text: &str, at: usize) -> Option<Range<usize>> {
+    let start = text[..at].rfind('\n').map_or(0, |n| n + 1);
+    let mut line_start = start;
+    for line in text[start..].split('\n').take(2) {
+        let indent = line.len() - line.trim_start_matches([' ', '\t']).len();
+        if let Some(tab) = line[..indent].find('\t') {
+            let end = tab + line[tab..indent].len();
+            return Some(line_start + tab..line_start + end);
+        }
+        line_start += line.len() + 1;
+    }
+    None
+}
+
+/// A problem that ends the pass.
+fn refused(kind: TextProblem, bytes: Range<usize>) -> Box<Problem> {
+    Box::new(Problem::text(kind, bytes))
+}
+
+/// What would put a common slip right.
+fn hint(text: &str, at: usize, what: &str) -> Option<&'static str> {
+    let start = text[..at].rfind('\n').map_or(0, |n| n + 1);
+    let line = text[start..].lines().next().unwrap_or_default();
+    let above = text[..start].lines().next_back().unwrap_or_default();
+    let joined = |line: &str| {
+        let key = line.trim_start_matches([' ', '-']);
+        key.split_once(':').is_some_and(|(k, v)| {
+            !v.is_empty()
+                && !v.starts_with(char::is_whitespace)
+                && k.chars().all(|c| c.is_alphanumeric() || c == '_')
+        })
+    };
+    let unclosed = |open: char, close: char| {
+        text[..at].matches(open).count() > text[..at].matches(close).count()
+    };
+    match what {
+        _ if joined(line) || joined(above) => Some("put a space after the colon: `key: value`"),
+        w if w.contains("mapping values") => {
+            Some("check the indentation, and put a text that holds `: ` into quotes")
+        }
+        w if w.contains("quoted scalar") => Some("close the quotation mark"),
+        _ if unclosed('[', ']') => {
+            Some("close the bracket `[` with `]`, and put a comma between entries")
+        }
+        _ if unclosed('{', '}') => {
+            Some("close the brace `{` with `}`, and put a comma between entries")
+        }
+        w if w.contains("unexpected character") => {
+            Some("put a text that begins with this character into quotes")
+        }
+        w if w.contains("unknown anchor") => {
+            Some("an alias `*name` needs an anchor `&name` before it")
+        }
+        _ => Some("check the indentation and the brackets of this line"),
+    }
+}
+
+#[cfg(test)]
+mod tests;

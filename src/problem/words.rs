@@ -1,0 +1,58 @@
+//! The grammar of messages: lists in words, and what was meant.
+
+/// How alike two words must be for one to be offered for the other (Jaro-Winkler, 1 is equal).
+const ALIKE: f64 = 0.78;
+
+/// The name most like a word, where one is.
+#[must_use]
+pub fn nearest<'a>(word: &str, names: impl IntoIterator<Item = &'a str>) -> Option<&'a str> {
+    let lower = word.to_lowercase();
+    let mut best: Option<(&str, f64)> = None;
+    for name in names {
+        let alike = strsim::jaro_winkler(&lower, &name.to_lowercase());
+        if alike > ALIKE && best.is_none_or(|(_, most)| alike > most) {
+            best = Some((name, alike));
+        }
+    }
+    best.map(|(name, _)| name)
+}
+
+/// `` `a`, `b` or `c` ``.
+#[must_use]
+pub fn any_of<S: AsRef<str>>(names: &[S]) -> String {
+    let quoted: Vec<String> = names.iter().map(|n| format!("`{}`", n.as_ref())).collect();
+    match quoted.split_last() {
+        None => "none".into(),
+        Some((last, [])) => last.clone(),
+        Some((last, rest)) => format!("{} or {last}", rest.join(", ")),
+    }
+}
+
+/// `a, b, c`, plain.
+#[must_use]
+pub fn list<S: AsRef<str>>(names: &[S]) -> String {
+    names
+        .iter()
+        .map(AsRef::as_ref)
+        .collect::<Vec<_>>()
+        .join(", ")
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn the_nearest_name_is_offered_and_no_far_one() {
+        assert_eq!(nearest("drw", ["name", "draw", "duty"]), Some("draw"));
+        assert_eq!(nearest("Draw", ["name", "draw", "duty"]), Some("draw"));
+        assert_eq!(
+            nearest("half", ["half-wave", "full-wave", "none"]),
+            Some("half-wave")
+        );
+        assert_eq!(nearest("colour", ["name", "draw", "duty"]), None);
+        assert_eq!(any_of(&["a", "b", "c"]), "`a`, `b` or `c`");
+        assert_eq!(any_of(&["a"]), "`a`");
+        assert_eq!(list(&["a", "b"]), "a, b");
+    }
+}
