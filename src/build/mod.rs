@@ -201,6 +201,14 @@ impl Build {
             State::Parked => "parked",
         }
     }
+    /// Engine speed in a state; none with the engine off.
+    #[must_use]
+    pub fn rpm(&self, state: State) -> Rpm {
+        match state {
+            State::Running(speed) => self.speeds.get(speed).map_or(Rpm::ZERO, |s| s.rpm.value),
+            _ => Rpm::ZERO,
+        }
+    }
     /// Cells in series: the battery's, or six without one.
     #[must_use]
     pub fn cells(&self) -> u32 {

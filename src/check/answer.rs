@@ -9,7 +9,7 @@ use crate::quantity::{
 use serde::{Serialize, Serializer};
 
 /// Does the charging system keep up?
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize)]
 pub enum Verdict {
     /// Shift after shift without end the charge stays above the reserve.
     #[serde(rename = "keeps up")]

@@ -2,9 +2,9 @@
 //! legs of one cycle of work and parking.
 
 use super::group::cyclers;
-use crate::battery::{Battery, Climate};
+use crate::battery::{Battery, Charge, Climate};
 use crate::build::{Accessory, Build, Charger, Draw, State};
-use crate::bus::{Connected, Cuts, Supply};
+use crate::bus::{Connected, Cuts, Flow, Supply};
 use crate::load::{Coincidences, LoadSum};
 use crate::quantity::{Amps, Fraction, Hours, Volts};
 
@@ -98,6 +98,14 @@ impl Machine {
             .map(|leg| leg.time)
             .sum();
         Some(machine)
+    }
+
+    /// The mean flow with something connected and the battery in a state of charge.
+    #[must_use]
+    pub fn flow(&self, wired: usize, charge: Charge) -> Flow {
+        self.connected[wired]
+            .bus
+            .flow(&self.climate, charge, self.cells)
     }
 
     /// Running time of one shift on average.

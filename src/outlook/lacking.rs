@@ -59,17 +59,48 @@ struct Turn {
 }
 
 impl Machine {
-    /// The least current that makes it keep up from a full battery; for a build that does not.
+    /// The least current that makes it keep up from a charge; for a build that does not.
     #[must_use]
-    pub fn lacking(&self, reserve: Fraction) -> Lacking {
+    pub fn lacking(&self, start: Charge, reserve: Fraction) -> Lacking {
         let hours = self.running_a_shift();
-        match self.edge(reserve, Spread::Everywhere) {
-            Some(current) if hours > Hours::ZERO => Lacking::Charge {
-                charge: (current * hours).max(AmpHours::ZERO),
-                current,
-            },
-            _ => Lacking::BeyondCharging,
+        if hours <= Hours::ZERO {
+            return Lacking::BeyondCharging;
         }
+        let edge = self.edge(reserve, Spread::Everywhere);
+        let current = edge.and_then(|edge| self.enough_from(start, reserve, edge.max(Amps::ZERO)));
+        current.map_or(Lacking::BeyondCharging, |current| Lacking::Charge {
+            charge: current * hours,
+            current,
+        })
+    }
+
+    /// A current that keeps up from a full battery, raised where the first shifts from a lower
+    /// charge need more; none where no current is enough.
+    fn enough_from(&self, start: Charge, reserve: Fraction, edge: Amps) -> Option<Amps> {
+        if start.soc >= Fraction::ONE {
+            return Some(edge);
+        }
+        let mut machine = self.clone();
+        let mut holds = |current: f64| {
+            machine.set_extra(Amps(current));
+            machine.outlook(start, reserve).keeps_up()
+        };
+        let (mut low, mut high) = (edge.0, edge.0 * (1.0 + FOUND_TO) + CLOSE);
+        while !holds(high) {
+            if high > BEYOND {
+                return None;
+            }
+            (low, high) = (high, 2.0 * high + 0.1);
+        }
+        while high - low > CLOSE.max(FOUND_TO * high) {
+            let middle = 0.5 * (low + high);
+            if holds(middle) {
+                high = middle
+            } else {
+                low = middle
+            }
+        }
+        Some(Amps(high))
     }
 
     /// The constant current on the edge of keeping up: above zero lacking, below zero to spare.

@@ -327,7 +327,7 @@ fn verdicts_of_the_slow_computation() {
     );
     assert!(matches!(of(3, 0.7), Outlook::Breaks { shifts: 0, .. }));
     for (k, reserve, want) in [(2, 0.75, 14.736), (3, 0.7, 18.398)] {
-        match machine(&all[k].0).lacking(Fraction(reserve)) {
+        match machine(&all[k].0).lacking(Charge::FULL, Fraction(reserve)) {
             Lacking::Charge { charge, .. } => {
                 assert!(
                     (charge.0 - want).abs() < 0.01 * want + 0.03,
@@ -383,7 +383,7 @@ fn timing() {
         let o = m.outlook(Charge::FULL, Fraction(reserve));
         let t2 = t.elapsed();
         let t = std::time::Instant::now();
-        let _ = m.lacking(Fraction(reserve));
+        let _ = m.lacking(Charge::FULL, Fraction(reserve));
         println!(
             "{k}: new {t0:?} pass {t1:?} outlook {t2:?} lacking {:?} {o:?}",
             t.elapsed()
