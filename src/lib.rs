@@ -15,3 +15,4 @@ pub mod quantity;
 pub mod report;
 pub mod root;
 pub mod source;
+pub mod view;

@@ -25,12 +25,10 @@ pub fn draw(chart: &Chart, style: Style) -> Vec<String> {
     lines
         .into_iter()
         .map(|line| {
-            let line = line.trim_end();
-            if style.ascii {
-                crate::report::text::clean(line, true)
-            } else {
-                line.to_owned()
-            }
+            // Spelling a sign in ASCII may lengthen a line.
+            let line = crate::report::text::clean(line.trim_end(), style.ascii);
+            let line: String = line.chars().take(style.width).collect();
+            line.trim_end().to_owned()
         })
         .collect()
 }

@@ -7,12 +7,12 @@
 use super::model::{Block, Item, Report};
 use super::table::{Cell, Column, ColumnKind, Table};
 use crate::quantity::format::MINUS;
-use ::csv::{Terminator, Writer, WriterBuilder};
+use ::csv::{Terminator, WriterBuilder};
 
 /// The report as CSV.
 #[must_use]
 pub fn render(report: &Report) -> String {
-    let mut sheet = Sheet::new();
+    let mut sheet = Sheet::default();
     if let Some(main) = report.tables().find(|table| table.main) {
         sheet.table(main);
         return sheet.finish();
@@ -33,39 +33,35 @@ pub fn render(report: &Report) -> String {
     sheet.finish()
 }
 
+#[derive(Default)]
 struct Sheet {
-    writer: Writer<Vec<u8>>,
+    bytes: Vec<u8>,
     after_heading: bool,
 }
 
 impl Sheet {
-    fn new() -> Sheet {
-        let writer = WriterBuilder::new()
+    /// Lines of fields, as they are.
+    fn records(&mut self, records: impl IntoIterator<Item = Vec<String>>) {
+        let mut writer = WriterBuilder::new()
             .flexible(true)
             .terminator(Terminator::Any(b'\n'))
-            .from_writer(Vec::new());
-        Sheet {
-            writer,
-            after_heading: false,
+            .from_writer(&mut self.bytes);
+        for record in records {
+            // Writing to memory does not fail.
+            let _ = writer.write_record(&record);
         }
+        let _ = writer.flush();
     }
 
     /// A line of texts, each made harmless.
     fn line<'a>(&mut self, fields: impl IntoIterator<Item = &'a str>) {
-        let fields: Vec<String> = fields.into_iter().map(harmless).collect();
-        self.record(&fields);
-    }
-
-    fn record(&mut self, fields: &[String]) {
-        // Writing to memory does not fail; a record that could not be written would be missing.
-        let _ = self.writer.write_record(fields);
+        self.records([fields.into_iter().map(harmless).collect()]);
     }
 
     /// An empty line between parts, none after a heading.
     fn gap(&mut self) {
         if !std::mem::take(&mut self.after_heading) {
-            let _ = self.writer.flush();
-            self.record(&[]);
+            self.bytes.push(b'\n');
         }
     }
 
@@ -87,10 +83,10 @@ impl Sheet {
             }
             Block::Paragraph(text) => self.line([text.as_str()]),
             Block::Facts(facts) => {
-                for fact in facts {
+                self.records(facts.iter().map(|fact| {
                     let (value, unit) = full(&fact.value);
-                    self.record(&[harmless(&fact.label), value, unit]);
-                }
+                    vec![harmless(&fact.label), value, unit]
+                }));
             }
             Block::Table(table) => {
                 if !table.title.is_empty() {
@@ -119,30 +115,26 @@ impl Sheet {
     }
 
     fn table(&mut self, table: &Table) {
-        let shown = || {
-            table
-                .columns
-                .iter()
-                .enumerate()
-                .filter(|(_, c)| c.kind != ColumnKind::Bar)
-        };
-        let header: Vec<String> = shown().map(|(_, c)| harmless(&c.full_name())).collect();
-        self.record(&header);
-        for row in &table.rows {
-            let fields: Vec<String> = shown()
-                .map(|(index, column)| {
-                    row.cells
-                        .get(index)
-                        .map_or(String::new(), |c| field(c, column))
-                })
-                .collect();
-            self.record(&fields);
-        }
+        let shown: Vec<usize> = (0..table.columns.len())
+            .filter(|i| table.columns[*i].kind != ColumnKind::Bar)
+            .collect();
+        let header = shown
+            .iter()
+            .map(|i| harmless(&table.columns[*i].full_name()))
+            .collect();
+        let rows = table.rows.iter().map(|row| {
+            let cell = |i: &usize| {
+                row.cells
+                    .get(*i)
+                    .map(|cell| field(cell, &table.columns[*i]))
+            };
+            shown.iter().map(|i| cell(i).unwrap_or_default()).collect()
+        });
+        self.records(std::iter::once(header).chain(rows));
     }
 
     fn finish(self) -> String {
-        let bytes = self.writer.into_inner().unwrap_or_default();
-        String::from_utf8_lossy(&bytes).into_owned()
+        String::from_utf8_lossy(&self.bytes).into_owned()
     }
 }
 

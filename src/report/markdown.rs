@@ -36,7 +36,7 @@ fn block(block: &Block) -> String {
                 let caption = verdict.caption.as_ref().map(|c| format!("{}: ", escape(c)));
                 let caption = caption.unwrap_or_default();
                 format!(
-                    "> **{caption}{}.** {}",
+                    "> **{caption}{}:** {}",
                     escape(&verdict.lead),
                     escape(&verdict.sentence)
                 )

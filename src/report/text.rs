@@ -44,6 +44,7 @@ pub fn render(report: &Report, style: &Style) -> String {
     let mut page = Page {
         style,
         lines: Vec::new(),
+        after_heading: false,
     };
     page.head(report);
     for block in &report.blocks {
@@ -60,6 +61,7 @@ pub fn render(report: &Report, style: &Style) -> String {
 struct Page {
     style: Style,
     lines: Vec<String>,
+    after_heading: bool,
 }
 
 impl Page {
@@ -85,7 +87,10 @@ impl Page {
         }
         match block {
             Block::Verdicts(verdicts) => verdicts.iter().for_each(|v| self.verdict(v)),
-            Block::Heading(_, text) => self.wrapped(text, Ansi::new().bold()),
+            Block::Heading(_, text) => {
+                self.wrapped(text, Ansi::new().bold());
+                self.after_heading = true;
+            }
             Block::Paragraph(text) => self.wrapped(text, Ansi::new()),
             Block::Facts(facts) => self.facts(facts),
             Block::Table(table) => {
@@ -104,8 +109,7 @@ impl Page {
                     ascii: self.style.ascii,
                 };
                 let drawn = terminal::draw(chart, style);
-                self.lines
-                    .extend(drawn.iter().map(|line| clean(line, self.style.ascii)));
+                self.lines.extend(drawn);
                 if let Some(note) = &chart.note {
                     self.wrapped(note, ansi(Tone::Dim));
                 }
@@ -126,7 +130,7 @@ impl Page {
 
     /// One empty line between blocks, none after a heading.
     fn gap(&mut self) {
-        if !self.lines.is_empty() && self.lines.last().is_some_and(|line| !line.is_empty()) {
+        if !std::mem::take(&mut self.after_heading) && !self.lines.is_empty() {
             self.lines.push(String::new());
         }
     }
@@ -141,7 +145,7 @@ impl Page {
         let separator = if lead.is_empty() || verdict.sentence.is_empty() {
             ""
         } else {
-            ". "
+            ": "
         };
         let text = format!("{lead}{separator}{}", verdict.sentence);
         let lines = self.wrap(&text, self.style.width);
@@ -250,7 +254,7 @@ fn spelled(character: char) -> &'static str {
         '\u{2212}' | '–' | '—' | '─' => "-",
         'Ω' => "ohm",
         '²' => "2",
-        '°' => "deg ",
+        '°' => "",
         '±' => "+-",
         '×' => "x",
         '·' | '•' => ".",

@@ -15,6 +15,8 @@ const GAP: usize = 2;
 const LEAST_BAR: usize = 6;
 /// Greatest width of a bar.
 const MOST_BAR: usize = 24;
+/// Names do not wrap below this width to make room for a bar.
+const NAMES_BESIDE_BAR: usize = 20;
 /// Words wrap down to this width.
 const LEAST_WORDS: usize = 12;
 
@@ -160,14 +162,15 @@ fn widths(part: &[Span], room: usize) -> Vec<usize> {
 
 /// One part: heading, rule, rows.
 fn render_part(table: &Table, part: &[Span], style: &Style) -> Vec<String> {
-    let mut widths = widths(part, style.width);
-    let used: usize = widths.iter().sum::<usize>() + GAP * part.len();
-    let bar = table.columns.iter().position(|c| c.kind == ColumnKind::Bar);
-    let bar =
-        bar.filter(|_| part.len() + 1 == table.columns.len() && used + LEAST_BAR <= style.width);
-    let bar_width = style.width.saturating_sub(used).min(MOST_BAR);
     let mut columns: Vec<usize> = part.iter().map(|s| s.index).collect();
-    if let Some(index) = bar {
+    let with_bar = bar_beside(table, part, style.width);
+    let mut widths = match &with_bar {
+        Some((_, widths)) => widths.clone(),
+        None => widths(part, style.width),
+    };
+    let used: usize = widths.iter().sum::<usize>() + GAP * part.len();
+    let bar_width = style.width.saturating_sub(used).min(MOST_BAR);
+    if let Some((index, _)) = with_bar {
         columns.push(index);
         widths.push(bar_width);
     }
@@ -187,6 +190,29 @@ fn render_part(table: &Table, part: &[Span], style: &Style) -> Vec<String> {
     }
     let aligns: Vec<Align> = columns.iter().map(|i| table.columns[*i].align()).collect();
     draw(&aligns, &widths, header, rows, style)
+}
+
+/// The column of bars and the widths of the others beside it, where there is room for bars without
+/// names in less than [`NAMES_BESIDE_BAR`].
+fn bar_beside(table: &Table, part: &[Span], room: usize) -> Option<(usize, Vec<usize>)> {
+    let bar = table
+        .columns
+        .iter()
+        .position(|c| c.kind == ColumnKind::Bar)?;
+    let roomy: Vec<Span> = part
+        .iter()
+        .map(|s| match table.columns[s.index].kind {
+            ColumnKind::Number => *s,
+            _ => Span {
+                least: s.least.max(s.natural.min(NAMES_BESIDE_BAR)),
+                ..*s
+            },
+        })
+        .collect();
+    let room = room.checked_sub(LEAST_BAR + GAP)?;
+    let widths = widths(&roomy, room);
+    let used = widths.iter().sum::<usize>() + GAP * part.len().saturating_sub(1);
+    (used <= room && part.len() + 1 == table.columns.len()).then_some((bar, widths))
 }
 
 fn painted(table: &Table, row: &Row, index: usize, bar: usize, style: &Style) -> (String, Tone) {
@@ -332,7 +358,7 @@ fn draw(
     style: &Style,
 ) -> Vec<String> {
     let rule = if style.ascii { '-' } else { '─' };
-    let line = LineStyle::none().fill(rule).junction(rule);
+    let line = LineStyle::none().fill(rule);
     let mut table = comfy_table::Table::new();
     table.load_style(TableStyle::new().header_separator(line));
     table.set_content_arrangement(ContentArrangement::Disabled);
@@ -369,8 +395,10 @@ fn draw(
 }
 
 fn paint(text: String, tone: Tone) -> Painted {
+    let bare = text.is_empty();
     let cell = Painted::new_owned(text);
     match tone {
+        _ if bare => cell,
         Tone::Plain => cell,
         Tone::Dim => cell.fg(Color::DarkGrey),
         Tone::Good => cell.fg(Color::DarkGreen),

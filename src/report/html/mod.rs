@@ -98,7 +98,7 @@ fn verdict(verdict: &Verdict) -> Markup {
         div class=(format!("verdict {}", class(verdict.tone).unwrap_or_default()).trim_end()) {
             @if let Some(caption) = &verdict.caption { p class="dim" { (clean(caption, false)) } }
             p {
-                @if !verdict.lead.is_empty() { strong { (clean(&verdict.lead, false)) "." } " " }
+                @if !verdict.lead.is_empty() { strong { (clean(&verdict.lead, false)) ":" } " " }
                 (clean(&verdict.sentence, false))
             }
         }

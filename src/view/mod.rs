@@ -1,0 +1,15 @@
+//! From answers to reports: what is said, in which order, with which columns.
+//!
+//! A view reads an answer and lays it out as a [`crate::report::Report`]; the
+//! renderers write that. Wording and choice of figures are here, the solving is
+//! before and the layout after.
+
+pub mod accessories;
+pub mod charts;
+pub mod check;
+pub mod compare;
+pub mod quote;
+pub mod states;
+
+pub use check::{Options, check};
+pub use compare::compare;

@@ -1,0 +1,80 @@
+//! Reports of the hand-made answers, and a chart of each kind.
+
+use super::sample::{MARKUP, falls_short, keeps_up, no_battery, trace};
+use ampledger::check::answer::TraceRow;
+use ampledger::quantity::{Amps, Celsius, Fraction, Rpm};
+use ampledger::report::Report;
+use ampledger::view::{self, Options, charts};
+
+/// Options of a page, with the trace of the sample.
+pub fn page<'a>(trace: &'a [TraceRow]) -> Options<'a> {
+    Options {
+        page: true,
+        trace,
+        made_for: Some("Hill Farm"),
+        date: Some("4 March"),
+    }
+}
+
+pub fn check_page() -> Report {
+    view::check(&falls_short(MARKUP), &page(&trace()))
+}
+
+/// Every report that the tests go through.
+pub fn reports() -> Vec<(&'static str, Report)> {
+    let (before, after) = (falls_short("Orchard mower"), keeps_up("Orchard mower"));
+    vec![
+        ("check", view::check(&before, &Options::default())),
+        ("page", check_page()),
+        ("after", view::check(&after, &page(&[]))),
+        ("compare", view::compare(&before, &after, &page(&[]))),
+        ("no battery", view::check(&no_battery(), &page(&[]))),
+        ("gallery", gallery()),
+        ("empty", Report::new("")),
+    ]
+}
+
+/// A chart of each kind that a check does not have.
+pub fn gallery() -> Report {
+    let curve = |scale: f64| {
+        let points = (0..=40).map(|i| f64::from(i) * 100.0);
+        points
+            .map(move |rpm| {
+                (
+                    Rpm(rpm),
+                    Amps((scale * (1.0 - 900.0 / rpm.max(1.0))).max(0.0)),
+                )
+            })
+            .collect()
+    };
+    let output = charts::Output {
+        lines: vec![
+            ("at 14.4 V".to_owned(), curve(17.0)),
+            ("at 12.6 V".to_owned(), curve(19.0)),
+        ],
+        demand: Some(Amps(11.4)),
+        cut_in: Some(Rpm(900.0)),
+        break_even: Some(Rpm(2732.0)),
+        speeds: &[],
+    };
+    let season: Vec<charts::SeasonPoint> = (-4..=6)
+        .map(|i| f64::from(i) * 5.0)
+        .map(|air| charts::SeasonPoint {
+            air: Celsius(air),
+            settles: (air > -8.0).then_some(Fraction(0.7 + air * 0.006)),
+            reserve: Fraction(0.62 - air * 0.008),
+            keeps_up: air > -8.0,
+        })
+        .collect();
+    let shares = [
+        ("winding resistance", 0.52),
+        ("battery capacity", 0.31),
+        ("idle speed", 0.004),
+    ];
+    Report::new("Charts")
+        .chart(charts::output("Output of the charging winding", &output))
+        .chart(charts::season(&season))
+        .chart(charts::influence(
+            &shares.map(|(n, s)| (n.to_owned(), Fraction(s))),
+        ))
+}
