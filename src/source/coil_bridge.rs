@@ -101,7 +101,7 @@ impl Half {
             });
         }
         let fed = Segment::new(&d.with_load(), 0.0, d.drops - d.beside * coil, ends, m);
-        let over = fed.falls_to(m, latest, 2.0 * PI - ends);
+        let over = fed.falls_to(m, latest, 2.0 * PI - ends, latest.midpoint(2.0 * PI - ends));
         Some(Half {
             short,
             ends,

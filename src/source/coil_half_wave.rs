@@ -50,7 +50,7 @@ fn pulled(all: &Circuit, u: f64) -> (f64, f64) {
         let alpha = (u / all.e).asin();
         let segment = Segment::new(all, 0.0, u, alpha, 0.0);
         if segment.current(2.0 * PI + alpha) <= 0.0 {
-            let end = segment.ends(PI - alpha, 2.0 * PI + alpha);
+            let end = segment.falls_to(0.0, PI - alpha, 2.0 * PI + alpha, 1.5 * PI);
             return (
                 segment.charge(end) / (2.0 * PI),
                 segment.square(end) / (2.0 * PI),
@@ -97,7 +97,7 @@ pub(super) fn means_freewheel(d: &Driver, coil: f64) -> Means {
     let up = Segment::new(&d.c, 0.0, 0.0, 0.0, 0.0);
     let latest = PI - (d.c.r * m / d.c.e).min(1.0).asin();
     if d.c.r * m >= d.c.e || up.current(latest) <= m {
-        let end = up.ends(PI, 2.0 * PI);
+        let end = up.falls_to(0.0, PI, 2.0 * PI, 2.0 * PI);
         let winding_square = up.square(end) / (2.0 * PI);
         return Means {
             volts: -d.drops,
@@ -108,14 +108,19 @@ pub(super) fn means_freewheel(d: &Driver, coil: f64) -> Means {
     let taken = up.rises_to(m, 0.0, latest);
     let (given_back, charge, square) = if d.beside.is_finite() {
         let fed = Segment::new(&d.with_load(), 0.0, d.drops - d.beside * coil, taken, m);
-        let back = fed.falls_to(m, latest, 2.0 * PI - taken);
+        let back = fed.falls_to(
+            m,
+            latest,
+            2.0 * PI - taken,
+            latest.midpoint(2.0 * PI - taken),
+        );
         (back, fed.charge(back), fed.square(back))
     } else {
         let fed_for = latest - taken;
         (latest, coil * fed_for, coil * coil * fed_for)
     };
     let down = Segment::new(&d.c, 0.0, 0.0, given_back, m);
-    let end = down.ends(given_back, 2.0 * PI);
+    let end = down.falls_to(0.0, given_back, 2.0 * PI, 2.0 * PI);
     let fed_for = given_back - taken;
     let driven = d.c.e * (taken.cos() - given_back.cos()) - d.c.r * charge;
     let heat = idle_heat(2.0 * PI - fed_for) + d.heat(coil, fed_for, charge, square);

@@ -26,7 +26,9 @@ pub(super) fn conduct(c: &Circuit, u: f64, mut add: impl FnMut(&Piece)) -> Condu
     }
     let alpha = (u / c.e).min(1.0).asin();
     let segment = Segment::new(c, 0.0, u, alpha, 0.0);
-    let end = segment.ends(PI - alpha, 2.0 * PI + alpha);
+    // The falling current is hollow before the trough of the EMF and bulges after it (R apart): from the trough
+    // Newton's steps run to the end without overshooting, whichever side it lies.
+    let end = segment.falls_to(0.0, PI - alpha, 2.0 * PI + alpha, 1.5 * PI);
     let share = 1.0 / (2.0 * PI);
     add(&Piece {
         segment,

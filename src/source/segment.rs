@@ -76,8 +76,6 @@ fn p2(x: f64, p1: f64) -> f64 {
 pub(super) struct Segment {
     amplitude: f64,
     psi: f64,
-    emf: f64,
-    phase: f64,
     u: f64,
     r: f64,
     per_x: f64,
@@ -96,8 +94,6 @@ impl Segment {
         Segment {
             amplitude,
             psi,
-            emf: loop_.e,
-            phase,
             u,
             r: loop_.r,
             per_x,
@@ -116,28 +112,27 @@ impl Segment {
 
     /// i(θ) less `level`, and di/dθ.
     fn above(&self, theta: f64, level: f64) -> (f64, f64) {
-        let i = self.current(theta);
-        let drive = self.emf * (theta + self.phase).sin() - self.u;
-        (i - level, (drive - self.r * i) * self.per_x)
+        let d = theta - self.t1;
+        let (p1, e) = decay(self.rho * d);
+        let (sin, cos) = (theta + self.psi).sin_cos();
+        let i = self.amplitude * sin + self.decaying * e - self.u * d * self.per_x * p1;
+        let slope = self.amplitude * cos - (self.rho * self.decaying + self.u * self.per_x) * e;
+        (i - level, slope)
     }
 
-    /// Where the current falls through zero between `low` and `high`; `low` when it has not risen at all there.
-    pub(super) fn ends(&self, low: f64, high: f64) -> f64 {
-        self.falls_to(0.0, low, high)
+    /// Where the current falls through `level` between `low` and `high`, searched from `start`; `low` when it is not
+    /// above it there.
+    pub(super) fn falls_to(&self, level: f64, low: f64, high: f64, start: f64) -> f64 {
+        root::falling(|t| self.above(t, level), low, high, start)
     }
 
-    /// Where the current falls through `level` between `low` and `high`; `low` when it is not above it there.
-    pub(super) fn falls_to(&self, level: f64, low: f64, high: f64) -> f64 {
-        root::falling(|t| self.above(t, level), low, high)
-    }
-
-    /// Where the current rises through `level` between `low` and `high`.
+    /// Where the current rises through `level` between `low` and `high`; `low` when it is already there.
     pub(super) fn rises_to(&self, level: f64, low: f64, high: f64) -> f64 {
         let mirrored = |t: f64| {
             let (value, slope) = self.above(t, level);
             (-value, -slope)
         };
-        root::falling(mirrored, low, high)
+        root::falling(mirrored, low, high, 0.5 * (low + high))
     }
 
     /// Q(θ): the charge since t1, ampere-radians.

@@ -173,7 +173,7 @@ fn dead_time_modes(s: &Sector<'_>, add: &mut impl FnMut(&Piece)) -> Option<Condu
     let pulse = s.pair_from(start, 0.0);
     let at_next = pulse.current(s.next);
     if s.next > falls_under && at_next <= 0.0 {
-        add_pair(pulse, pulse.ends(falls_under, s.next), add);
+        add_pair(pulse, pulse.falls_to(0.0, falls_under, s.next, s.next), add);
         return Some(Conduction::Pulses);
     }
     let three = s.three_from(at_next);
@@ -186,7 +186,7 @@ fn dead_time_modes(s: &Sector<'_>, add: &mut impl FnMut(&Piece)) -> Option<Condu
         return None;
     }
     add_three(&three, over, add);
-    add_pair(tail, tail.ends(over, start), add);
+    add_pair(tail, tail.falls_to(0.0, over, start, start), add);
     add_pair(pulse, s.next, add);
     Some(Conduction::OverlappingPulses)
 }
