@@ -23,6 +23,8 @@ mod plot;
 pub mod scale;
 pub mod svg;
 mod svg_bars;
+mod svg_fill;
+mod svg_labels;
 pub mod terminal;
 
 pub use plot::Plot;

@@ -5,7 +5,7 @@
 
 use super::labels::{self, Obstacles, Rect};
 use super::scale::Scale;
-use super::{Body, Chart, Layer, Plane, Role, Shape, svg_bars};
+use super::{Body, Chart, Layer, Plane, Role, Shape, Span, svg_bars, svg_fill};
 use crate::report::Tone;
 use maud::{Markup, html};
 
@@ -41,12 +41,12 @@ pub const NARROW: Size = Size {
     margin: 76.0,
 };
 
-/// Space above the plotted area, for the names of spans.
-const ABOVE: f64 = 20.0;
 /// Space below it, for the ticks.
-const BELOW: f64 = 24.0;
+pub(super) const BELOW: f64 = 24.0;
 /// Space to its left, for the ticks.
-const LEFT: f64 = 46.0;
+pub(super) const LEFT: f64 = 46.0;
+/// A bold text is about so much wider.
+pub(super) const BOLD: f64 = 1.08;
 
 /// Draws a chart. `id` distinguishes it from the others on the page.
 #[must_use]
@@ -77,7 +77,7 @@ pub(super) fn n(number: f64) -> String {
 }
 
 /// Name of a role in class names.
-fn class(role: Role) -> &'static str {
+pub(super) fn class(role: Role) -> &'static str {
     match role {
         Role::Supply => "supply",
         Role::Draw => "draw",
@@ -90,13 +90,13 @@ fn class(role: Role) -> &'static str {
 }
 
 /// A plane laid out.
-struct Frame<'a> {
-    plane: &'a Plane,
-    size: Size,
+pub(super) struct Frame<'a> {
+    pub(super) plane: &'a Plane,
+    pub(super) size: Size,
     id: &'a str,
     x: Scale,
-    y: Scale,
-    area: Rect,
+    pub(super) y: Scale,
+    pub(super) area: Rect,
 }
 
 /// Draws lines and areas; gives the height too.
@@ -113,13 +113,14 @@ fn draw_plane(plane: &Plane, size: Size, id: &str) -> (f64, Markup) {
                 .filter(|r| !r.upright)
                 .map(|r| r.label.as_str()),
         )
-        .map(|label| labels::text_width(label, size.text) + 12.0)
+        .map(|label| labels::text_width(label, size.text) * BOLD + 12.0)
         .fold(14.0, f64::max);
+    let above = space_above(plane, size);
     let area = Rect {
         left: LEFT,
-        top: ABOVE,
+        top: above,
         right: size.width - widest.min(size.margin),
-        bottom: ABOVE + size.plot,
+        bottom: above + size.plot,
     };
     let frame = Frame {
         plane,
@@ -132,7 +133,6 @@ fn draw_plane(plane: &Plane, size: Size, id: &str) -> (f64, Markup) {
     let mut obstacles = frame.obstacles();
     let (keys_height, keys) = frame.keys();
     let drawn = html! {
-        (frame.patterns())
         (frame.spans())
         (frame.grid())
         @for layer in &plane.layers { (frame.layer(layer)) }
@@ -144,30 +144,27 @@ fn draw_plane(plane: &Plane, size: Size, id: &str) -> (f64, Markup) {
     (area.bottom + BELOW + keys_height, drawn)
 }
 
+/// Space above the plotted area: for names of spans in one or two lines, or for half a tick's text.
+fn space_above(plane: &Plane, size: Size) -> f64 {
+    let long = |span: &Span| {
+        let share = (span.to - span.from) / (plane.x.high - plane.x.low);
+        span_lines(span, share * (size.width - LEFT - size.margin), size).len() > 1
+    };
+    match plane.spans.as_slice() {
+        [] => 10.0,
+        spans if spans.iter().any(long) => 32.0,
+        _ => 20.0,
+    }
+}
+
 /// Whether a layer is labelled at its right end; areas without an edge have a key below instead.
-fn is_direct(layer: &Layer) -> bool {
+pub(super) fn is_direct(layer: &Layer) -> bool {
     !layer.label.is_empty() && !matches!(layer.role, Role::Pays | Role::Band)
 }
 
 impl Frame<'_> {
     fn point(&self, x: f64, y: f64) -> (f64, f64) {
         (self.x.place(x), self.y.place(y))
-    }
-
-    /// Hatching and dots, in the colours of their classes.
-    fn patterns(&self) -> Markup {
-        html! {
-            defs {
-                pattern id=(format!("{}-pays", self.id)) width="6" height="6"
-                    patternUnits="userSpaceOnUse" patternTransform="rotate(45)" {
-                    line x1="0" y1="0" x2="0" y2="6" class="hatch" {}
-                }
-                pattern id=(format!("{}-band", self.id)) width="5" height="5"
-                    patternUnits="userSpaceOnUse" {
-                    circle cx="2" cy="2" r="1" class="dot" {}
-                }
-            }
-        }
     }
 
     /// Named stretches: every other one shaded, its name above where there is room for it.
@@ -177,9 +174,10 @@ impl Frame<'_> {
                 @let (left, right) = (self.x.place(span.from), self.x.place(span.to));
                 rect class=(span_class(index, span.tone)) x=(n(left)) y=(n(self.area.top))
                     width=(n(right - left)) height=(n(self.area.bottom - self.area.top)) {}
-                @if labels::text_width(&span.label, self.size.text - 1.0) <= right - left + 4.0 {
-                    text class="quiet small" x=(n(f64::midpoint(left, right))) y=(n(self.area.top - 6.0))
-                        text-anchor="middle" { (span.label) }
+                @for (line, text) in span_lines(span, right - left, self.size).iter().rev().enumerate() {
+                    @let up = 6.0 + if line == 0 { 0.0 } else { self.size.text };
+                    text class="quiet small" x=(n(f64::midpoint(left, right))) y=(n(self.area.top - up))
+                        text-anchor="middle" { (text) }
                 }
             }
         }
@@ -198,7 +196,10 @@ impl Frame<'_> {
             @for (at, text) in &self.x.ticks {
                 @let x = self.x.place(*at);
                 line class="axis" x1=(n(x)) x2=(n(x)) y1=(n(self.area.bottom)) y2=(n(self.area.bottom + 4.0)) {}
-                text class="quiet" x=(n(x)) y=(n(self.area.bottom + 17.0)) text-anchor="middle" { (text) }
+                @let (number, unit) = text.split_once(' ').unwrap_or((text, ""));
+                @let (y, half) = (self.area.bottom + 17.0, labels::text_width(number, self.size.text) / 2.0);
+                text class="quiet" x=(n(x)) y=(n(y)) text-anchor="middle" { (number) }
+                @if !unit.is_empty() { text class="quiet" x=(n(x + half + 4.0)) y=(n(y)) { (unit) } }
             }
         }
     }
@@ -214,11 +215,8 @@ impl Frame<'_> {
                 }
             },
             Shape::Area(pieces) => html! {
-                @for piece in pieces {
-                    @let there = piece.iter().map(|(x, _, high)| (*x, *high));
-                    @let back = piece.iter().rev().map(|(x, low, _)| (*x, *low));
-                    path class=(format!("area {class}")) fill=[self.fill(layer.role)]
-                        d=(self.path(there.chain(back), true)) {}
+                @if !pieces.is_empty() {
+                    (svg_fill::fill(layer.role, &self.outline(pieces), self.bounds(pieces), &self.clip(layer.role, "")))
                 }
                 @if layer.role == Role::Draw {
                     path class="line draw" d=(self.path(upper_edge(pieces), false)) {}
@@ -227,13 +225,39 @@ impl Frame<'_> {
         }
     }
 
-    /// The pattern of roles that have one.
-    fn fill(&self, role: Role) -> Option<String> {
-        match role {
-            Role::Pays => Some(format!("url(#{}-pays)", self.id)),
-            Role::Band => Some(format!("url(#{}-band)", self.id)),
-            _ => None,
-        }
+    /// The id of a filling's clip.
+    pub(super) fn clip(&self, role: Role, what: &str) -> String {
+        format!("{}-{}{what}", self.id, class(role))
+    }
+
+    /// The outline of an area's pieces.
+    fn outline(&self, pieces: &[Vec<(f64, f64, f64)>]) -> String {
+        let piece = |piece: &Vec<(f64, f64, f64)>| {
+            let there = piece.iter().map(|(x, _, high)| (*x, *high));
+            let back = piece.iter().rev().map(|(x, low, _)| (*x, *low));
+            self.path(there.chain(back), true)
+        };
+        pieces.iter().map(piece).collect()
+    }
+
+    /// The rectangle about an area's pieces.
+    fn bounds(&self, pieces: &[Vec<(f64, f64, f64)>]) -> Rect {
+        let corners = pieces
+            .iter()
+            .flatten()
+            .flat_map(|(x, low, high)| [self.point(*x, *low), self.point(*x, *high)]);
+        let none = Rect {
+            left: f64::MAX,
+            top: f64::MAX,
+            right: f64::MIN,
+            bottom: f64::MIN,
+        };
+        corners.fold(none, |r, (x, y)| Rect {
+            left: r.left.min(x),
+            top: r.top.min(y),
+            right: r.right.max(x),
+            bottom: r.bottom.max(y),
+        })
     }
 
     fn path(&self, points: impl Iterator<Item = (f64, f64)>, close: bool) -> String {
@@ -309,114 +333,24 @@ impl Frame<'_> {
             }
         }
     }
+}
 
-    /// A label in the freest place about a point.
-    fn label_near(
-        &self,
-        x: f64,
-        y: f64,
-        text: &str,
-        class: &str,
-        obstacles: &mut Obstacles,
-    ) -> Markup {
-        let width = labels::text_width(text, self.size.text) + 2.0;
-        let height = self.size.text + 3.0;
-        let mut candidates = Vec::new();
-        for row in 0..5 {
-            let step = 7.0 + f64::from(row) * (height + 2.0);
-            for top in [y + step, y - step - height] {
-                for left in [x + 8.0, x - 8.0 - width, x - width / 2.0] {
-                    candidates.push(Rect {
-                        left,
-                        top,
-                        right: left + width,
-                        bottom: top + height,
-                    });
-                }
-            }
-        }
-        match obstacles.place(&candidates, &self.area) {
-            Some(place) => html! {
-                text class=(format!("label {class}")) x=(n(place.left + 1.0)) y=(n(place.bottom - 4.0)) {
-                    (text)
-                }
-            },
-            None => html! {},
-        }
+/// The lines of a span's name: one where there is room. What has a meaning is never left to its
+/// colour alone: it takes two lines or runs over its ends.
+fn span_lines(span: &Span, width: f64, size: Size) -> Vec<String> {
+    let text = size.text - 1.0;
+    if labels::text_width(&span.label, text) <= width + 4.0 {
+        return vec![span.label.clone()];
     }
-
-    /// Labels at the right end of lines, moved apart.
-    fn direct_labels(&self) -> Markup {
-        let left = self.area.right + 8.0;
-        let width = self.size.width - left;
-        let line_height = self.size.text + 2.0;
-        let mut entries: Vec<(f64, Vec<String>, &'static str)> = Vec::new();
-        for layer in self.plane.layers.iter().filter(|l| is_direct(l)) {
-            if let Some(y) = last_height(&layer.shape) {
-                let lines = labels::wrap(&layer.label, width, self.size.text);
-                entries.push((self.y.place(y), lines, class(layer.role)));
-            }
-        }
-        for reference in self
-            .plane
-            .references
-            .iter()
-            .filter(|r| !r.upright && !r.label.is_empty())
-        {
-            let lines = labels::wrap(&reference.label, width, self.size.text);
-            entries.push((self.y.place(reference.at), lines, class(reference.role)));
-        }
-        #[allow(clippy::cast_precision_loss)]
-        let wanted: Vec<(f64, f64)> = entries
-            .iter()
-            .map(|(y, lines, _)| (*y, lines.len() as f64 * line_height))
-            .collect();
-        let places = labels::spread(&wanted, self.area.top - 8.0, self.area.bottom + 8.0);
-        html! {
-            @for ((_, lines, class), (middle, (_, height))) in
-                entries.iter().zip(places.iter().zip(wanted.iter())) {
-                @let first = middle - height / 2.0 + self.size.text - 1.0;
-                text class=(format!("label {class}")) x=(n(left)) y=(n(first)) {
-                    @for (index, line) in lines.iter().enumerate() {
-                        tspan x=(n(left)) dy=(if index == 0 { "0".to_owned() } else { n(line_height) }) {
-                            (line)
-                        }
-                    }
-                }
-            }
-        }
+    if matches!(span.tone, Tone::Plain | Tone::Dim) {
+        return Vec::new();
     }
-
-    /// Keys of hatched and dotted areas, below.
-    fn keys(&self) -> (f64, Markup) {
-        let mut keys: Vec<(f64, f64, &Layer)> = Vec::new();
-        let (mut x, mut y) = (self.area.left, self.area.bottom + BELOW + 6.0);
-        let shown = |layer: &&Layer| {
-            let empty = matches!(&layer.shape, Shape::Area(pieces) if pieces.is_empty());
-            !layer.label.is_empty() && !is_direct(layer) && !empty
-        };
-        for layer in self.plane.layers.iter().filter(shown) {
-            let width = 26.0 + labels::text_width(&layer.label, self.size.text) + 18.0;
-            if x > self.area.left && x + width > self.size.width + 18.0 {
-                (x, y) = (self.area.left, y + 18.0);
-            }
-            keys.push((x, y, layer));
-            x += width;
-        }
-        let height = if keys.is_empty() {
-            0.0
-        } else {
-            y + 14.0 - self.area.bottom - BELOW
-        };
-        let drawn = html! {
-            @for (x, y, layer) in keys {
-                rect class=(format!("area key {}", class(layer.role))) fill=[self.fill(layer.role)]
-                    x=(n(x)) y=(n(y - 1.0)) width="20" height="12" {}
-                text class="quiet" x=(n(x + 26.0)) y=(n(y + 9.0)) { (layer.label) }
-            }
-        };
-        (height, drawn)
-    }
+    let (first, rest) = span.label.split_once(' ').unwrap_or((&span.label, ""));
+    [first, rest]
+        .into_iter()
+        .filter(|l| !l.is_empty())
+        .map(str::to_owned)
+        .collect()
 }
 
 /// Class of a span: by its tone, or shaded by turns.
@@ -427,14 +361,6 @@ fn span_class(index: usize, tone: Tone) -> &'static str {
         Tone::Bad => "span bad",
         Tone::Plain | Tone::Dim if index % 2 == 1 => "span turn",
         Tone::Plain | Tone::Dim => "span",
-    }
-}
-
-/// Height of a shape at its right end.
-fn last_height(shape: &Shape) -> Option<f64> {
-    match shape {
-        Shape::Line(pieces) => pieces.last()?.last().map(|(_, y)| *y),
-        Shape::Area(pieces) => pieces.last()?.last().map(|(_, _, high)| *high),
     }
 }
 

@@ -20,7 +20,6 @@ pub use shape::{Shape, ShapeProblem};
 pub use text::TextProblem;
 pub use value::ValueProblem;
 
-use crate::resolve::Fault;
 use std::fmt;
 use std::ops::Range;
 
@@ -67,8 +66,6 @@ pub enum ProblemKind {
     Sense(SenseProblem),
     /// A `--set` that cannot be done.
     Set(SetProblem),
-    /// What the build names or connects does not hold.
-    Fault(Fault),
 }
 
 macro_rules! kinds {
@@ -89,8 +86,7 @@ kinds!(
     Shape(ShapeProblem),
     Value(ValueProblem),
     Sense(SenseProblem),
-    Set(SetProblem),
-    Fault(Fault),
+    Set(SetProblem)
 );
 
 impl ProblemKind {
@@ -104,7 +100,6 @@ impl ProblemKind {
             ProblemKind::Value(p) => p.label(),
             ProblemKind::Sense(p) => p.label(),
             ProblemKind::Set(p) => p.label(),
-            ProblemKind::Fault(p) => p.label(),
         }
     }
 
@@ -118,7 +113,6 @@ impl ProblemKind {
             ProblemKind::Value(p) => p.help(),
             ProblemKind::Sense(p) => p.help(),
             ProblemKind::Set(p) => p.help(),
-            ProblemKind::Fault(p) => p.help(),
         }
     }
 }

@@ -67,6 +67,7 @@ pub fn amps(answer: &Check) -> Chart {
     let pays = |s: &StateRow| (-s.battery_a).max(Amps::ZERO);
     let more = |s: &StateRow| (s.battery_a - s.worst_battery_a).max(Amps::ZERO);
     let battery = answer.reserve_soc.is_some();
+    let end = steps.last().map_or(Hours(1.0), |step| step.1);
     let mut plot = spans(Plot::<Hours, Amps>::new("Amps over the shift"), answer).step_area(
         "drawn",
         Role::Draw,
@@ -93,6 +94,7 @@ pub fn amps(answer: &Check) -> Chart {
     }
     let gives = steps.iter().map(|(a, b, s)| (*a, *b, s.available_a));
     plot.steps("can give", Role::Supply, gives)
+        .x_between(Hours::ZERO, end)
         .finish(amps_words(&steps))
 }
 

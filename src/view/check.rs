@@ -134,11 +134,23 @@ fn facts(answer: &Check) -> Vec<(&'static str, Cell)> {
     facts
 }
 
+/// What the spare amps mean.
+const SPARE: &str =
+    "What more could be drawn without end at that speed, the battery at its settled charge.";
+
 /// Changes, assumed values, findings, notes and cautions.
 pub(super) fn closing(report: Report, answer: &Check) -> Report {
     let mut report = report;
     if let Some(spare) = answer.spare_a.as_ref().filter(|s| !s.0.is_empty()) {
-        report = report.table(states::spare(spare));
+        report = report
+            .heading("To spare")
+            .facts(
+                spare
+                    .0
+                    .iter()
+                    .map(|(state, amps)| (format!("at {state}"), Cell::measured(*amps))),
+            )
+            .paragraph(SPARE);
     }
     let heading = match answer.verdict {
         Verdict::KeepsUp => "What could still be added",

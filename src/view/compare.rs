@@ -4,8 +4,7 @@ use super::check::{Options, closing, verdict};
 use super::states::below_zero;
 use super::{accessories, charts};
 use crate::check::answer::{Check, StateRow};
-use crate::quantity::format::{self, Written};
-use crate::quantity::{AmpHours, Amps, Volts};
+use crate::quantity::{AmpHours, Amps, Fraction, Volts, format};
 use crate::report::{Block, Cell, Column, Report, Table};
 
 /// The report of a change: both verdicts, what differs, by state, then what concerns the build
@@ -44,17 +43,23 @@ pub fn compare(before: &Check, after: &Check, options: &Options) -> Report {
 /// The figures that matter, before and after.
 fn difference(before: &Check, after: &Check) -> Table {
     let draws = |c: &Check| Some(c.accessories.iter().map(|a| a.ah).sum::<AmpHours>());
+    let charge = |what, was: Option<AmpHours>, is: Option<AmpHours>| {
+        line(what, was, is, Cell::measured, Cell::measured_signed)
+    };
+    let share = |what, was: Option<Fraction>, is: Option<Fraction>| {
+        line(what, was, is, Cell::percent, points)
+    };
     let rows = [
-        line("Accessories take each shift", draws(before), draws(after)),
-        line(
+        charge("Accessories take each shift", draws(before), draws(after)),
+        charge(
             "Balance of the first shift",
             before.balance_ah,
             after.balance_ah,
         ),
-        line("Lacks each shift", before.lacks_ah, after.lacks_ah),
-        line("Charge settles at", before.settles_soc, after.settles_soc),
-        line("Lowest charge", before.lowest_soc, after.lowest_soc),
-        line("Reserve", before.reserve_soc, after.reserve_soc),
+        charge("Lacks each shift", before.lacks_ah, after.lacks_ah),
+        share("Charge settles at", before.settles_soc, after.settles_soc),
+        share("Lowest charge", before.lowest_soc, after.lowest_soc),
+        share("Reserve", before.reserve_soc, after.reserve_soc),
     ];
     Table::new("What changes")
         .columns([
@@ -66,21 +71,31 @@ fn difference(before: &Check, after: &Check) -> Table {
         .rows(rows.into_iter().flatten())
 }
 
+/// A difference of shares, in points of a hundred: `+20 points`.
+fn points(difference: Fraction) -> Cell {
+    let text = format!("{} points", format::signed(difference, 0));
+    Cell {
+        text,
+        ..Cell::percent(difference)
+    }
+}
+
 /// One figure before and after; none where neither has it.
-fn line<Q: Written + std::ops::Sub<Output = Q>>(
+fn line<Q: Copy + std::ops::Sub<Output = Q>>(
     what: &str,
     before: Option<Q>,
     after: Option<Q>,
+    cell: impl Fn(Q) -> Cell,
+    difference: impl Fn(Q) -> Cell,
 ) -> Option<Vec<Cell>> {
     if before.is_none() && after.is_none() {
         return None;
     }
-    let difference = before.zip(after).map(|(b, a)| a - b);
     Some(vec![
         Cell::name(what),
-        Cell::maybe(before, Cell::measured),
-        Cell::maybe(after, Cell::measured),
-        Cell::maybe(difference, Cell::measured_signed),
+        Cell::maybe(before, &cell),
+        Cell::maybe(after, &cell),
+        Cell::maybe(before.zip(after), |(b, a)| difference(a - b)),
     ])
 }
 

@@ -1,6 +1,6 @@
 //! Tables by state of the machine.
 
-use crate::check::answer::{ByState, Check, StateRow};
+use crate::check::answer::{Check, StateRow};
 use crate::quantity::{AmpHours, Amps, Minutes, Rpm, Volts, format};
 use crate::report::{Cell, Column, Table, Tone};
 
@@ -131,13 +131,4 @@ pub fn circuits(answer: &Check) -> Table {
                 .map(|state| Column::number::<Volts>(state.as_str())),
         )
         .rows(rows)
-}
-
-/// Spare amps at each speed.
-#[must_use]
-pub fn spare(spare: &ByState<Amps>) -> Table {
-    Table::new("Spare")
-        .columns([Column::name("State"), Column::number::<Amps>("Spare")])
-        .rows(spare.0.iter().map(|(state, amps)| [Cell::name(state), Cell::fixed(*amps, 1)]))
-        .note("What more could be drawn without end at that speed, the battery at its settled charge.")
 }

@@ -11,15 +11,7 @@ use maud::{DOCTYPE, Markup, PreEscaped, html};
 /// The report as a whole HTML document.
 #[must_use]
 pub fn render(report: &Report) -> String {
-    let mut numbered = 0usize;
-    let blocks: Vec<Markup> = report
-        .blocks
-        .iter()
-        .map(|block| {
-            numbered += 1;
-            self::block(block, numbered)
-        })
-        .collect();
+    let blocks = blocks(&report.blocks);
     html! {
         (DOCTYPE)
         html lang="en" {
@@ -34,7 +26,7 @@ pub fn render(report: &Report) -> String {
                 main {
                     header {
                         h1 { (clean(&report.title, false)) }
-                        @if let Some(subtitle) = &report.subtitle { p class="dim" { (clean(subtitle, false)) } }
+                        @if let Some(subtitle) = &report.subtitle { p class="dim" { (flow(subtitle)) } }
                         @if report.made_for.is_some() || report.date.is_some() {
                             p class="dim made" {
                                 @if let Some(name) = &report.made_for { span { "For " (clean(name, false)) } }
@@ -42,12 +34,34 @@ pub fn render(report: &Report) -> String {
                             }
                         }
                     }
-                    @for block in &blocks { (block) }
+                    (blocks)
                 }
             }
         }
     }
     .into_string()
+}
+
+/// The blocks in order; charts that follow each other share a box, so that paper can hold them
+/// side by side.
+fn blocks(blocks: &[Block]) -> Markup {
+    let mut number = 0usize;
+    let same = |a: &Block, b: &Block| matches!((a, b), (Block::Chart(_), Block::Chart(_)));
+    html! {
+        @for group in blocks.chunk_by(same) {
+            @let class = if group.len() > 1 { "charts several" } else { "charts" };
+            @let charts = matches!(group, [Block::Chart(_), ..]);
+            @let drawn = group.iter().map(|block| {
+                number += 1;
+                self::block(block, number)
+            });
+            @if charts {
+                div class=(class) { @for block in drawn { (block) } }
+            } @else {
+                @for block in drawn { (block) }
+            }
+        }
+    }
 }
 
 fn block(block: &Block, number: usize) -> Markup {
@@ -56,7 +70,7 @@ fn block(block: &Block, number: usize) -> Markup {
             div class="verdicts" { @for verdict in verdicts { (self::verdict(verdict)) } }
         },
         Block::Heading(level, text) => heading(*level, text),
-        Block::Paragraph(text) => html! { p { (clean(text, false)) } },
+        Block::Paragraph(text) => html! { p { (flow(text)) } },
         Block::Facts(facts) => self::facts(facts),
         Block::Table(table) => self::table(table, number),
         Block::Chart(chart) => self::chart(chart, number),
@@ -64,13 +78,39 @@ fn block(block: &Block, number: usize) -> Markup {
         Block::Cautions(cautions) => html! {
             section class="cautions" {
                 h2 { "Cautions" }
-                ul { @for text in cautions { li { (clean(text, false)) } } }
+                ul { @for text in cautions { li { (flow(text)) } } }
             }
         },
         Block::Lines(lines) => html! {
             pre tabindex="0" { @for line in lines { (clean(line, false)) "\n" } }
         },
     }
+}
+
+/// Units that stay on the line of their number.
+const UNITS: [&str; 19] = [
+    "%", "A", "mA", "Ah", "V", "mV", "W", "Wh", "Ω", "h", "min", "s", "rpm", "°C", "K", "m", "mm",
+    "mm²", "points",
+];
+
+/// Running text: a number and its unit are not parted at a line's end.
+fn flow(text: &str) -> String {
+    let text = clean(text, false);
+    let mut flowing = String::with_capacity(text.len());
+    let mut words = text.split(' ').peekable();
+    while let Some(word) = words.next() {
+        flowing.push_str(word);
+        if let Some(next) = words.peek() {
+            let unit = next.trim_end_matches([',', ';', '.', ':', ')']);
+            let number = word.ends_with(|c: char| c.is_ascii_digit());
+            flowing.push(if number && UNITS.contains(&unit) {
+                '\u{a0}'
+            } else {
+                ' '
+            });
+        }
+    }
+    flowing
 }
 
 fn heading(level: u8, text: &str) -> Markup {
@@ -99,7 +139,7 @@ fn verdict(verdict: &Verdict) -> Markup {
             @if let Some(caption) = &verdict.caption { p class="dim" { (clean(caption, false)) } }
             p {
                 @if !verdict.lead.is_empty() { strong { (clean(&verdict.lead, false)) ":" } " " }
-                (clean(&verdict.sentence, false))
+                (flow(&verdict.sentence))
             }
         }
     }
@@ -201,7 +241,7 @@ fn item(item: &Item) -> Markup {
             @if let Some(lead) = &item.lead {
                 strong class=[class(item.tone)] { (clean(lead, false)) ":" } " "
             }
-            (clean(&item.text, false))
+            (flow(&item.text))
             @if let Some(code) = &item.code { " " code { (clean(code, false)) } }
             @if let Some(source) = &item.source { " " span class="dim" { "(" (clean(source, false)) ")" } }
         }
