@@ -13,6 +13,7 @@ pub mod outlook;
 pub mod problem;
 pub mod quantity;
 pub mod report;
+pub mod resolve;
 pub mod root;
 pub mod source;
 pub mod view;

@@ -5,7 +5,9 @@ use crate::description::charging::RegulatorKind;
 use crate::quantity::{
     Amps, Celsius, Fraction, Henries, Kelvins, Money, Ohms, Rpm, Volts, VoltsPerKelvin,
 };
-use crate::source::{Magnets, OutputCurve, Rectifier, Winding};
+use crate::source::{
+    ConstantsError, Known, Magnets, OutputCurve, Phases, Rating, Rectifier, Winding, Working,
+};
 
 /// One source of current.
 #[derive(Clone, Debug)]
@@ -102,5 +104,41 @@ impl Alternator {
     #[must_use]
     pub fn output(&self, engine: Rpm) -> Amps {
         self.curve.driven(engine, self.ratio.value, self.hotter)
+    }
+}
+
+impl WindingSource {
+    /// What is known of it, by its figures as they stand.
+    #[must_use]
+    pub fn known(&self) -> Known {
+        let rating = |&(amps, rpm, bus): &(Amps, Rpm, Volts)| Rating { amps, rpm, bus };
+        let (volts, rpm) = self.open_circuit.value;
+        Known {
+            open_circuit: Some(volts / rpm),
+            resistance: Some(self.resistance.value),
+            inductance: self.inductance.as_ref().map(|f| f.value),
+            rated: self.rated.as_ref().map(|f| rating(&f.value)),
+            poles: self.poles,
+            phases: if self.phases == 3 {
+                Phases::Three
+            } else {
+                Phases::One
+            },
+            rectifier: self.rectifier,
+            working: Working {
+                winding: self.working.value,
+                magnets: self.magnets,
+            },
+        }
+    }
+
+    /// The constants that follow from its figures as they stand, `scale` included: what
+    /// [`constants`](Self::constants) must be set to after a figure was changed.
+    ///
+    /// # Errors
+    /// [`ConstantsError`]: the figures contradict each other.
+    pub fn solve(&self) -> Result<Winding, ConstantsError> {
+        let complete = self.known().complete()?;
+        Ok(complete.winding.scaled(self.scale.value)?)
     }
 }

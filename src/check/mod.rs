@@ -1,12 +1,138 @@
 //! One build's answer: verdict, figures by state and accessory, findings.
 
 pub mod answer;
+mod cautions;
 mod error;
+mod findings;
 mod first_shift;
 mod rows;
 mod ruling;
+mod sentence;
 
+pub use cautions::cautions;
 pub use error::SolveError;
-pub use first_shift::{Book, FirstShift, first_shift};
+pub use first_shift::{Book, FirstShift, Mean, Passage, first_shift};
 pub use rows::{by_accessory, by_state};
 pub use ruling::{Reserve, ReserveFrom, Ruling, reserve, rule, rule_on};
+pub use sentence::ordinal;
+
+use crate::battery::Charge;
+use crate::build::{Build, State};
+use crate::ledger::Machine;
+use crate::outlook::Spread;
+use crate::quantity::{Amps, Fraction, Hours, Volts};
+use answer::{ByState, Check, TraceRow, Verdict};
+
+/// Version of the JSON names.
+pub const FORMAT: u32 = 1;
+
+/// What to do beside the verdict.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct Wanted {
+    /// A trace of the first shift.
+    pub trace: bool,
+}
+
+/// The answer, and the trace where one was asked for.
+#[derive(Clone, Debug)]
+pub struct Checked {
+    /// The answer.
+    pub check: Check,
+    /// The first shift and the parking after it, at least a row every ten minutes.
+    pub trace: Vec<TraceRow>,
+}
+
+/// Checks a build.
+///
+/// # Errors
+/// [`SolveError`]: there is no answer.
+pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
+    if build
+        .shift
+        .iter()
+        .all(|step| step.time.value <= Hours::ZERO)
+    {
+        return Err(SolveError::EmptyShift);
+    }
+    let machine = Machine::new(build).ok_or(SolveError::NoBattery)?;
+    let ruling = rule_on(build, &machine)?;
+    let shift = first_shift(build, &machine, Charge::rested(build.start), wanted.trace);
+    if !shift.balance.is_finite() {
+        return Err(SolveError::NotFinite);
+    }
+    let states = by_state(build, &machine, &shift);
+    let accessories = by_accessory(build, &machine, &shift);
+    let spare = spare(build, &machine, &ruling);
+    let everywhere = spare
+        .as_ref()
+        .and(machine.edge(ruling.reserve.soc, Spread::Everywhere));
+    let lowest = ruling.settles.map_or(shift.lowest, |(_, lowest)| lowest);
+    let seen = findings::Seen {
+        build,
+        machine: &machine,
+        ruling: &ruling,
+        shift: &shift,
+        states: &states,
+        accessories: &accessories,
+    };
+    let check = Check {
+        format: FORMAT,
+        build: build.name.clone(),
+        air_c: build.air.value,
+        system_v: Volts(2.0 * f64::from(machine.cells)),
+        verdict: ruling.verdict,
+        sentence: sentence::sentence(
+            &ruling,
+            everywhere.map(|a| (-a).max(Amps::ZERO)),
+            shift.lowest,
+        ),
+        shifts_carried: ruling.shifts_carried,
+        lacks_ah: ruling.lacks,
+        lacks_a: ruling.lacks_current,
+        beyond_charging: None,
+        balance_ah: Some(shift.balance),
+        settles_soc: ruling.settles.map(|(charge, _)| charge.soc),
+        lowest_soc: Some(lowest),
+        reserve_soc: Some(ruling.reserve.soc.min(Fraction::ONE)),
+        reserve_from: Some(ruling.reserve.from.words().to_owned()),
+        findings: findings::findings(&seen),
+        steps: shift.steps(build, &machine),
+        states,
+        accessories,
+        circuits: Vec::new(),
+        spare_a: spare,
+        changes: Vec::new(),
+        assumed: build.assumed.clone(),
+        cautions: cautions(build),
+        notes: notes(build, &machine),
+    };
+    Ok(Checked {
+        check,
+        trace: shift.trace,
+    })
+}
+
+/// What may still be drawn at each running speed alone, for a build that keeps up.
+fn spare(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<ByState<Amps>> {
+    if ruling.verdict != Verdict::KeepsUp {
+        return None;
+    }
+    let running = machine
+        .connected
+        .iter()
+        .filter(|w| w.runs && matches!(w.state, State::Running(_)));
+    let amps = running.filter_map(|w| {
+        let edge = machine.edge(ruling.reserve.soc, Spread::In(w.state))?;
+        Some((
+            build.state_name(w.state).to_owned(),
+            (-edge).max(Amps::ZERO),
+        ))
+    });
+    Some(ByState(amps.collect()))
+}
+
+fn notes(build: &Build, machine: &Machine) -> Vec<String> {
+    let mut notes = build.notes.clone();
+    notes.extend(machine.battery.notes().iter().map(ToString::to_string));
+    notes
+}

@@ -20,6 +20,7 @@ pub use shape::{Shape, ShapeProblem};
 pub use text::TextProblem;
 pub use value::ValueProblem;
 
+use crate::resolve::Fault;
 use std::fmt;
 use std::ops::Range;
 
@@ -66,6 +67,8 @@ pub enum ProblemKind {
     Sense(SenseProblem),
     /// A `--set` that cannot be done.
     Set(SetProblem),
+    /// What the build names or connects does not hold.
+    Fault(Fault),
 }
 
 macro_rules! kinds {
@@ -86,7 +89,8 @@ kinds!(
     Shape(ShapeProblem),
     Value(ValueProblem),
     Sense(SenseProblem),
-    Set(SetProblem)
+    Set(SetProblem),
+    Fault(Fault),
 );
 
 impl ProblemKind {
@@ -100,6 +104,7 @@ impl ProblemKind {
             ProblemKind::Value(p) => p.label(),
             ProblemKind::Sense(p) => p.label(),
             ProblemKind::Set(p) => p.label(),
+            ProblemKind::Fault(p) => p.label(),
         }
     }
 
@@ -113,6 +118,7 @@ impl ProblemKind {
             ProblemKind::Value(p) => p.help(),
             ProblemKind::Sense(p) => p.help(),
             ProblemKind::Set(p) => p.help(),
+            ProblemKind::Fault(p) => p.help(),
         }
     }
 }

@@ -1,0 +1,341 @@
+//! What the figures show beside the verdict.
+
+use super::answer::{AccessoryRow, Finding, StateRow, Weight};
+use super::first_shift::FirstShift;
+use super::ruling::Ruling;
+use crate::battery::{Charge, FREEZING_MARGIN};
+use crate::build::{Build, State};
+use crate::ledger::{Machine, connect};
+use crate::quantity::format::{duration, percent, temperature, text};
+use crate::quantity::{AmpHours, Amps, Fraction, Hours, Volts};
+
+/// Volts a cell above which a running battery is overcharged, and above which a regulator must
+/// have failed; and below which it is not being charged. Common practice, no source.
+const OVERCHARGE_CELL: f64 = 14.8 / 6.0;
+const REGULATOR_FAULT_CELL: f64 = 15.5 / 6.0;
+const NOT_CHARGING_CELL: f64 = 13.2 / 6.0;
+/// Charge that a battery ought to pass now and then, or its plates sulphate. Common practice.
+const SULPHATION: Fraction = Fraction(0.8);
+/// Draw with the key off above which a fault is likely. Common practice.
+const PARASITIC: Amps = Amps(0.05);
+const PRACTICE: &str = "common practice, no source";
+
+/// All a finding may look at.
+pub struct Seen<'a> {
+    /// The build.
+    pub build: &'a Build,
+    /// The build made ready.
+    pub machine: &'a Machine,
+    /// The ruling.
+    pub ruling: &'a Ruling,
+    /// The first shift.
+    pub shift: &'a FirstShift,
+    /// By state.
+    pub states: &'a [StateRow],
+    /// By accessory.
+    pub accessories: &'a [AccessoryRow],
+}
+
+fn finding(what: &str, weight: Weight, text: String, source: &str) -> Finding {
+    Finding {
+        what: what.to_owned(),
+        weight,
+        text,
+        source: source.to_owned(),
+    }
+}
+
+/// The findings on the battery and its bus.
+#[must_use]
+pub fn findings(seen: &Seen<'_>) -> Vec<Finding> {
+    let mut all = Vec::new();
+    all.extend(overcharge(seen));
+    all.extend(not_charging(seen));
+    all.extend(drop_outs(seen));
+    all.extend(above_range(seen));
+    all.extend(cold_start(seen));
+    all.extend(freezing(seen));
+    all.extend(never_full(seen));
+    all.extend(gassing(seen));
+    all.extend(parasitic(seen));
+    all
+}
+
+/// The charge a settled build works at: where it settles, or full.
+fn working_charge(seen: &Seen<'_>) -> Charge {
+    seen.ruling
+        .settles
+        .map_or(Charge::FULL, |(charge, _)| charge)
+}
+
+/// The highest bus volts of each running state: battery full, all that cycles switched off.
+/// An unregulated winding is judged with its loads off, as well as on.
+fn overcharge(seen: &Seen<'_>) -> Vec<Finding> {
+    let cells = f64::from(seen.machine.cells);
+    let unregulated = seen
+        .build
+        .sources
+        .iter()
+        .any(|s| s.circuit.is_none() && s.regulator.is_none() && !s.braking);
+    let mut all = Vec::new();
+    for wired in seen.machine.connected.iter().filter(|w| w.runs) {
+        let name = seen.build.state_name(wired.state);
+        let loaded = wired
+            .bus
+            .flow(&seen.machine.climate, Charge::FULL, seen.machine.cells);
+        let (volts, surplus, how) = match unregulated.then(|| lightest(seen, wired.state)).flatten()
+        {
+            Some((volts, surplus, off)) if volts > loaded.bus => {
+                (volts, surplus, format!("with {off} off"))
+            }
+            _ => (loaded.bus, loaded.battery, "with all its loads".to_owned()),
+        };
+        if volts.0 <= OVERCHARGE_CELL * cells {
+            continue;
+        }
+        let fault = volts.0 > REGULATOR_FAULT_CELL * cells;
+        let text = format!(
+            "at {name} a full battery is driven to {} by a surplus of {}, {how}{}",
+            text(volts),
+            text(surplus),
+            if unregulated {
+                ": the winding is unregulated and matched to its loads; fit a regulator or keep them on"
+            } else {
+                ""
+            }
+        );
+        let weight = if fault {
+            Weight::Fault
+        } else {
+            Weight::Warning
+        };
+        all.push(finding("overcharge", weight, text, "over 14.8 V a 12 V battery gasses hard, over 15.5 V a regulator has failed: common practice, no source"));
+    }
+    all
+}
+
+/// Bus volts and surplus with each cycling load off in turn, or all of them: the highest, and
+/// what is off.
+fn lightest(seen: &Seen<'_>, state: State) -> Option<(Volts, Amps, String)> {
+    let cycles = |share: Fraction| share > Fraction::ZERO;
+    let on: Vec<usize> = (0..seen.build.accessories.len())
+        .filter(|k| {
+            let accessory = &seen.build.accessories[*k];
+            accessory.circuit.is_none() && cycles(accessory.duty.share(state))
+        })
+        .collect();
+    let without = |off: &[usize]| {
+        let mut build = seen.build.clone();
+        for k in off {
+            if let State::Running(speed) = state {
+                if let Some(duty) = build.accessories[*k].duty.running.get_mut(speed) {
+                    duty.value = Fraction::ZERO;
+                }
+            }
+        }
+        let flow = connect(&build, state, None).flow(
+            &seen.machine.climate,
+            Charge::FULL,
+            seen.machine.cells,
+        );
+        (flow.bus, flow.battery)
+    };
+    let mut cases: Vec<(Vec<usize>, String)> = on
+        .iter()
+        .map(|k| (vec![*k], seen.build.accessories[*k].name.clone()))
+        .collect();
+    if on.len() > 1 {
+        cases.push((on, "all of them".to_owned()));
+    }
+    cases
+        .into_iter()
+        .map(|(off, name)| {
+            let (volts, surplus) = without(&off);
+            (volts, surplus, name)
+        })
+        .max_by(|a, b| a.0.0.total_cmp(&b.0.0))
+}
+
+fn not_charging(seen: &Seen<'_>) -> Vec<Finding> {
+    let least = Volts(NOT_CHARGING_CELL * f64::from(seen.machine.cells));
+    seen.states
+        .iter()
+        .filter(|s| s.rpm.0 > 0.0 && s.bus_v < least && s.battery_a < Amps::ZERO)
+        .map(|s| {
+            let text = format!(
+                "at {} the battery is not charged but pays {} (bus {})",
+                s.state,
+                text(-s.battery_a),
+                text(s.bus_v)
+            );
+            finding("not charging", Weight::Note, text, PRACTICE)
+        })
+        .collect()
+}
+
+fn drop_outs(seen: &Seen<'_>) -> Vec<Finding> {
+    seen.accessories
+        .iter()
+        .filter(|row| row.missed_ah > AmpHours(1e-9))
+        .map(|row| {
+            let text = format!(
+                "{} drops out for want of volts and misses {} a shift",
+                row.name,
+                text(row.missed_ah)
+            );
+            finding("drop-out", Weight::Fault, text, "its lower working limit")
+        })
+        .collect()
+}
+
+fn above_range(seen: &Seen<'_>) -> Vec<Finding> {
+    let mut all = Vec::new();
+    for accessory in seen
+        .build
+        .accessories
+        .iter()
+        .filter(|a| a.circuit.is_none())
+    {
+        let Some(high) = accessory.works.high else {
+            continue;
+        };
+        let row = seen
+            .accessories
+            .iter()
+            .find(|row| row.name == accessory.name);
+        let over = row.and_then(|row| row.volts.0.iter().find(|(_, volts)| *volts > high));
+        if let Some((state, volts)) = over {
+            let text = format!(
+                "{} sees {} at {state}, above its limit of {}",
+                accessory.name,
+                text(*volts),
+                text(high)
+            );
+            all.push(finding(
+                "over its range",
+                Weight::Warning,
+                text,
+                "its upper working limit",
+            ));
+        }
+    }
+    all
+}
+
+fn cold_start(seen: &Seen<'_>) -> Option<Finding> {
+    let starter = seen.build.starter.as_ref()?;
+    let charge = Charge::rested(working_charge(seen).soc);
+    let margin = seen
+        .machine
+        .battery
+        .start_margin(charge, &starter.asks(), seen.build.air.value);
+    let soc = percent(charge.soc);
+    let air = temperature(seen.build.air.value);
+    let source = "SAE J537 cranking rating scaled by the battery model; starter's rise in the cold from a printed table";
+    let attempts = crate::quantity::format::count(starter.starts.value, "start", "starts");
+    if margin.volts < Volts::ZERO {
+        let text = format!(
+            "{attempts} at {air} from {soc} leave the starter {} short of what it needs",
+            text(-margin.volts)
+        );
+        return Some(finding("cold start", Weight::Fault, text, source));
+    }
+    let spare = margin
+        .charge
+        .map_or(String::new(), |ah| format!(" and {} of charge", text(ah)));
+    let text = format!(
+        "{attempts} at {air} from {soc} leave {} at the starter to spare{spare}",
+        text(margin.volts)
+    );
+    Some(finding("cold start", Weight::Note, text, source))
+}
+
+fn freezing(seen: &Seen<'_>) -> Option<Finding> {
+    let lowest = seen
+        .ruling
+        .settles
+        .map_or(seen.shift.lowest, |(_, lowest)| lowest);
+    let freezes = seen.machine.battery.freezing_point(lowest);
+    (seen.build.air.value.0 < freezes.0 + FREEZING_MARGIN.0).then(|| {
+        let text = format!(
+            "at its lowest charge of {} the acid freezes at {}; the air is at {}",
+            percent(lowest),
+            temperature(freezes),
+            temperature(seen.build.air.value)
+        );
+        finding(
+            "freezing",
+            Weight::Fault,
+            text,
+            "freezing points printed in a vehicle owner's manual, 5 K margin own choice",
+        )
+    })
+}
+
+fn never_full(seen: &Seen<'_>) -> Option<Finding> {
+    let (charge, _) = seen.ruling.settles?;
+    let highest = highest(seen, charge);
+    (highest < SULPHATION).then(|| {
+        let text = format!(
+            "the battery never gets above {} in the settled shift: its plates sulphate; recharge it fully now and then",
+            percent(highest)
+        );
+        finding("undercharge", Weight::Warning, text, PRACTICE)
+    })
+}
+
+fn highest(seen: &Seen<'_>, charge: Charge) -> Fraction {
+    let mut most = charge.soc;
+    seen.machine.walk(charge, None, |_, _, stride| {
+        most = most.max(stride.after.soc)
+    });
+    most
+}
+
+fn gassing(seen: &Seen<'_>) -> Option<Finding> {
+    let charge = working_charge(seen);
+    let limit = Volts(14.4 / 6.0 * f64::from(seen.machine.cells));
+    let (mut gassed, mut high) = (AmpHours::ZERO, Hours::ZERO);
+    seen.machine.walk(charge, None, |_, _, stride| {
+        gassed += 0.5 * (stride.first.gas + stride.second.gas) * stride.time;
+        if stride.first.bus >= limit {
+            high += stride.time;
+        }
+    });
+    let water = seen.machine.battery.water_lost(gassed);
+    (gassed > AmpHours(0.005 * seen.machine.battery.c20().0)).then(|| {
+        let text = format!(
+            "{} gas off in a settled shift ({} of water); {} at or above the gassing voltage",
+            text(gassed),
+            text(water),
+            duration(high)
+        );
+        finding(
+            "gassing",
+            Weight::Note,
+            text,
+            "Faraday's law; gassing current as Schiffer et al. 2007 (transcribed)",
+        )
+    })
+}
+
+fn parasitic(seen: &Seen<'_>) -> Option<Finding> {
+    let draw: Amps = seen
+        .build
+        .accessories
+        .iter()
+        .map(|a| f64::from(a.count) * a.parked)
+        .sum();
+    (draw > PARASITIC).then(|| {
+        finding(
+            "key-off drain",
+            Weight::Warning,
+            format!(
+                "{} are drawn with the key off: over {} look for a fault",
+                text(draw),
+                text(PARASITIC)
+            ),
+            PRACTICE,
+        )
+    })
+}
