@@ -1,7 +1,9 @@
 //! The catalogs the program carries: each entry has its source, an id of its own, and figures within reason;
 //! and what a user's folder of catalogs may and may not do.
 
-use ampledger::catalog::{CatalogError, Catalogs, Certainty, Kind};
+use ampledger::build::{Build, Draw};
+use ampledger::catalog::{CatalogError, Catalogs, Certainty, Entry, Kind};
+use ampledger::resolve::{KitError, find_kit, resolve, with_kit};
 use std::collections::BTreeSet;
 use std::fs;
 use std::path::Path;
@@ -85,6 +87,169 @@ fn built_in_files_have_the_shape_that_the_scan_needs() {
             assert_eq!(body, keys, "`{id}`");
         }
     }
+}
+
+/// A plain machine with one entry of a catalog in it; the reader's bounds hold every figure within reason.
+fn with(entry: &Entry) -> Result<Build, String> {
+    let (mut charging, mut battery) = (
+        "[{part: winding-16a}]".to_owned(),
+        "{part: battery-agm-30ah}".to_owned(),
+    );
+    let (mut starter, mut accessories) = ("{part: starter-single}".to_owned(), "[]".to_owned());
+    let this = format!("{{part: {}}}", entry.id);
+    let mut kit = None;
+    match entry.kind {
+        Kind::Charging => charging = format!("[{{part: winding-16a}}, {this}]"),
+        Kind::Battery => {
+            battery = this; // of any voltage, so without the 12 V winding
+            charging = "[]".to_owned();
+        }
+        Kind::Starter => starter = this,
+        Kind::Accessory => accessories = format!("[{this}]"),
+        Kind::Kit => {
+            kit = Some(find_kit(&Catalogs::builtin(), &entry.id).map_err(|e| e.to_string())?)
+        }
+    }
+    let text = format!(
+        "build: plain\nengine: {{speeds: {{governed: 3400 rpm}}, starter: {starter}}}\ncharging: {charging}\nbattery: {battery}\naccessories: {accessories}\nshift: [crank, {{governed: 1 h}}]\n"
+    );
+    let (description, _) =
+        ampledger::description::read("plain", text.as_bytes()).map_err(|e| e.to_string())?;
+    let description = match &kit {
+        Some(kit) => with_kit(&description, kit),
+        None => description,
+    };
+    resolve(&description, &Catalogs::builtin()).map_err(|e| format!("{e:?}"))
+}
+
+#[test]
+fn every_entry_is_a_part_that_a_build_can_have() {
+    for kind in Kind::ALL {
+        for entry in Catalogs::builtin().entries(kind) {
+            let build = with(&entry).unwrap_or_else(|e| panic!("`{}`: {e}", entry.id));
+            // What a figure of a lamp, a coil or a winding rests on is in its entry, not assumed.
+            for what in [
+                "volts at which the draw",
+                "open-circuit volts",
+                "winding resistance",
+                "cold cranking",
+            ] {
+                let assumed = build.assumed.iter().find(|a| a.what.starts_with(what));
+                assert!(assumed.is_none(), "`{}`: {assumed:?}", entry.id);
+            }
+            assert_eq!(build.notes, [""; 0], "`{}`", entry.id);
+        }
+    }
+}
+
+/// UN Regulation 37 prints the greatest objective watts no more than 26 % above a lamp's rated watts at these test
+/// volts (H1 68 for 55, P21W 26.5 for 21; 24 V lamps up to 54 %), and its lumens: a slip of a digit would show.
+#[test]
+fn lamps_lie_by_their_rated_watts() {
+    let mut seen = 0;
+    for entry in Catalogs::builtin().entries(Kind::Accessory) {
+        if !entry.id.starts_with("lamp-") {
+            continue;
+        }
+        let title = entry.title.strip_suffix(" (amber)").unwrap_or(&entry.title);
+        let rated = title
+            .split(", ")
+            .find_map(|t| t.strip_suffix(" W"))
+            .and_then(|w| w.parse::<f64>().ok());
+        let rated = rated.unwrap_or_else(|| panic!("`{}` names no watts", entry.id));
+        let build = with(&entry).unwrap();
+        let lamp = &build.accessories[0];
+        let Draw::Filament { power, at } = lamp.draw.value else {
+            panic!("`{}`", entry.id)
+        };
+        let most = if at.0 > 20.0 { 2.25 } else { 1.42 };
+        assert!(
+            (1.0..most).contains(&(power.0 / rated)),
+            "`{}`: {power:?} for {rated}",
+            entry.id
+        );
+        let efficacy = lamp.lumens.unwrap().0 / power.0;
+        assert!(
+            (3.0..30.0).contains(&efficacy),
+            "`{}`: {efficacy} lm/W",
+            entry.id
+        );
+        seen += 1;
+    }
+    assert!(seen > 45, "{seen}");
+}
+
+/// Minutes at 25 A follow from the capacity by the usual exponent of the type: printed within 3 %.
+#[test]
+fn invented_labels_hold_together() {
+    for entry in Catalogs::builtin().entries(Kind::Battery) {
+        let build = with(&entry).unwrap();
+        let label = build.battery.unwrap().label;
+        let minutes = label.reserve_capacity.unwrap();
+        let back = label
+            .chemistry
+            .capacity_from_reserve(minutes, label.reserve_amps);
+        assert!(
+            (back / label.capacity - 1.0).abs() < 0.03,
+            "`{}`: {back:?}",
+            entry.id
+        );
+        let ratio = label.cold_cranking.unwrap().0 / label.capacity.0;
+        assert!((5.0..13.0).contains(&ratio), "`{}`: {ratio}", entry.id);
+    }
+}
+
+#[test]
+fn a_kit_adds_its_accessories_and_its_names_stay_apart() {
+    let catalogs = Catalogs::builtin();
+    let text = "build: plain\nengine: {speeds: {governed: 3400 rpm}}\ncharging: []\nbattery: {capacity: 30 Ah}\naccessories: [{name: Turn lamps, draw: 21 W, duty: 5 %}]\nshift: [{governed: 1 h}]\n";
+    let (description, _) = ampledger::description::read("plain", text.as_bytes()).unwrap();
+    let kit = find_kit(&catalogs, "road-legal").unwrap();
+    assert_eq!((kit.accessories.len(), kit.price.unwrap().0), (3, 180.0));
+    let build = resolve(&with_kit(&description, &kit), &catalogs).unwrap();
+    let names: Vec<_> = build
+        .accessories
+        .iter()
+        .map(|a| (a.path.as_str(), a.name.as_str()))
+        .collect();
+    assert_eq!(names[0], ("accessories[0]", "Turn lamps"));
+    assert_eq!(names[3], ("accessories[3]", "Turn lamps (2)"));
+    assert_eq!(build.accessories[3].count, 2);
+    let unknown = find_kit(&catalogs, "road-leagl").unwrap_err();
+    assert!(
+        matches!(&unknown, KitError::Unknown { nearest: Some(id), .. } if id == "road-legal"),
+        "{unknown}"
+    );
+}
+
+#[test]
+fn a_kit_may_be_a_file() {
+    let dir = folder(&[
+        (
+            "cool.yaml",
+            "accessories:\n  - {name: Cool box, draw: 4 A, duty: 40 %, apart: [Kettle]}\n  - {name: Kettle, draw: 10 A, duty: 5 %}\nprice: 90\n",
+        ),
+        (
+            "bad.yaml",
+            "accessories:\n  - {name: Cool box, draw: 4 V}\n",
+        ),
+    ]);
+    let catalogs = Catalogs::builtin();
+    let kit = find_kit(&catalogs, dir.path().join("cool.yaml").to_str().unwrap()).unwrap();
+    assert_eq!((kit.title.as_str(), kit.price.unwrap().0), ("cool", 90.0));
+    let text = "build: plain\nengine: {speeds: {governed: 3400 rpm}}\ncharging: []\nbattery: {capacity: 30 Ah}\naccessories: [{name: Kettle, draw: 8 A, duty: 5 %}]\nshift: [{governed: 1 h}]\n";
+    let (description, _) = ampledger::description::read("plain", text.as_bytes()).unwrap();
+    let build = resolve(&with_kit(&description, &kit), &catalogs).unwrap();
+    let kettle = &build.accessories[2];
+    assert_eq!(
+        (kettle.name.as_str(), kettle.apart.as_slice()),
+        ("Kettle (2)", [1].as_slice())
+    );
+    let bad = find_kit(&catalogs, dir.path().join("bad.yaml").to_str().unwrap()).unwrap_err();
+    assert!(
+        matches!(&bad, KitError::Refused(_)) && bad.to_string().contains("bad.yaml"),
+        "{bad}"
+    );
 }
 
 #[test]
