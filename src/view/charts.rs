@@ -1,6 +1,6 @@
 //! The charts of the answers, from typed figures to what is drawn and its words.
 
-use super::accessories;
+use super::{accessories, check};
 use crate::chart::{Chart, Days, Plot, Role};
 use crate::check::answer::{AccessoryRow, Check, StateRow, StepRow, TraceRow};
 use crate::quantity::{Amps, Celsius, Fraction, Hours, Minutes, Rpm, format};
@@ -173,7 +173,7 @@ fn days(answer: &Check, trace: &[TraceRow]) -> Option<Chart> {
         .map(|row| (Days(row.minutes.0 / 1440.0), row.soc))
         .collect();
     let low = lowest(&points);
-    let plot = Plot::<Days, Fraction>::new("Battery charge, shift after shift").line(
+    let plot = Plot::<Days, Fraction>::new("Battery charge over the days").line(
         "charge",
         Role::Charge,
         points.iter().copied(),
@@ -195,7 +195,7 @@ fn days(answer: &Check, trace: &[TraceRow]) -> Option<Chart> {
 }
 
 fn reserve<X: format::Written>(plot: Plot<X, Fraction>, answer: &Check) -> Plot<X, Fraction> {
-    match answer.reserve_soc {
+    match check::reserve(answer) {
         Some(reserve) => plot.level(
             format!("reserve {}", format::percent(reserve)),
             Role::Limit,
@@ -226,15 +226,17 @@ fn charge_words<X>(
             format::percent(*soc)
         })
     };
-    let reserve = answer
-        .reserve_soc
-        .map(|r| format!(", against a reserve of {}", format::percent(r)));
+    let reserve = match (answer.reserve_soc, check::reserve(answer)) {
+        (_, Some(reserve)) => format!(", against a reserve of {}", format::percent(reserve)),
+        (Some(_), None) => ", and not even a full battery would do".to_owned(),
+        (None, None) => String::new(),
+    };
     format!(
         "{over} the charge goes from {} to {}; its lowest is {}{}.",
         percent(first),
         percent(last),
         percent(low.as_ref()),
-        reserve.unwrap_or_default()
+        reserve
     )
 }
 

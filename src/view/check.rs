@@ -2,7 +2,7 @@
 
 use super::{accessories, charts, states};
 use crate::check::answer::{Check, Finding, TraceRow, Verdict, Weight};
-use crate::quantity::format;
+use crate::quantity::{Fraction, format};
 use crate::report::{self, Cell, Column, Item, Report, Table, Tone};
 
 /// What a report of a check takes beside the answer.
@@ -105,6 +105,15 @@ pub fn verdict(answer: &Check) -> report::Verdict {
     )
 }
 
+/// The reserve, where a battery can hold it: one that does not crank even when full has a reserve
+/// above the whole.
+#[must_use]
+pub fn reserve(answer: &Check) -> Option<Fraction> {
+    answer
+        .reserve_soc
+        .filter(|reserve| *reserve <= Fraction::ONE)
+}
+
 /// The figures that matter most.
 fn facts(answer: &Check) -> Vec<(&'static str, Cell)> {
     let mut facts = Vec::new();
@@ -125,8 +134,10 @@ fn facts(answer: &Check) -> Vec<(&'static str, Cell)> {
         let cell = Cell::percent(lowest);
         facts.push(("Lowest charge", if low { cell.bad() } else { cell }));
     }
-    if let Some(reserve) = answer.reserve_soc {
-        facts.push(("Reserve", Cell::percent(reserve)));
+    match (answer.reserve_soc, reserve(answer)) {
+        (_, Some(reserve)) => facts.push(("Reserve", Cell::percent(reserve))),
+        (Some(_), None) => facts.push(("Reserve", Cell::text("more than full").bad())),
+        (None, None) => {}
     }
     if let Some(balance) = answer.balance_ah {
         facts.push(("Balance, first shift", Cell::measured_signed(balance)));

@@ -1,6 +1,6 @@
 //! Before and after: two answers side by side.
 
-use super::check::{Options, closing, verdict};
+use super::check::{Options, closing, reserve, verdict};
 use super::states::below_zero;
 use super::{accessories, charts};
 use crate::check::answer::{Check, StateRow};
@@ -59,7 +59,7 @@ fn difference(before: &Check, after: &Check) -> Table {
         charge("Lacks each shift", before.lacks_ah, after.lacks_ah),
         share("Charge settles at", before.settles_soc, after.settles_soc),
         share("Lowest charge", before.lowest_soc, after.lowest_soc),
-        share("Reserve", before.reserve_soc, after.reserve_soc),
+        share("Reserve", reserve(before), reserve(after)),
     ];
     Table::new("What changes")
         .columns([
