@@ -37,21 +37,17 @@ pub(super) struct Surroundings<'a> {
 /// The accessories of a build, in the order written; none where a fault leaves nothing to go by.
 pub(super) fn accessories(
     context: &mut Context,
-    texts: &[AccessoryText],
+    layers: &[Layers<AccessoryText>],
     around: &Surroundings,
 ) -> Option<Vec<Accessory>> {
-    let layers: Vec<Layers<AccessoryText>> = texts
-        .iter()
-        .map(|a| super::parts::layers(context, a, &a.path))
-        .collect();
-    let names = names(context, &layers);
+    let names = names(context, layers);
     let mut all = Vec::with_capacity(layers.len());
     for (layers, name) in layers.iter().zip(names) {
         all.push(accessory(context, layers, name, around));
     }
-    context.tell_groups(usize::MAX);
     let mut all: Vec<Accessory> = all.into_iter().collect::<Option<_>>()?;
-    super::groups::link(context, texts, &mut all, around.speeds);
+    let texts: Vec<&AccessoryText> = layers.iter().map(|l| l.own).collect();
+    super::groups::link(context, &texts, &mut all, around.speeds);
     Some(all)
 }
 
