@@ -1,0 +1,157 @@
+//! The arguments, as clap reads them. Nothing below this file knows clap.
+
+use clap::{Args, Parser, Subcommand, ValueEnum};
+use std::io::IsTerminal;
+use std::path::PathBuf;
+
+/// Plans the electrical load budget of engine-driven equipment.
+#[derive(Debug, Parser)]
+#[command(name = "ampledger", version, about, propagate_version = true, after_help = EXIT_CODES)]
+pub struct Arguments {
+    /// What every command takes.
+    #[command(flatten)]
+    pub common: Common,
+    /// The command.
+    #[command(subcommand)]
+    pub command: Command,
+}
+
+const EXIT_CODES: &str = "\
+Exit codes:
+  0  it keeps up (or there was nothing to judge)
+  1  it does not keep up
+  2  the input or the call is wrong; nothing is written
+
+Examples:
+  ampledger check examples/orchard-mower.yaml
+  ampledger check examples/orchard-mower.yaml --set 'engine.speeds.idle=2100 rpm'
+  ampledger curve examples/orchard-mower.yaml --rpm 1800,2400,3600";
+
+/// What every command takes.
+#[derive(Args, Debug)]
+pub struct Common {
+    /// How the answer is written
+    #[arg(long, global = true, value_enum, default_value_t = Format::Table, value_name = "FORMAT")]
+    pub format: Format,
+    /// Write the answer to a file, whole or not at all
+    #[arg(short, long, global = true, value_name = "FILE")]
+    pub output: Option<PathBuf>,
+    /// Replace an existing output file
+    #[arg(long, global = true)]
+    pub force: bool,
+    /// When to use colour; NO_COLOR is heeded too
+    #[arg(long, global = true, value_enum, default_value_t = Colour::Auto, value_name = "WHEN")]
+    pub color: Colour,
+    /// Columns of a table (default: the terminal's, 80 in a pipe)
+    #[arg(long, global = true, value_name = "COLUMNS", value_parser = clap::value_parser!(u16).range(40..=400))]
+    pub width: Option<u16>,
+    /// Rules and bars in plain ASCII
+    #[arg(long, global = true)]
+    pub ascii: bool,
+    /// A folder of your own catalogs, searched before the built-in ones
+    #[arg(long, global = true, value_name = "DIR")]
+    pub catalogs: Option<PathBuf>,
+}
+
+impl Common {
+    /// Whether a stream gets colour.
+    pub fn colours(&self, stream: &impl IsTerminal) -> bool {
+        match self.color {
+            Colour::Always => true,
+            Colour::Never => false,
+            Colour::Auto => stream.is_terminal() && std::env::var_os("NO_COLOR").is_none_or(|v| v.is_empty()),
+        }
+    }
+}
+
+/// Output formats.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+pub enum Format {
+    /// Tables for a terminal
+    Table,
+    /// JSON, full precision, units named in the keys
+    Json,
+    /// CSV, units in the headers
+    Csv,
+    /// Markdown
+    Markdown,
+    /// One self-contained page
+    Html,
+}
+
+/// When to use colour.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+pub enum Colour {
+    /// On a terminal
+    Auto,
+    /// Always
+    Always,
+    /// Never
+    Never,
+}
+
+/// The commands.
+#[derive(Debug, Subcommand)]
+pub enum Command {
+    /// Does the charging system keep up? The verdict, with its working
+    Check(CheckArgs),
+    /// Winding output against rpm
+    Curve(CurveArgs),
+}
+
+/// Which build, and what is changed in it.
+#[derive(Args, Debug)]
+pub struct BuildArgs {
+    /// Change a value: PATH=VALUE, paths as error messages print them; may be repeated
+    #[arg(long, value_name = "PATH=VALUE")]
+    pub set: Vec<String>,
+    /// Air temperature, `-5 °C`
+    #[arg(long, value_name = "TEMPERATURE", allow_hyphen_values = true)]
+    pub air: Option<String>,
+    /// Charge at the beginning of the first shift, `80 %`
+    #[arg(long, value_name = "CHARGE")]
+    pub start: Option<String>,
+}
+
+/// `check`.
+#[derive(Args, Debug)]
+pub struct CheckArgs {
+    /// Build files; `-` is standard input
+    #[arg(required = true, value_name = "BUILD")]
+    pub builds: Vec<String>,
+    /// Changes to the build.
+    #[command(flatten)]
+    pub build: BuildArgs,
+    /// A kit to add, by its id or file: answers before and after
+    #[arg(long, value_name = "KIT")]
+    pub with: Option<String>,
+    /// Write the course of the first shift to a CSV file
+    #[arg(long, value_name = "FILE.csv")]
+    pub trace: Option<PathBuf>,
+    /// Show the working of one state
+    #[arg(long, value_name = "STATE")]
+    pub why: Option<String>,
+    /// For whom the page is made
+    #[arg(long = "for", value_name = "NAME")]
+    pub made_for: Option<String>,
+    /// Date to print on the page, as you write it
+    #[arg(long, value_name = "DATE")]
+    pub date: Option<String>,
+}
+
+/// `curve`.
+#[derive(Args, Debug)]
+pub struct CurveArgs {
+    /// Build file; `-` is standard input
+    #[arg(value_name = "BUILD")]
+    pub file: String,
+    /// Changes to the build.
+    #[command(flatten)]
+    pub build: BuildArgs,
+    /// Engine speeds, `1800,2400,3600`
+    #[arg(long, value_name = "LIST", value_delimiter = ',')]
+    pub rpm: Vec<String>,
+    /// Bus volts, `12.6,14.4`
+    #[arg(long, value_name = "LIST", value_delimiter = ',')]
+    pub volts: Vec<String>,
+}

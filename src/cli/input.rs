@@ -1,0 +1,88 @@
+//! Bytes in: build files, standard input, catalogs, values given as arguments.
+
+use super::args::{BuildArgs, Common};
+use ampledger::build::Build;
+use ampledger::catalog::Catalogs;
+use ampledger::description::set::Assignment;
+use ampledger::description::{Description, read};
+use ampledger::problem::{Refusal, Source};
+use ampledger::quantity::parse::parse;
+use ampledger::quantity::{Celsius, Fraction};
+use ampledger::resolve;
+use anyhow::{Context, anyhow};
+use std::io::Read;
+use std::path::Path;
+
+/// A build as read, kept so that more can be made of it.
+pub struct Opened {
+    /// What the user wrote.
+    pub description: Description,
+    /// Where everything stands.
+    pub source: Source,
+    /// The build.
+    pub build: Build,
+}
+
+/// The catalogs: the user's own folder first, where one is given.
+///
+/// # Errors
+/// The folder cannot be read, or holds what is no catalog.
+pub fn catalogs(common: &Common) -> anyhow::Result<Catalogs> {
+    match &common.catalogs {
+        Some(folder) => Ok(Catalogs::with_folder(folder)?),
+        None => Ok(Catalogs::builtin()),
+    }
+}
+
+/// Reads and resolves one build.
+///
+/// # Errors
+/// [`Refusal`] with every problem found; arguments that are no values.
+pub fn build(file: &str, args: &BuildArgs, catalogs: &Catalogs) -> anyhow::Result<Opened> {
+    let assignments: Vec<Assignment> = args
+        .set
+        .iter()
+        .map(|text| Assignment::parse(text).map_err(|problem| anyhow!("--set `{text}`: {problem}")))
+        .collect::<anyhow::Result<_>>()?;
+    let (description, source) = describe(file, &assignments)?;
+    let build = resolved(&description, &source, args, catalogs)?;
+    Ok(Opened { description, source, build })
+}
+
+/// Resolves a description, with air and start as the arguments have them.
+///
+/// # Errors
+/// [`Refusal`]; arguments that are no values.
+pub fn resolved(description: &Description, source: &Source, args: &BuildArgs, catalogs: &Catalogs) -> anyhow::Result<Build> {
+    let mut build =
+        resolve::resolve(description, catalogs).map_err(|problems| Refusal::new(source.clone(), problems))?;
+    if let Some(text) = &args.air {
+        build = build.in_air(value::<Celsius>("--air", text)?);
+    }
+    if let Some(text) = &args.start {
+        let charge = value::<Fraction>("--start", text)?;
+        if !(0.0..=1.0).contains(&charge.0) {
+            return Err(anyhow!("--start `{text}`: a charge lies between 0 % and 100 %"));
+        }
+        build = build.starting_at(charge);
+    }
+    Ok(build)
+}
+
+fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Description, Source)> {
+    if file != "-" {
+        return Ok(read::read_file(Path::new(file), assignments)?);
+    }
+    let mut bytes = Vec::new();
+    let most = ampledger::problem::text::MOST_BYTES + 1;
+    std::io::stdin().lock().take(most).read_to_end(&mut bytes).context("standard input cannot be read")?;
+    Ok(read::read_set("standard input", &bytes, assignments)?)
+}
+
+/// A quantity given as an argument.
+///
+/// # Errors
+/// It is none.
+pub fn value<Q: ampledger::quantity::unit::Unit>(name: &str, text: &str) -> anyhow::Result<Q> {
+    parse::<Q>(text).map(|measured| measured.value).map_err(|problem| anyhow!("{name} `{text}`: {problem}"))
+}

@@ -1,0 +1,43 @@
+//! From arguments to exit code. Each command reads its input, calls the library, lays the answer
+//! out, and writes it.
+
+pub mod args;
+mod check;
+mod curve;
+mod input;
+mod output;
+
+use ampledger::problem::Refusal;
+use args::{Arguments, Command};
+
+/// Exit code: it keeps up, or nothing was to be judged.
+pub const KEEPS_UP: u8 = 0;
+/// Exit code: it does not keep up.
+pub const DOES_NOT: u8 = 1;
+/// Exit code: the input or the call is wrong, or there is no answer.
+pub const WRONG: u8 = 2;
+
+/// Runs the command.
+///
+/// # Errors
+/// Anything that leaves no answer: [`Refusal`] of an input file, a file that cannot be written.
+pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
+    let common = &arguments.common;
+    match &arguments.command {
+        Command::Check(check) => check::run(check, common),
+        Command::Curve(curve) => curve::run(curve, common),
+    }
+}
+
+/// Tells of a problem on standard error; the exit code it calls for.
+pub fn told(problem: &anyhow::Error, arguments: &Arguments) -> u8 {
+    if output::is_broken_pipe(problem) {
+        return KEEPS_UP;
+    }
+    let colour = arguments.common.colours(&std::io::stderr());
+    match problem.downcast_ref::<Refusal>() {
+        Some(refusal) => output::complain(refusal.render(colour).trim_end()),
+        None => output::complain(&format!("error: {problem:#}")),
+    }
+    WRONG
+}
