@@ -9,7 +9,11 @@ fn main() -> ExitCode {
     let arguments = match cli::args::Arguments::try_parse() {
         Ok(arguments) => arguments,
         Err(problem) => {
-            let code = if problem.use_stderr() { cli::WRONG } else { cli::KEEPS_UP };
+            let code = if problem.use_stderr() {
+                cli::WRONG
+            } else {
+                cli::KEEPS_UP
+            };
             // A broken pipe while printing help is no error.
             let _ = problem.print();
             return ExitCode::from(code);

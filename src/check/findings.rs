@@ -61,11 +61,11 @@ pub fn findings(seen: &Seen<'_>) -> Vec<Finding> {
     all
 }
 
-/// The charge a settled build works at: where it settles, or full.
+/// The charge the engine is next started from: where it settles, or what the first shift and the
+/// parking after it leave.
 fn working_charge(seen: &Seen<'_>) -> Charge {
-    seen.ruling
-        .settles
-        .map_or(Charge::FULL, |(charge, _)| charge)
+    let left = seen.shift.legs.last().map_or(Charge::FULL, |leg| leg.after);
+    seen.ruling.settles.map_or(left, |(charge, _)| charge)
 }
 
 /// The highest bus volts of each running state: battery full, all that cycles switched off.

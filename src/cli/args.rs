@@ -59,7 +59,9 @@ impl Common {
         match self.color {
             Colour::Always => true,
             Colour::Never => false,
-            Colour::Auto => stream.is_terminal() && std::env::var_os("NO_COLOR").is_none_or(|v| v.is_empty()),
+            Colour::Auto => {
+                stream.is_terminal() && std::env::var_os("NO_COLOR").is_none_or(|v| v.is_empty())
+            }
         }
     }
 }
@@ -95,8 +97,6 @@ pub enum Colour {
 pub enum Command {
     /// Does the charging system keep up? The verdict, with its working
     Check(CheckArgs),
-    /// Winding output against rpm
-    Curve(CurveArgs),
 }
 
 /// Which build, and what is changed in it.
@@ -137,21 +137,4 @@ pub struct CheckArgs {
     /// Date to print on the page, as you write it
     #[arg(long, value_name = "DATE")]
     pub date: Option<String>,
-}
-
-/// `curve`.
-#[derive(Args, Debug)]
-pub struct CurveArgs {
-    /// Build file; `-` is standard input
-    #[arg(value_name = "BUILD")]
-    pub file: String,
-    /// Changes to the build.
-    #[command(flatten)]
-    pub build: BuildArgs,
-    /// Engine speeds, `1800,2400,3600`
-    #[arg(long, value_name = "LIST", value_delimiter = ',')]
-    pub rpm: Vec<String>,
-    /// Bus volts, `12.6,14.4`
-    #[arg(long, value_name = "LIST", value_delimiter = ',')]
-    pub volts: Vec<String>,
 }

@@ -6,9 +6,9 @@ use super::{DOES_NOT, KEEPS_UP, output};
 use ampledger::catalog::Catalogs;
 use ampledger::check::answer::{Check, Verdict};
 use ampledger::check::{Checked, Wanted, check};
+use ampledger::report::Report;
 use ampledger::resolve;
 use ampledger::view;
-use ampledger::report::Report;
 use anyhow::{Context, bail};
 use serde::Serialize;
 
@@ -29,10 +29,9 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
     }
     let catalogs = input::catalogs(common)?;
     let opened = input::build(&args.builds[0], &args.build, &catalogs)?;
-    if let Some(state) = &args.why {
-        return super::why::run(&opened, state, common);
-    }
-    let wanted = Wanted { trace: args.trace.is_some() || common.format == Format::Html };
+    let wanted = Wanted {
+        trace: args.trace.is_some() || common.format == Format::Html,
+    };
     let before = answer(&opened, wanted)?;
     let options = |trace| view::Options {
         page: common.format == Format::Html,
@@ -43,12 +42,19 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
     let (last, verdict) = match &args.with {
         None => {
             let verdict = before.check.verdict;
-            output::write(common, || view::check(&before.check, &options(&before.trace)), &before.check)?;
+            output::write(
+                common,
+                || view::check(&before.check, &options(&before.trace)),
+                &before.check,
+            )?;
             (before, verdict)
         }
         Some(kit) => {
             let after = answer(&with_kit(&opened, kit, args, &catalogs)?, wanted)?;
-            let both = Compared { before: &before.check, after: &after.check };
+            let both = Compared {
+                before: &before.check,
+                after: &after.check,
+            };
             let report = || view::compare(&before.check, &after.check, &options(&after.trace));
             output::write(common, report, &both)?;
             let verdict = after.check.verdict;
@@ -63,7 +69,11 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
 
 /// The exit code of a verdict.
 pub fn code(verdict: Verdict) -> u8 {
-    if verdict == Verdict::KeepsUp { KEEPS_UP } else { DOES_NOT }
+    if verdict == Verdict::KeepsUp {
+        KEEPS_UP
+    } else {
+        DOES_NOT
+    }
 }
 
 fn answer(opened: &Opened, wanted: Wanted) -> anyhow::Result<Checked> {
@@ -74,11 +84,20 @@ fn answer(opened: &Opened, wanted: Wanted) -> anyhow::Result<Checked> {
 ///
 /// # Errors
 /// No such kit; the kit does not fit the build.
-fn with_kit(opened: &Opened, kit: &str, args: &CheckArgs, catalogs: &Catalogs) -> anyhow::Result<Opened> {
+fn with_kit(
+    opened: &Opened,
+    kit: &str,
+    args: &CheckArgs,
+    catalogs: &Catalogs,
+) -> anyhow::Result<Opened> {
     let kit = resolve::find_kit(catalogs, kit)?;
     let description = resolve::with_kit(&opened.description, &kit);
     let build = input::resolved(&description, &opened.source, &args.build, catalogs)?;
-    Ok(Opened { description, source: opened.source.clone(), build })
+    Ok(Opened {
+        description,
+        source: opened.source.clone(),
+        build,
+    })
 }
 
 /// Several builds: each answer after the other; JSON as a list.
@@ -90,26 +109,43 @@ fn several(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
     let mut all = Vec::new();
     for file in &args.builds {
         let opened = input::build(file, &args.build, &catalogs)?;
-        all.push(answer(&opened, Wanted { trace: common.format == Format::Html })?);
+        all.push(answer(
+            &opened,
+            Wanted {
+                trace: common.format == Format::Html,
+            },
+        )?);
     }
     let checks: Vec<&Check> = all.iter().map(|one| &one.check).collect();
     let report = || {
         let mut whole = Report::new("Load budgets");
         for one in &all {
-            let options = view::Options { page: common.format == Format::Html, trace: &one.trace, ..Default::default() };
+            let options = view::Options {
+                page: common.format == Format::Html,
+                trace: &one.trace,
+                ..Default::default()
+            };
             whole = whole.append(view::check(&one.check, &options));
         }
         whole
     };
     output::write(common, report, &checks)?;
-    Ok(checks.iter().map(|c| code(c.verdict)).max().unwrap_or(KEEPS_UP))
+    Ok(checks
+        .iter()
+        .map(|c| code(c.verdict))
+        .max()
+        .unwrap_or(KEEPS_UP))
 }
 
 fn write_trace(path: &std::path::Path, checked: &Checked, force: bool) -> anyhow::Result<()> {
     let mut writer = csv::Writer::from_writer(Vec::new());
     for row in &checked.trace {
-        writer.serialize(row).context("the trace cannot be written as CSV")?;
+        writer
+            .serialize(row)
+            .context("the trace cannot be written as CSV")?;
     }
-    let bytes = writer.into_inner().context("the trace cannot be written as CSV")?;
+    let bytes = writer
+        .into_inner()
+        .context("the trace cannot be written as CSV")?;
     output::whole(path, &bytes, force)
 }

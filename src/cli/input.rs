@@ -4,7 +4,7 @@ use super::args::{BuildArgs, Common};
 use ampledger::build::Build;
 use ampledger::catalog::Catalogs;
 use ampledger::description::set::Assignment;
-use ampledger::description::{Description, read};
+use ampledger::description::{Description, read_file, read_set};
 use ampledger::problem::{Refusal, Source};
 use ampledger::quantity::parse::parse;
 use ampledger::quantity::{Celsius, Fraction};
@@ -46,23 +46,34 @@ pub fn build(file: &str, args: &BuildArgs, catalogs: &Catalogs) -> anyhow::Resul
         .collect::<anyhow::Result<_>>()?;
     let (description, source) = describe(file, &assignments)?;
     let build = resolved(&description, &source, args, catalogs)?;
-    Ok(Opened { description, source, build })
+    Ok(Opened {
+        description,
+        source,
+        build,
+    })
 }
 
 /// Resolves a description, with air and start as the arguments have them.
 ///
 /// # Errors
 /// [`Refusal`]; arguments that are no values.
-pub fn resolved(description: &Description, source: &Source, args: &BuildArgs, catalogs: &Catalogs) -> anyhow::Result<Build> {
-    let mut build =
-        resolve::resolve(description, catalogs).map_err(|problems| Refusal::new(source.clone(), problems))?;
+pub fn resolved(
+    description: &Description,
+    source: &Source,
+    args: &BuildArgs,
+    catalogs: &Catalogs,
+) -> anyhow::Result<Build> {
+    let mut build = resolve::resolve(description, catalogs)
+        .map_err(|problems| Refusal::new(source.clone(), problems))?;
     if let Some(text) = &args.air {
         build = build.in_air(value::<Celsius>("--air", text)?);
     }
     if let Some(text) = &args.start {
         let charge = value::<Fraction>("--start", text)?;
         if !(0.0..=1.0).contains(&charge.0) {
-            return Err(anyhow!("--start `{text}`: a charge lies between 0 % and 100 %"));
+            return Err(anyhow!(
+                "--start `{text}`: a charge lies between 0 % and 100 %"
+            ));
         }
         build = build.starting_at(charge);
     }
@@ -71,12 +82,16 @@ pub fn resolved(description: &Description, source: &Source, args: &BuildArgs, ca
 
 fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Description, Source)> {
     if file != "-" {
-        return Ok(read::read_file(Path::new(file), assignments)?);
+        return Ok(read_file(Path::new(file), assignments)?);
     }
     let mut bytes = Vec::new();
     let most = ampledger::problem::text::MOST_BYTES + 1;
-    std::io::stdin().lock().take(most).read_to_end(&mut bytes).context("standard input cannot be read")?;
-    Ok(read::read_set("standard input", &bytes, assignments)?)
+    std::io::stdin()
+        .lock()
+        .take(most)
+        .read_to_end(&mut bytes)
+        .context("standard input cannot be read")?;
+    Ok(read_set("standard input", &bytes, assignments)?)
 }
 
 /// A quantity given as an argument.
@@ -84,5 +99,7 @@ fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Descripti
 /// # Errors
 /// It is none.
 pub fn value<Q: ampledger::quantity::unit::Unit>(name: &str, text: &str) -> anyhow::Result<Q> {
-    parse::<Q>(text).map(|measured| measured.value).map_err(|problem| anyhow!("{name} `{text}`: {problem}"))
+    parse::<Q>(text)
+        .map(|measured| measured.value)
+        .map_err(|problem| anyhow!("{name} `{text}`: {problem}"))
 }

@@ -3,7 +3,6 @@
 
 pub mod args;
 mod check;
-mod curve;
 mod input;
 mod output;
 
@@ -25,7 +24,6 @@ pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
     let common = &arguments.common;
     match &arguments.command {
         Command::Check(check) => check::run(check, common),
-        Command::Curve(curve) => curve::run(curve, common),
     }
 }
 

@@ -1,7 +1,7 @@
 //! Bytes out: standard output, or a file written whole or not at all.
 
 use super::args::{Common, Format};
-use ampledger::report::{self, Report, csv, html, markdown, text};
+use ampledger::report::{Report, csv, html, markdown, text};
 use anyhow::Context;
 use std::io::{ErrorKind, IsTerminal, Write};
 use std::path::Path;
@@ -16,7 +16,11 @@ const WIDEST: u16 = 120;
 ///
 /// # Errors
 /// The file exists, or cannot be written.
-pub fn write(common: &Common, report: impl FnOnce() -> Report, answer: &impl serde::Serialize) -> anyhow::Result<()> {
+pub fn write(
+    common: &Common,
+    report: impl FnOnce() -> Report,
+    answer: &impl serde::Serialize,
+) -> anyhow::Result<()> {
     let bytes = match common.format {
         Format::Json => json(answer)?,
         Format::Table => text::render(&report(), &style(common)),
@@ -32,7 +36,8 @@ pub fn write(common: &Common, report: impl FnOnce() -> Report, answer: &impl ser
 /// # Errors
 /// A number that JSON cannot hold.
 pub fn json(answer: &impl serde::Serialize) -> anyhow::Result<String> {
-    let mut text = serde_json::to_string_pretty(answer).context("the answer cannot be written as JSON")?;
+    let mut text =
+        serde_json::to_string_pretty(answer).context("the answer cannot be written as JSON")?;
     text.push('\n');
     Ok(text)
 }
@@ -46,7 +51,9 @@ pub fn put(common: &Common, text: &str) -> anyhow::Result<()> {
         Some(path) => whole(path, text.as_bytes(), common.force),
         None => {
             let mut out = std::io::stdout().lock();
-            out.write_all(text.as_bytes()).and_then(|()| out.flush()).context("standard output cannot be written")
+            out.write_all(text.as_bytes())
+                .and_then(|()| out.flush())
+                .context("standard output cannot be written")
         }
     }
 }
@@ -61,7 +68,9 @@ pub fn whole(path: &Path, bytes: &[u8], force: bool) -> anyhow::Result<()> {
         anyhow::bail!("`{shown}` is a folder: name a file to write");
     }
     if !force && path.symlink_metadata().is_ok() {
-        anyhow::bail!("`{shown}` exists and is kept: write elsewhere, or give --force to replace it");
+        anyhow::bail!(
+            "`{shown}` exists and is kept: write elsewhere, or give --force to replace it"
+        );
     }
     let folder = match path.parent() {
         Some(folder) if !folder.as_os_str().is_empty() => folder,
@@ -72,7 +81,11 @@ pub fn whole(path: &Path, bytes: &[u8], force: bool) -> anyhow::Result<()> {
     beside.write_all(bytes).with_context(failed)?;
     beside.as_file().sync_all().with_context(failed)?;
     plain_permissions(&beside).with_context(failed)?;
-    let placed = if force { beside.persist(path).map(drop) } else { beside.persist_noclobber(path).map(drop) };
+    let placed = if force {
+        beside.persist(path).map(drop)
+    } else {
+        beside.persist_noclobber(path).map(drop)
+    };
     placed.map_err(|e| e.error).with_context(failed)
 }
 
@@ -80,7 +93,8 @@ pub fn whole(path: &Path, bytes: &[u8], force: bool) -> anyhow::Result<()> {
 #[cfg(unix)]
 fn plain_permissions(file: &tempfile::NamedTempFile) -> std::io::Result<()> {
     use std::os::unix::fs::PermissionsExt;
-    file.as_file().set_permissions(std::fs::Permissions::from_mode(0o644))
+    file.as_file()
+        .set_permissions(std::fs::Permissions::from_mode(0o644))
 }
 
 #[cfg(not(unix))]
@@ -92,8 +106,14 @@ fn plain_permissions(_: &tempfile::NamedTempFile) -> std::io::Result<()> {
 pub fn style(common: &Common) -> text::Style {
     let stdout = std::io::stdout();
     let to_terminal = common.output.is_none() && stdout.is_terminal();
-    let terminal = terminal_size::terminal_size().map(|(width, _)| width.0).filter(|w| *w > 0);
-    let fallback = if to_terminal { terminal.unwrap_or(PIPED_WIDTH).clamp(40, WIDEST) } else { PIPED_WIDTH };
+    let terminal = terminal_size::terminal_size()
+        .map(|(width, _)| width.0)
+        .filter(|w| *w > 0);
+    let fallback = if to_terminal {
+        terminal.unwrap_or(PIPED_WIDTH).clamp(40, WIDEST)
+    } else {
+        PIPED_WIDTH
+    };
     text::Style {
         width: usize::from(common.width.unwrap_or(fallback)),
         colour: common.output.is_none() && common.colours(&stdout),
@@ -104,7 +124,9 @@ pub fn style(common: &Common) -> text::Style {
 
 /// Whether the locale names UTF-8; one that says nothing is taken to.
 fn speaks_utf8() -> bool {
-    let named = ["LC_ALL", "LC_CTYPE", "LANG"].iter().find_map(|key| std::env::var(key).ok().filter(|v| !v.is_empty()));
+    let named = ["LC_ALL", "LC_CTYPE", "LANG"]
+        .iter()
+        .find_map(|key| std::env::var(key).ok().filter(|v| !v.is_empty()));
     named.is_none_or(|locale| {
         let locale = locale.to_ascii_lowercase();
         locale.contains("utf-8") || locale.contains("utf8")
@@ -119,8 +141,9 @@ pub fn complain(text: &str) {
 
 /// Whether the reader of standard output went away.
 pub fn is_broken_pipe(problem: &anyhow::Error) -> bool {
-    problem.chain().any(|cause| cause.downcast_ref::<std::io::Error>().is_some_and(|e| e.kind() == ErrorKind::BrokenPipe))
+    problem.chain().any(|cause| {
+        cause
+            .downcast_ref::<std::io::Error>()
+            .is_some_and(|e| e.kind() == ErrorKind::BrokenPipe)
+    })
 }
-
-/// The report module's own name, for callers that build one.
-pub use report::Block;
