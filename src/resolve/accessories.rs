@@ -37,17 +37,21 @@ pub(super) struct Surroundings<'a> {
 /// The accessories of a build, in the order written; none where a fault leaves nothing to go by.
 pub(super) fn accessories(
     context: &mut Context,
-    layers: &[Layers<AccessoryText>],
+    texts: &[AccessoryText],
     around: &Surroundings,
 ) -> Option<Vec<Accessory>> {
-    let names = names(context, layers);
+    let layers: Vec<Layers<AccessoryText>> = texts
+        .iter()
+        .map(|a| super::parts::layers(context, a, &a.path))
+        .collect();
+    let names = names(context, &layers);
     let mut all = Vec::with_capacity(layers.len());
     for (layers, name) in layers.iter().zip(names) {
         all.push(accessory(context, layers, name, around));
     }
+    context.tell_groups(usize::MAX);
     let mut all: Vec<Accessory> = all.into_iter().collect::<Option<_>>()?;
-    let texts: Vec<&AccessoryText> = layers.iter().map(|l| l.own).collect();
-    super::groups::link(context, &texts, &mut all, around.speeds);
+    super::groups::link(context, texts, &mut all, around.speeds);
     Some(all)
 }
 

@@ -22,18 +22,7 @@ pub(super) fn battery(
         return None;
     }
     let path = |key: &str| format!("battery.{key}");
-    let chemistry = layers.value(|b| b.chemistry.as_ref()).unwrap_or_else(|| {
-        context.assume("type of battery", "flooded", PRACTICE);
-        Chemistry::Flooded
-    });
-    let cells = layers.value(|b| b.cells.as_ref()).unwrap_or_else(|| {
-        context.assume(
-            "cells of the battery",
-            CELLS.to_string(),
-            "a 12 V battery, the usual one",
-        );
-        CELLS
-    });
+    let (chemistry, cells) = make(context, layers);
     let reserve_capacity = reserve_capacity(layers);
     let cold_cranking = layers.figure(&path("cold_cranking"), |b| b.cold_cranking.as_ref());
     let capacity = capacity(
@@ -57,14 +46,7 @@ pub(super) fn battery(
         ..Label::new(chemistry, capacity.value)
     };
     tell_notes(context, &label);
-    let reserve = layers.figure(&path("reserve"), |b| b.reserve.as_ref());
-    let reserve = match reserve {
-        None if !has_starter => {
-            let words = ("charge never to go below", format::text(RESERVE), PRACTICE);
-            Some(context.figure_or(None, path("reserve"), RESERVE, words))
-        }
-        found => found,
-    };
+    let reserve = reserve(context, layers, has_starter);
     Some(BatterySpec {
         label,
         capacity,
@@ -73,6 +55,36 @@ pub(super) fn battery(
         price: layers.value(|b| b.price.as_ref()),
         part: layers.part(),
     })
+}
+
+/// Type and cells, assumed where open.
+fn make(context: &mut Context, layers: &Layers<BatteryText>) -> (Chemistry, u32) {
+    let chemistry = layers.value(|b| b.chemistry.as_ref());
+    let chemistry = chemistry.unwrap_or_else(|| {
+        context.assume("type of battery", "flooded", PRACTICE);
+        Chemistry::Flooded
+    });
+    let cells = layers.value(|b| b.cells.as_ref()).unwrap_or_else(|| {
+        let origin = "a 12 V battery, the usual one";
+        context.assume("cells of the battery", CELLS.to_string(), origin);
+        CELLS
+    });
+    (chemistry, cells)
+}
+
+/// Charge never to go below: stated, or without a starter assumed; else the next start sets it.
+fn reserve(
+    context: &mut Context,
+    layers: &Layers<BatteryText>,
+    has_starter: bool,
+) -> Option<Figure<Fraction>> {
+    let path = "battery.reserve";
+    let stated = layers.figure(path, |b| b.reserve.as_ref());
+    if stated.is_some() || has_starter {
+        return stated;
+    }
+    let words = ("charge never to go below", format::text(RESERVE), PRACTICE);
+    Some(context.figure_or(None, path.to_owned(), RESERVE, words))
 }
 
 /// Reserve minutes. A capacity beside `part:` displaces the minutes of the part, which belong to another size.

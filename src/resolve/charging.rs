@@ -1,25 +1,18 @@
-//! One entry of `charging:`: a winding or an alternator, with its rectifier and regulator.
+//! One entry of `charging:`: a winding with its rectifier and regulator, or an alternator.
 
 use super::Fault;
 use super::accessories::Circuit;
-use super::context::{Context, Layers, PRACTICE, of_system};
+use super::alternator::belt;
+use super::context::{Context, Layers, PRACTICE};
 use super::winding::winding;
-use crate::build::{Alternator, Figure, Regulator, Source, SourceKind};
+use crate::build::{Regulator, Source, SourceKind};
 use crate::description::charging::{RectifierKind, RegulatorKind};
-use crate::description::{AlternatorText, ChargingText, WindingText, Written};
-use crate::quantity::{Celsius, Volts, VoltsPerKelvin, format};
-use crate::source::{OutputCurve, Rectifier};
+use crate::description::{ChargingText, WindingText};
+use crate::quantity::{Volts, VoltsPerKelvin, format};
+use crate::source::Rectifier;
 
 /// Drop of one diode. Common practice, no source.
 const DROP: Volts = Volts(0.9);
-/// Setpoint of an alternator's regulator on a 12 V system. Common practice, no source.
-const ALTERNATOR_HOLDS: Volts = Volts(14.4);
-/// Conditions of an alternator's output curve, of a 12 V system. ISO 8854, from memory.
-const CURVE_AT: Volts = Volts(13.5);
-const CURVE_TESTED: Celsius = Celsius(23.0);
-/// Temperature of an alternator at work. Common practice, no source.
-const ALTERNATOR_WORKING: Celsius = Celsius(90.0);
-
 /// What a winding feeds that says nothing else.
 const BATTERY: &str = "battery";
 
@@ -180,8 +173,8 @@ fn rectifier(
     }
     let drop = layers.value(|t| t.rectifier.as_ref().and_then(|r| r.drop.as_ref()));
     let drop = drop.unwrap_or_else(|| {
-        let what = format!("forward drop of one diode, {}", place.name);
-        context.assume(what, format::text(DROP), PRACTICE);
+        let what = "forward drop of one diode";
+        context.assume_for(what, format::text(DROP), PRACTICE, place.name);
         DROP
     });
     Some(Some(match kind {
@@ -191,7 +184,7 @@ fn rectifier(
 }
 
 /// The regulator, its open figures assumed.
-fn regulator(
+pub(super) fn regulator(
     context: &mut Context,
     layers: &Layers<ChargingText>,
     place: Place,
@@ -210,17 +203,14 @@ fn regulator(
     };
     let kind = layers.value(|t| t.regulator.as_ref().and_then(|r| r.kind.as_ref()));
     let kind = kind.unwrap_or_else(|| {
-        context.assume(
-            format!("kind of regulator, {}", place.name),
-            "series",
-            PRACTICE,
-        );
+        context.assume_for("kind of regulator", "series", PRACTICE, place.name);
         RegulatorKind::Series
     });
     let per_degree = layers.value(|t| t.regulator.as_ref().and_then(|r| r.per_degree.as_ref()));
     let per_degree = per_degree.unwrap_or_else(|| {
-        let what = format!("change of the setpoint with temperature, {}", place.name);
-        context.assume(what, "0 mV/K", "a regulator that is not compensated");
+        let what = "change of the setpoint with temperature";
+        let origin = "a regulator that is not compensated";
+        context.assume_for(what, "0 mV/K", origin, place.name);
         VoltsPerKelvin::ZERO
     });
     Some(Regulator {
@@ -228,109 +218,4 @@ fn regulator(
         kind,
         per_degree,
     })
-}
-
-/// A belt-driven alternator. It holds a setpoint whether or not one is written.
-fn belt(context: &mut Context, layers: &Layers<ChargingText>, place: Place) -> Option<Source> {
-    let curve = layers.get(|t| {
-        let points = t.alternator.as_ref().map(|a| &a.curve)?;
-        (!points.is_empty()).then_some(points)
-    });
-    let Some((points, _)) = curve else {
-        context.fault(
-            format!("{}.alternator", place.path),
-            Fault::Missing { keys: "`curve`" },
-        );
-        return None;
-    };
-    let curve: Vec<_> = points.iter().map(|p| (p.value.1, p.value.0)).collect();
-    let curve = match OutputCurve::new(curve) {
-        Ok(curve) => curve,
-        Err(error) => {
-            context.fault(
-                format!("{}.alternator.curve", place.path),
-                Fault::Curve(error),
-            );
-            return None;
-        }
-    };
-    if !place.has_battery {
-        context.fault(place.path, Fault::FeedsNoBattery);
-    }
-    let path = |key: &str| format!("{}.alternator.{key}", place.path);
-    let ratio = layers.figure(&path("ratio"), |t| alternator(t, |a| a.ratio.as_ref()));
-    let Some(ratio) = ratio else {
-        let keys = "`ratio` (alternator turns for one of the engine)";
-        context.fault(
-            format!("{}.alternator", place.path),
-            Fault::Missing { keys },
-        );
-        return None;
-    };
-    let iso = "the conditions of ISO 8854, from memory";
-    let at = layers.figure(&path("at"), |t| alternator(t, |a| a.at.as_ref()));
-    let usual = of_system(CURVE_AT, place.cells);
-    let words = ("volts of the alternator's curve", format::text(usual), iso);
-    let at = context.figure_or(at, path("at"), usual, words);
-    let tested = layers
-        .value(|t| alternator(t, |a| a.tested.as_ref()))
-        .unwrap_or_else(|| {
-            context.assume(
-                "temperature of the alternator's curve",
-                format::temperature(CURVE_TESTED),
-                iso,
-            );
-            CURVE_TESTED
-        });
-    let working = layers
-        .value(|t| alternator(t, |a| a.working.as_ref()))
-        .unwrap_or_else(|| {
-            let value = format::temperature(ALTERNATOR_WORKING);
-            context.assume("alternator's temperature at work", value, PRACTICE);
-            ALTERNATOR_WORKING
-        });
-    let kind = Alternator {
-        curve,
-        ratio,
-        at,
-        hotter: working.above(tested),
-    };
-    let regulator = match layers.get(|t| t.regulator.as_ref()) {
-        Some(_) => regulator(context, layers, place),
-        None => Some(alternator_regulator(context, place)),
-    };
-    Some(Source {
-        name: place.name.to_owned(),
-        path: place.path.to_owned(),
-        part: layers.part(),
-        kind: SourceKind::Alternator(Box::new(kind)),
-        circuit: None,
-        braking: false,
-        regulator,
-        price: layers.value(|t| t.price.as_ref()),
-    })
-}
-
-fn alternator<'t, V>(
-    text: &'t ChargingText,
-    key: impl Fn(&'t AlternatorText) -> Option<&'t Written<V>>,
-) -> Option<&'t Written<V>> {
-    text.alternator.as_ref().and_then(key)
-}
-
-/// The regulator that an alternator has without saying so.
-fn alternator_regulator(context: &mut Context, place: Place) -> Regulator {
-    let path = format!("{}.regulator.holds", place.path);
-    let holds = of_system(ALTERNATOR_HOLDS, place.cells);
-    let words = (
-        "setpoint of the alternator's regulator",
-        format::text(holds),
-        PRACTICE,
-    );
-    let holds: Figure<Volts> = context.figure_or(None, path, holds, words);
-    Regulator {
-        holds,
-        kind: RegulatorKind::Series,
-        per_degree: VoltsPerKelvin::ZERO,
-    }
 }

@@ -75,9 +75,13 @@ impl<'a> Context<'a> {
         }
     }
 
-    /// Lists what was assumed of accessories, one row for all that share a value.
-    pub(super) fn tell_groups(&mut self) {
+    /// Lists what was assumed of several, one row for all that share a value; without names where there is but one.
+    pub(super) fn tell_groups(&mut self, of: usize) {
         for (row, names) in std::mem::take(&mut self.groups) {
+            if of == 1 {
+                self.assumed.push(row);
+                continue;
+            }
             let whose = match names.as_slice() {
                 [first, second, third, rest @ ..] if !rest.is_empty() => {
                     format!("{first}, {second}, {third} and {} more", rest.len())
@@ -91,7 +95,7 @@ impl<'a> Context<'a> {
         }
     }
 
-    /// The figure where one was found, else the assumed value, recorded.
+    /// The figure where one was found, else the assumed value, recorded as (what, value in words, ground).
     pub(super) fn figure_or<V>(
         &mut self,
         found: Option<Figure<V>>,
@@ -102,13 +106,34 @@ impl<'a> Context<'a> {
         found.unwrap_or_else(|| {
             let (what, value, origin) = words;
             self.assume(what, value, origin);
-            Figure {
-                value: default,
-                origin: Origin::Assumed(origin.to_owned()),
-                tolerance: None,
-                path,
-            }
+            assumed(default, path, origin)
         })
+    }
+
+    /// The same of one of several.
+    pub(super) fn figure_or_for<V>(
+        &mut self,
+        found: Option<Figure<V>>,
+        path: String,
+        default: V,
+        words: (&str, String, &str),
+        name: &str,
+    ) -> Figure<V> {
+        found.unwrap_or_else(|| {
+            let (what, value, origin) = words;
+            self.assume_for(what, value, origin, name);
+            assumed(default, path, origin)
+        })
+    }
+}
+
+/// A figure that was assumed on a ground.
+fn assumed<V>(value: V, path: String, origin: &str) -> Figure<V> {
+    Figure {
+        value,
+        origin: Origin::Assumed(origin.to_owned()),
+        tolerance: None,
+        path,
     }
 }
 

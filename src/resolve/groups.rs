@@ -15,7 +15,7 @@ const ROUNDING: f64 = 1e-9;
 /// Fills in the groups of resolved accessories from their entries (as many, in the same order).
 pub(super) fn link(
     context: &mut Context,
-    texts: &[&AccessoryText],
+    texts: &[AccessoryText],
     accessories: &mut [Accessory],
     speeds: &[Speed],
 ) {
@@ -44,7 +44,7 @@ pub(super) fn link(
 /// The number of each accessory's group: that of its first member.
 fn groups(
     context: &mut Context,
-    texts: &[&AccessoryText],
+    texts: &[AccessoryText],
     names: &[String],
     list: impl Fn(&AccessoryText) -> &Vec<Written<String>>,
 ) -> Vec<usize> {

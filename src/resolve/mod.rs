@@ -6,6 +6,7 @@
 //! the path at which it stands.
 
 mod accessories;
+mod alternator;
 mod battery;
 mod charging;
 mod context;
@@ -60,53 +61,32 @@ fn problems(faults: Vec<(String, Fault)>) -> Problems {
 
 /// The build, or none where a fault leaves nothing to go by; the faults are in the context.
 fn build(context: &mut Context, description: &Description) -> Option<Build> {
-    let air = description
-        .air
-        .as_ref()
-        .map(|a| figure(a, Origin::Stated, "air"));
-    let words = ("air temperature", format::temperature(AIR), PRACTICE);
-    let air = context.figure_or(air, "air".to_owned(), AIR, words);
+    let air = air(context, description);
     let speeds = engine::speeds(context, &description.engine);
-    let starter_layers = description
-        .engine
-        .starter
-        .as_ref()
-        .map(|s| parts::layers(context, s, "engine.starter"));
-    let starter = starter_layers
-        .as_ref()
-        .and_then(|s| engine::starter(context, s));
-    let battery_layers = description
-        .battery
-        .as_ref()
-        .map(|b| parts::layers(context, b, "battery"));
-    let cells = cells(battery_layers.as_ref());
-    let has_battery = description.battery.is_some();
+    let starter = description.engine.starter.as_ref();
+    let starter = starter.map(|s| parts::layers(context, s, "engine.starter"));
+    let has_starter = starter.is_some();
+    let starter = starter.and_then(|s| engine::starter(context, &s));
+    let battery = description.battery.as_ref();
+    let battery = battery.map(|b| parts::layers(context, b, "battery"));
+    let cells = cells(battery.as_ref());
     let (sources, circuits) = sources(context, description, cells);
-    let battery: Option<Option<BatterySpec>> = match &battery_layers {
-        Some(layers) => battery::battery(context, layers, starter_layers.is_some()).map(Some),
+    let battery: Option<Option<BatterySpec>> = match &battery {
+        Some(layers) => battery::battery(context, layers, has_starter).map(Some),
         None => Some(None),
     };
-    let accessory_layers: Vec<_> = description
-        .accessories
-        .iter()
-        .map(|a| parts::layers(context, a, &a.path))
-        .collect();
-    let wiring = wiring::usual(context, &description.wiring);
     let around = Surroundings {
         speeds: &speeds,
         circuits: &circuits,
         cells,
-        has_battery,
-        wiring,
+        has_battery: description.battery.is_some(),
+        wiring: wiring::usual(context, &description.wiring),
     };
-    let accessories = accessories::accessories(context, &accessory_layers, &around);
-    context.tell_groups();
+    let accessories = accessories::accessories(context, &description.accessories, &around);
     let shift = shift::steps(context, description, &speeds, starter.as_ref());
     let parked = shift::parked(context, description);
-    let charger = description
-        .charger
-        .as_ref()
-        .map(|c| shift::charger(context, c, cells, &parked));
+    let charger = description.charger.as_ref();
+    let charger = charger.map(|c| shift::charger(context, c, cells, &parked));
     Some(Build {
         name: description.build.value.clone(),
         air,
@@ -125,6 +105,13 @@ fn build(context: &mut Context, description: &Description) -> Option<Build> {
         notes: std::mem::take(&mut context.notes),
         currency: String::new(),
     })
+}
+
+fn air(context: &mut Context, description: &Description) -> Figure<Celsius> {
+    let air = description.air.as_ref();
+    let air = air.map(|a| figure(a, Origin::Stated, "air"));
+    let words = ("air temperature", format::temperature(AIR), PRACTICE);
+    context.figure_or(air, "air".to_owned(), AIR, words)
 }
 
 /// Cells in series of the system: the battery's, or six.
@@ -168,6 +155,7 @@ fn sources(
         };
         sources.push(charging::source(context, layers, place));
     }
+    context.tell_groups(sources.len());
     (sources.into_iter().collect(), circuits)
 }
 

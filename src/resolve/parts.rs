@@ -3,9 +3,9 @@
 use super::Fault;
 use super::context::{Context, Layers, Part};
 use crate::build::Origin;
-use crate::catalog::Kind;
+use crate::catalog::{Catalogs, Kind};
 use crate::description::{AccessoryText, BatteryText, ChargingText, StarterText, Written};
-use crate::problem::Refusal;
+use crate::problem::{Problem, Refusal};
 
 /// An entry of a build file that may name a catalog part.
 pub(super) trait Parted: Sized {
@@ -45,61 +45,58 @@ pub(super) fn layers<'a, T: Parted>(
     path: &str,
 ) -> Layers<'a, T> {
     let mut parts: Vec<Part<T>> = Vec::new();
-    let before = context.faults.len();
-    let at = format!("{path}.part");
+    let mut faults: Vec<Fault> = Vec::new();
     let mut wanted = own.part().map(|p| p.value.clone());
-    while let Some(id) = wanted {
+    while let Some(id) = wanted.take() {
         if parts.iter().any(|p| p.entry.id == id) {
-            let ids = parts
-                .iter()
-                .map(|p| p.entry.id.clone())
-                .chain([id])
-                .collect();
-            context.fault(at, Fault::PartCycle { ids });
+            let followed = parts.iter().map(|p| p.entry.id.clone());
+            let ids = followed.chain([id]).collect();
+            faults.push(Fault::PartCycle { ids });
             break;
         }
-        let Some(entry) = context.catalogs.find(T::KIND, &id) else {
-            let nearest = context.catalogs.nearest(T::KIND, &id);
-            context.fault(
-                at,
-                Fault::UnknownPart {
-                    id,
-                    kind: T::KIND,
-                    nearest,
-                },
-            );
-            break;
-        };
-        match T::read(&id, &entry.body) {
-            Ok(text) => {
-                wanted = text.part().map(|p| p.value.clone());
-                let origin = Origin::Catalog(entry.words());
-                parts.push(Part {
-                    entry,
-                    text,
-                    origin,
-                });
+        match part(context.catalogs, &id) {
+            Ok(part) => {
+                wanted = T::part(&part.text).map(|p| p.value.clone());
+                parts.push(part);
             }
-            Err(refusal) => {
-                for problem in refusal.problems().iter() {
-                    let why = match problem.path.as_str() {
-                        "" => problem.kind.to_string(),
-                        key => format!("`{key}`: {}", problem.kind),
-                    };
-                    let file = entry.origin.to_string();
-                    context.fault(
-                        at.clone(),
-                        Fault::BadPart {
-                            id: id.clone(),
-                            file,
-                            why,
-                        },
-                    );
-                }
-                break;
-            }
+            Err(found) => faults.extend(found),
         }
     }
-    let broken = context.faults.len() > before;
+    let broken = !faults.is_empty();
+    for fault in faults {
+        context.fault(format!("{path}.part"), fault);
+    }
     Layers { own, parts, broken }
+}
+
+/// The part of an id, read; or what is wrong with it.
+fn part<T: Parted>(catalogs: &Catalogs, id: &str) -> Result<Part<T>, Vec<Fault>> {
+    let Some(entry) = catalogs.find(T::KIND, id) else {
+        return Err(vec![Fault::UnknownPart {
+            id: id.to_owned(),
+            kind: T::KIND,
+            nearest: catalogs.nearest(T::KIND, id),
+        }]);
+    };
+    match T::read(id, &entry.body) {
+        Ok(text) => {
+            let origin = Origin::Catalog(entry.words());
+            Ok(Part {
+                entry,
+                text,
+                origin,
+            })
+        }
+        Err(refusal) => {
+            let bad = |problem: &Problem| Fault::BadPart {
+                id: id.to_owned(),
+                file: entry.origin.to_string(),
+                why: match problem.path.as_str() {
+                    "" => problem.kind.to_string(),
+                    key => format!("`{key}`: {}", problem.kind),
+                },
+            };
+            Err(refusal.problems().iter().map(bad).collect())
+        }
+    }
 }

@@ -4,12 +4,10 @@ use super::Fault;
 use super::charging::Place;
 use super::context::{Context, Layers, PRACTICE, by_rule, of_system};
 use crate::build::{Figure, Origin, WindingSource};
-use crate::description::{ChargingText, WindingText, Written};
-use crate::quantity::{
-    Amps, Celsius, Fraction, Henries, Ohms, Rpm, Tolerance, Volts, VoltsPerRpm, format,
-};
+use crate::description::{ChargingText, RatedText, WindingText, Written};
+use crate::quantity::{Amps, Celsius, Fraction, Henries, Ohms, Rpm, Tolerance, Volts, format};
 use crate::source::{
-    Constants, Known, Magnets, Phases, Rating, Rectifier, Working, rectified_dc,
+    Constants, ConstantsError, Known, Magnets, Phases, Rating, Rectifier, Working, rectified_dc,
     typical_open_circuit,
 };
 
@@ -23,11 +21,14 @@ const ASSUMED_RESISTANCE: Fraction = Fraction(0.3);
 /// How far a rating may lie from what a measured inductance gives before it is noted.
 const RATING_OFF: Fraction = Fraction(0.1);
 
-/// Which of the ways to the inductance a winding's figures take.
-enum Way {
-    /// Measured, or of a bench table; with the rating that stands beside it, where one does.
-    Measured(Figure<Henries>, Option<Rating>),
-    Rated(Figure<(Amps, Rpm, Volts)>),
+/// Which way a winding's figures take to its inductance.
+struct Way {
+    /// Measured.
+    inductance: Option<Figure<Henries>>,
+    /// Rated; none beside a measured inductance.
+    rated: Option<Figure<(Amps, Rpm, Volts)>>,
+    /// The rating; beside a measured inductance it only checks it.
+    rating: Option<Rating>,
 }
 
 /// The winding of an entry; none where a fault leaves nothing to go by.
@@ -39,38 +40,22 @@ pub(super) fn winding(
 ) -> Option<WindingSource> {
     let at = format!("{}.winding", place.path);
     let path = |key: &str| format!("{at}.{key}");
-    let Some(poles) = layers.value(|t| key(t, |w| w.poles.as_ref())) else {
-        context.fault(at, Fault::Missing { keys: "`poles`" });
-        return None;
-    };
+    let poles = poles(context, layers, &at)?;
     let phases = phases(context, layers, place);
-    let working = layers.figure(&path("working"), |t| key(t, |w| w.working.as_ref()));
-    let what = format!("temperature at work, {}", place.name);
-    let words = (what.as_str(), format::temperature(WORKING), PRACTICE);
-    let working = context.figure_or(working, path("working"), WORKING, words);
+    let working = working(context, layers, place);
     let magnets = magnets(context, layers, place, working.value);
-    let scale = layers
-        .figure(&path("scale"), |t| key(t, |w| w.scale.as_ref()))
-        .unwrap_or_else(|| by_rule(Fraction::ONE, path("scale")));
+    let scale = layers.figure(&path("scale"), |t| key(t, |w| w.scale.as_ref()));
+    let scale = scale.unwrap_or_else(|| by_rule(Fraction::ONE, path("scale")));
     let way = way(context, layers, place)?;
-    let open_circuit = layers.figure(&path("open_circuit"), |t| {
+    let volts = layers.figure(&path("open_circuit"), |t| {
         key(t, |w| w.open_circuit.as_ref())
     });
-    let resistance = layers.figure(&path("resistance"), |t| key(t, |w| w.resistance.as_ref()));
-    let (inductance, rated, beside) = match way {
-        Way::Measured(inductance, beside) => (Some(inductance), None, beside),
-        Way::Rated(rated) => (None, Some(rated), None),
-    };
-    let rating = rated.as_ref().map(|r| Rating {
-        amps: r.value.0,
-        rpm: r.value.1,
-        bus: r.value.2,
-    });
+    let ohms = layers.figure(&path("resistance"), |t| key(t, |w| w.resistance.as_ref()));
     let known = Known {
-        open_circuit: open_circuit.as_ref().map(|f| per_rpm(f.value)),
-        resistance: resistance.as_ref().map(|f| f.value),
-        inductance: inductance.as_ref().map(|f| f.value),
-        rated: rating,
+        open_circuit: volts.as_ref().map(|f| f.value.0 / f.value.1),
+        resistance: ohms.as_ref().map(|f| f.value),
+        inductance: way.inductance.as_ref().map(|f| f.value),
+        rated: way.rating,
         poles,
         phases,
         rectifier,
@@ -79,26 +64,24 @@ pub(super) fn winding(
             magnets,
         },
     };
-    let found = known
-        .complete()
-        .and_then(|c| Ok((c, c.winding.scaled(scale.value)?)));
-    let (complete, constants) = match found {
-        Ok(found) => found,
-        Err(error) => {
-            context.fault(at, Fault::Winding(error));
-            return None;
-        }
-    };
-    tell_rating(context, place, &complete, rectifier, beside);
-    let rated_rpm = rating.map_or(Rpm(3600.0), |r| r.rpm);
-    let open_circuit = open_circuit
-        .unwrap_or_else(|| assumed_open_circuit(context, place, &complete, rated_rpm, phases));
-    let resistance = resistance.unwrap_or_else(|| assumed_resistance(context, place, &complete));
+    let complete = told(context, &at, known.complete())?;
+    let constants = told(
+        context,
+        &at,
+        complete.winding.scaled(scale.value).map_err(Into::into),
+    )?;
+    if way.inductance.is_some() {
+        tell_rating(context, place, &complete, rectifier, way.rating);
+    }
+    let rpm = way.rating.map_or(Rpm(3600.0), |r| r.rpm);
+    let open_circuit =
+        volts.unwrap_or_else(|| assumed_open_circuit(context, place, &complete, (rpm, phases)));
+    let resistance = ohms.unwrap_or_else(|| assumed_resistance(context, place, &complete));
     Some(WindingSource {
         open_circuit,
         resistance,
-        inductance,
-        rated,
+        inductance: way.inductance,
+        rated: way.rated,
         poles,
         phases: phases.count(),
         working,
@@ -109,6 +92,29 @@ pub(super) fn winding(
     })
 }
 
+fn poles(context: &mut Context, layers: &Layers<ChargingText>, at: &str) -> Option<u32> {
+    let found = layers.value(|t| key(t, |w| w.poles.as_ref()));
+    if found.is_none() {
+        context.fault(at, Fault::Missing { keys: "`poles`" });
+    }
+    found
+}
+
+/// The value; or none, and the fault told.
+fn told<V>(context: &mut Context, at: &str, found: Result<V, ConstantsError>) -> Option<V> {
+    found
+        .map_err(|error| context.fault(at, Fault::Winding(error)))
+        .ok()
+}
+
+fn working(context: &mut Context, layers: &Layers<ChargingText>, place: Place) -> Figure<Celsius> {
+    let path = format!("{}.winding.working", place.path);
+    let found = layers.figure(&path, |t| key(t, |w| w.working.as_ref()));
+    let value = format::temperature(WORKING);
+    let words = ("temperature of the winding at work", value, PRACTICE);
+    context.figure_or_for(found, path, WORKING, words, place.name)
+}
+
 /// A key of the winding.
 fn key<'t, V>(
     text: &'t ChargingText,
@@ -117,16 +123,12 @@ fn key<'t, V>(
     text.winding.as_ref().and_then(key)
 }
 
-fn per_rpm((volts, rpm): (Volts, Rpm)) -> VoltsPerRpm {
-    volts / rpm
-}
-
 fn phases(context: &mut Context, layers: &Layers<ChargingText>, place: Place) -> Phases {
     match layers.value(|t| key(t, |w| w.phases.as_ref())) {
         Some(3) => Phases::Three,
         Some(_) => Phases::One,
         None => {
-            context.assume(format!("phases, {}", place.name), "1", PRACTICE);
+            context.assume_for("phases of the winding", "1", PRACTICE, place.name);
             Phases::One
         }
     }
@@ -143,7 +145,7 @@ fn magnets(
         .value(|t| key(t, |w| w.magnets.as_ref()))
         .unwrap_or_else(|| {
             if working != crate::source::MEASURED_AT {
-                context.assume(format!("magnets, {}", place.name), "ferrite", PRACTICE);
+                context.assume_for("magnets", "ferrite", PRACTICE, place.name);
             }
             Magnets::Ferrite
         })
@@ -155,37 +157,55 @@ fn way(context: &mut Context, layers: &Layers<ChargingText>, place: Place) -> Op
     let at = format!("{}.winding", place.path);
     let texts = std::iter::once((layers.own, &Origin::Stated))
         .chain(layers.parts.iter().map(|p| (&p.text, &p.origin)));
-    let usual = of_system(RATED_BUS, place.cells);
     for (text, origin) in texts {
         let Some(winding) = &text.winding else {
             continue;
         };
         if let Some(found) = &winding.inductance {
-            let beside = winding.rated.as_ref().map(|r| Rating {
-                amps: r.value.amps,
-                rpm: r.value.rpm,
-                bus: r.value.volts.unwrap_or(usual),
+            let usual = of_system(RATED_BUS, place.cells);
+            let rating = winding.rated.as_ref();
+            let path = format!("{at}.inductance");
+            return Some(Way {
+                inductance: Some(super::context::figure(found, origin.clone(), &path)),
+                rated: None,
+                rating: rating.map(|r| rating_of(&r.value, r.value.volts.unwrap_or(usual))),
             });
-            let found = super::context::figure(found, origin.clone(), &format!("{at}.inductance"));
-            return Some(Way::Measured(found, beside));
         }
         if let Some(found) = &winding.rated {
-            let bus = found.value.volts.unwrap_or_else(|| {
-                let what = format!("bus volts of the rating, {}", place.name);
-                context.assume(what, format::text(usual), PRACTICE);
-                usual
+            let bus = rated_bus(context, found.value.volts, place);
+            return Some(Way {
+                inductance: None,
+                rated: Some(Figure {
+                    value: (found.value.amps, found.value.rpm, bus),
+                    origin: origin.clone(),
+                    tolerance: found.tolerance,
+                    path: format!("{at}.rated"),
+                }),
+                rating: Some(rating_of(&found.value, bus)),
             });
-            return Some(Way::Rated(Figure {
-                value: (found.value.amps, found.value.rpm, bus),
-                origin: origin.clone(),
-                tolerance: found.tolerance,
-                path: format!("{at}.rated"),
-            }));
         }
     }
     let keys = "`rated`, `inductance` or `readings`";
     context.fault(at, Fault::Missing { keys });
     None
+}
+
+fn rating_of(text: &RatedText, bus: Volts) -> Rating {
+    Rating {
+        amps: text.amps,
+        rpm: text.rpm,
+        bus,
+    }
+}
+
+/// The bus volts of a rating, assumed where it does not say.
+fn rated_bus(context: &mut Context, stated: Option<Volts>, place: Place) -> Volts {
+    stated.unwrap_or_else(|| {
+        let usual = of_system(RATED_BUS, place.cells);
+        let what = "bus volts of the rating";
+        context.assume_for(what, format::text(usual), PRACTICE, place.name);
+        usual
+    })
 }
 
 /// Notes where a measured inductance and a rating beside it disagree.
@@ -217,22 +237,17 @@ fn assumed_open_circuit(
     context: &mut Context,
     place: Place,
     complete: &Constants,
-    rpm: Rpm,
-    phases: Phases,
+    (rpm, phases): (Rpm, Phases),
 ) -> Figure<(Volts, Rpm)> {
     let usual = typical_open_circuit(phases);
     let spread = (usual.band.high - usual.band.low).0 / 2.0 / usual.value.0;
     let volts = complete.open_circuit * rpm;
-    let what = format!("open-circuit volts, {}", place.name);
     let origin = format!(
         "{} times the rated bus volts ({} to {} are met with): common practice, from memory; measure them",
         usual.value.0, usual.band.low.0, usual.band.high.0
     );
-    context.assume(
-        what,
-        format!("{} at {}", format::text(volts), format::text(rpm)),
-        &origin,
-    );
+    let value = format!("{} at {}", format::text(volts), format::text(rpm));
+    context.assume_for("open-circuit volts", value, &origin, place.name);
     Figure {
         value: (volts, rpm),
         origin: Origin::Assumed(origin),
@@ -244,9 +259,9 @@ fn assumed_open_circuit(
 }
 
 fn assumed_resistance(context: &mut Context, place: Place, complete: &Constants) -> Figure<Ohms> {
-    let what = format!("winding resistance at 20 °C, {}", place.name);
     let origin = "8 % of the open-circuit volts lost in it at the rated current: common practice, from memory";
-    context.assume(what, format::text(complete.resistance), origin);
+    let value = format::text(complete.resistance);
+    context.assume_for("winding resistance at 20 °C", value, origin, place.name);
     Figure {
         value: complete.resistance,
         origin: Origin::Assumed(origin.to_owned()),
