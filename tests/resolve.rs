@@ -270,7 +270,7 @@ fn stated_over_catalog_over_assumed() {
     let w = winding(&build);
     assert_eq!(w.poles, 14);
     let source = &build.sources[0];
-    assert_eq!(source.name, "16 A charging winding, bridge, regulated");
+    assert_eq!(source.name, "charging winding");
     assert_eq!(source.part.as_deref(), Some("winding-16a"));
     let regulator = source.regulator.as_ref().unwrap();
     assert_eq!(

@@ -104,7 +104,7 @@ pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
         changes: Vec::new(),
         assumed: build.assumed.clone(),
         cautions: cautions(build),
-        notes: notes(build, &machine),
+        notes: build.notes.clone(),
     };
     Ok(Checked {
         check,
@@ -129,10 +129,4 @@ fn spare(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<ByState<Am
         ))
     });
     Some(ByState(amps.collect()))
-}
-
-fn notes(build: &Build, machine: &Machine) -> Vec<String> {
-    let mut notes = build.notes.clone();
-    notes.extend(machine.battery.notes().iter().map(ToString::to_string));
-    notes
 }

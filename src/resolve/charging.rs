@@ -111,12 +111,11 @@ pub(super) fn circuit(layers: &Layers<ChargingText>, name: &str) -> Option<Circu
     Some(Circuit { name, ac, braking })
 }
 
-/// A name for each entry: as written, the part's, its title, or what it does; numbered where two would be alike.
+/// A name for each entry: as written, the part's, or what it does; numbered where two would be alike.
 pub(super) fn names(layers: &[Layers<ChargingText>]) -> Vec<String> {
     let mut names: Vec<String> = Vec::with_capacity(layers.len());
     for layer in layers {
-        let title = layer.parts.first().map(|p| p.entry.title.clone());
-        let name = layer.value(|t| t.name.as_ref()).or(title);
+        let name = layer.value(|t| t.name.as_ref());
         let base = name.unwrap_or_else(|| match circuit(layer, "braking") {
             Some(circuit) => format!("{} winding", circuit.name),
             None if layer.get(|t| t.alternator.as_ref()).is_some() => "alternator".to_owned(),
