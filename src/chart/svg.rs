@@ -368,3 +368,100 @@ fn span_class(index: usize, tone: Tone) -> &'static str {
 fn upper_edge(pieces: &[Vec<(f64, f64, f64)>]) -> impl Iterator<Item = (f64, f64)> {
     pieces.iter().flatten().map(|(x, _, high)| (*x, *high))
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::chart::Plot;
+    use crate::quantity::{Amps, Fraction, Hours};
+
+    fn drawn(chart: &Chart, size: Size) -> String {
+        draw(chart, size, "c").into_string()
+    }
+
+    #[test]
+    fn true_steps_stand_upright() {
+        let steps =
+            [(0.0, 1.0, 8.0), (1.0, 2.0, 2.0)].map(|(a, b, y)| (Hours(a), Hours(b), Amps(y)));
+        let chart = Plot::<Hours, Amps>::new("t")
+            .steps("", Role::Supply, steps)
+            .finish("d");
+        let svg = drawn(&chart, WIDE);
+        // Plotted from 46 to 706 across, 180 to 10 up: 8 A is the top, 2 A a quarter of it.
+        assert!(
+            svg.contains("class=\"line supply\" d=\"M46 10L376 10L376 137.5L706 137.5\""),
+            "{svg}"
+        );
+    }
+
+    #[test]
+    fn names_are_escaped_and_ids_carry_the_charts_own() {
+        let chart = Plot::<Hours, Amps>::new("<t>")
+            .line(
+                "a<b",
+                Role::Charge,
+                [(Hours(0.0), Amps(1.0)), (Hours(1.0), Amps(2.0))],
+            )
+            .finish("d & e");
+        let svg = drawn(&chart, WIDE);
+        assert!(svg.contains("&lt;t&gt;") && svg.contains("a&lt;b") && svg.contains("d &amp; e"));
+        assert!(svg.contains("aria-labelledby=\"c-title c-desc\""));
+    }
+
+    #[test]
+    fn hatching_comes_with_its_key_and_only_where_there_is_any() {
+        let with = |high: f64| {
+            Plot::<Hours, Amps>::new("t")
+                .step_area(
+                    "pays",
+                    Role::Pays,
+                    [(Hours(0.0), Hours(1.0), Amps(2.0), Amps(high))],
+                )
+                .steps("s", Role::Supply, [(Hours(0.0), Hours(1.0), Amps(2.0))])
+                .finish("d")
+        };
+        let svg = drawn(&with(5.0), WIDE);
+        assert!(svg.contains("clip-path=\"url(#c-pays)\"") && svg.contains(">pays</text>"));
+        let svg = drawn(&with(2.0), WIDE);
+        assert!(!svg.contains("pays"), "{svg}");
+    }
+
+    #[test]
+    fn a_meaning_is_never_left_to_colour_alone() {
+        let line = [(Hours(0.0), Fraction(0.5)), (Hours(100.0), Fraction(0.6))];
+        let chart = Plot::<Hours, Fraction>::new("t")
+            .span("falls short", Tone::Bad, Hours(0.0), Hours(10.0))
+            .span("idle", Tone::Plain, Hours(10.0), Hours(11.0))
+            .span("keeps up", Tone::Good, Hours(11.0), Hours(100.0))
+            .line("", Role::Charge, line)
+            .finish("d");
+        let svg = drawn(&chart, NARROW);
+        assert!(
+            svg.contains(">falls</text>") && svg.contains(">short</text>"),
+            "{svg}"
+        );
+        assert!(svg.contains(">keeps up</text>") && !svg.contains(">idle<"));
+    }
+
+    #[test]
+    fn direct_labels_keep_apart() {
+        let line = |y: f64| [(Hours(0.0), Amps(y)), (Hours(1.0), Amps(y))];
+        let chart = Plot::<Hours, Amps>::new("t")
+            .line("one", Role::Supply, line(5.0))
+            .line("two", Role::Other, line(5.0))
+            .level("three", Role::Limit, Amps(5.0))
+            .finish("d");
+        let svg = drawn(&chart, WIDE);
+        let mut places: Vec<f64> = svg
+            .split("<text class=\"label ")
+            .skip(1)
+            .filter_map(|t| t.split(" y=\"").nth(1)?.split('"').next()?.parse().ok())
+            .collect();
+        places.sort_by(f64::total_cmp);
+        assert_eq!(places.len(), 3);
+        assert!(
+            places.windows(2).all(|p| p[1] - p[0] >= WIDE.text),
+            "{places:?}"
+        );
+    }
+}

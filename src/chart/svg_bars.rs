@@ -60,3 +60,39 @@ fn shorten(text: &str, width: f64, size: f64) -> String {
     }
     format!("{}…", kept.trim_end())
 }
+
+#[cfg(test)]
+mod tests {
+    use crate::chart::{Chart, svg};
+    use crate::quantity::AmpHours;
+
+    fn lengths(svg: &str) -> Vec<f64> {
+        let bars = svg.split("class=\"bar\"").skip(1);
+        bars.filter_map(|b| b.split("width=\"").nth(1)?.split('"').next()?.parse().ok())
+            .collect()
+    }
+
+    #[test]
+    fn bars_are_as_long_as_their_values() {
+        let values = [
+            ("a", AmpHours(40.0)),
+            ("b", AmpHours(10.0)),
+            ("c", AmpHours(f64::NAN)),
+        ];
+        let chart = Chart::bars("t", values, "d");
+        for size in [svg::WIDE, svg::NARROW] {
+            let drawn = svg::draw(&chart, size, "c").into_string();
+            let lengths = lengths(&drawn);
+            assert!((lengths[0] / lengths[1] - 4.0).abs() < 0.01, "{lengths:?}");
+            assert_eq!(lengths[2], 1.0);
+            assert!(drawn.contains(">40.0 Ah</text>") && drawn.contains(">— Ah</text>"));
+        }
+    }
+
+    #[test]
+    fn a_long_name_is_cut() {
+        let text = super::shorten("a name that is too long for its place", 100.0, 12.0);
+        assert!(text.ends_with('…') && text.chars().count() < 15, "{text}");
+        assert_eq!(super::shorten("short", 100.0, 12.0), "short");
+    }
+}

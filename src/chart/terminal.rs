@@ -334,3 +334,74 @@ pub fn strip(length: f64, room: usize, ascii: bool) -> String {
     }
     format!("{}{}", "█".repeat(eighths / 8), EIGHTHS[eighths % 8])
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::chart::Plot;
+    use crate::quantity::{Amps, Hours};
+
+    #[test]
+    fn a_strip_is_as_long_as_its_share() {
+        assert_eq!(strip(1.0, 4, false), "████");
+        assert_eq!(strip(0.5, 4, false), "██");
+        assert_eq!(strip(0.28, 4, false), "█▏");
+        assert_eq!(strip(1e-9, 4, false), "▏");
+        assert_eq!(strip(0.0, 4, false), "");
+        assert_eq!(strip(0.5, 4, true), "##");
+    }
+
+    fn chart() -> Chart {
+        let steps =
+            [(0.0, 1.0, 8.0), (1.0, 2.0, 2.0)].map(|(a, b, y)| (Hours(a), Hours(b), Amps(y)));
+        Plot::<Hours, Amps>::new("t")
+            .step_area(
+                "drawn",
+                Role::Draw,
+                [(Hours(0.0), Hours(2.0), Amps(0.0), Amps(4.0))],
+            )
+            .steps("can give", Role::Supply, steps)
+            .mark("low", Hours(1.5), Amps(2.0))
+            .finish("d")
+    }
+
+    #[test]
+    fn steps_areas_and_marks_stand_where_they_belong() {
+        let lines = draw(
+            &chart(),
+            Style {
+                width: 40,
+                ascii: true,
+            },
+        );
+        let row = |start: &str| {
+            lines
+                .iter()
+                .find(|l| l.starts_with(start))
+                .cloned()
+                .expect("a row")
+        };
+        // 31 columns: the step falls after the sixteenth, at 1 h.
+        assert_eq!(row("     8 A|"), "     8 A|================");
+        assert!(
+            row("       4|").ends_with("|................|.............."),
+            "{lines:#?}"
+        );
+        assert!(row("       2|").ends_with("=======o======="), "{lines:#?}");
+        assert_eq!(
+            lines.last().map(String::as_str),
+            Some("  . drawn   = can give   o low")
+        );
+    }
+
+    #[test]
+    fn no_line_is_wider_than_asked() {
+        for width in [30, 40, 79, 80, 200] {
+            for ascii in [false, true] {
+                for line in draw(&chart(), Style { width, ascii }) {
+                    assert!(line.chars().count() <= width, "{width}: {line}");
+                }
+            }
+        }
+    }
+}

@@ -169,3 +169,63 @@ pub fn harmless(text: &str) -> String {
             .starts_with(['=', '+', '-', '@', '＝', '＋', '－', '＠']);
     if begins { format!("'{text}") } else { text }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::quantity::{Amps, Fraction, Minutes, Money, Volts};
+
+    #[test]
+    fn numbers_are_whole_and_in_the_unit_of_the_heading() {
+        let table = Table::new("T")
+            .columns([
+                Column::name("State"),
+                Column::duration("Time"),
+                Column::percent("Share"),
+                Column::money("Price", "EUR"),
+                Column::number::<Amps>("Draw"),
+            ])
+            .row([
+                Cell::name("a, b"),
+                Cell::duration(Minutes(95.25)),
+                Cell::percent(Fraction(0.123_456)),
+                Cell::money(Money(12.5), "EUR"),
+                Cell::fixed(Amps(-1.0 / 3.0), 1),
+            ]);
+        let wanted = "State,Time (min),Share (%),Price (EUR),Draw (A)\n\
+                      \"a, b\",95.25,12.3456,12.5,-0.3333333333333333\n";
+        assert_eq!(render(&Report::new("x").table(table.main())), wanted);
+    }
+
+    #[test]
+    fn a_cell_of_another_unit_keeps_its_words() {
+        let table = Table::new("")
+            .columns([
+                Column::name("n"),
+                Column::number::<Amps>("Draw"),
+                Column::figures("Any"),
+            ])
+            .row([
+                Cell::name("a"),
+                Cell::measured(Volts(12.5)),
+                Cell::measured(Volts(12.5)),
+            ])
+            .main();
+        assert_eq!(
+            render(&Report::new("").table(table)),
+            "n,Draw (A),Any\na,12.5 V,12.5 V\n"
+        );
+    }
+
+    #[test]
+    fn parts_are_set_apart() {
+        let report = Report::new("R")
+            .verdict(crate::report::Tone::Good, "Keeps up", "s")
+            .facts([("Reserve", Cell::percent(Fraction(0.6)))])
+            .heading("H")
+            .lines(["-l"])
+            .cautions(["c"]);
+        let wanted = "R\n\nVerdict,Keeps up,s\n\nReserve,60,%\n\nH\n'-l\n\nCautions\nc\n";
+        assert_eq!(render(&report), wanted);
+    }
+}

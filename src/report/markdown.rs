@@ -215,3 +215,64 @@ fn escape_line(text: &str) -> String {
         _ => text,
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::quantity::Amps;
+    use crate::report::Tone;
+
+    #[test]
+    fn what_would_begin_a_list_or_heading_does_not() {
+        for (text, wanted) in [
+            ("- x", "\\- x"),
+            ("# x", "\\# x"),
+            ("12. x", "12\\. x"),
+            ("12 x", "12 x"),
+            ("a - x", "a - x"),
+        ] {
+            assert_eq!(escape_line(text), wanted);
+        }
+    }
+
+    #[test]
+    fn code_holds_its_backticks() {
+        assert_eq!(code_span("a`b"), "``a`b``");
+        assert_eq!(code_span("`a"), "`` `a ``");
+        let report = Report::new("").lines(["a", "```", "b"]);
+        assert_eq!(render(&report), "````text\na\n```\nb\n````\n");
+    }
+
+    #[test]
+    fn a_table_says_its_sides_units_and_sums() {
+        let table = Table::new("T")
+            .columns([
+                Column::name("State"),
+                Column::number::<Amps>("Draw"),
+                Column::bar(),
+            ])
+            .row([Cell::name("idle"), Cell::signed(Amps(-1.5), 1)])
+            .total([Cell::name("All"), Cell::fixed(Amps(2.0), 1)])
+            .note("n");
+        let wanted = "## T\n\n| State | Draw, A |\n| --- | ---: |\n| idle | −1.5 |\n\
+                      | **All** | **2.0** |\n\nn\n";
+        assert_eq!(render(&Report::new("").table(table)), wanted);
+    }
+
+    #[test]
+    fn verdict_items_and_cautions() {
+        let report = Report::new("a*b")
+            .verdict(Tone::Bad, "Falls short", "lacks 3 Ah")
+            .list(
+                "Changes",
+                [Item::new("more")
+                    .lead(Tone::Plain, "Note")
+                    .code("--set 'a=b'")
+                    .source("s")],
+            )
+            .cautions(["c"]);
+        let wanted = "# a\\*b\n\n> **Falls short:** lacks 3 Ah\n\n## Changes\n\n\
+                      - **Note**: more `--set 'a=b'` (s)\n\n## Cautions\n\n- c\n";
+        assert_eq!(render(&report), wanted);
+    }
+}

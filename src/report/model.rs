@@ -256,3 +256,37 @@ impl Report {
         })
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn what_is_empty_leaves_no_heading() {
+        let report = Report::new("t")
+            .list("Changes", [])
+            .cautions(Vec::<String>::new())
+            .facts(Vec::<(String, Cell)>::new());
+        assert!(report.blocks.is_empty());
+    }
+
+    #[test]
+    fn an_appended_report_becomes_a_section() {
+        let wire = Report::new("Wire")
+            .subtitle("s")
+            .heading("Totals")
+            .table(Table::new("T"));
+        let all = Report::new("Sheet").paragraph("p").append(wire);
+        let headings: Vec<(u8, &str)> = all
+            .blocks
+            .iter()
+            .filter_map(|block| match block {
+                Block::Heading(level, text) => Some((*level, text.as_str())),
+                _ => None,
+            })
+            .collect();
+        assert_eq!(headings, [(1, "Wire"), (2, "Totals")]);
+        assert_eq!(all.tables().count(), 1);
+        assert_eq!(all.blocks.len(), 5);
+    }
+}

@@ -341,3 +341,47 @@ impl Table {
         self
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::quantity::{Amps, Celsius};
+
+    #[test]
+    fn a_row_has_a_cell_for_each_column() {
+        let table = Table::new("")
+            .columns([Column::name("a"), Column::text("b")])
+            .row([Cell::name("x")])
+            .row([Cell::name("x"), Cell::text("y"), Cell::text("z")]);
+        assert!(table.rows.iter().all(|row| row.cells.len() == 2));
+    }
+
+    #[test]
+    fn a_cell_keeps_the_whole_number_behind_its_text() {
+        let cell = Cell::fixed(Amps(-0.04), 1);
+        assert_eq!(
+            (cell.text.as_str(), cell.number, cell.unit.as_deref()),
+            ("0.0", Some(-0.04), Some("A"))
+        );
+        let cell = Cell::percent(Fraction(0.255));
+        assert_eq!((cell.text.as_str(), cell.number), ("26 %", Some(25.5)));
+        let cell = Cell::fixed(Amps(f64::NAN), 1);
+        assert_eq!((cell.text.as_str(), cell.number), (format::NO_NUMBER, None));
+        assert_eq!(Cell::temperature(Celsius(-10.0)).text, "−10 °C");
+        assert_eq!(Cell::maybe(None::<Amps>, Cell::measured), Cell::empty());
+    }
+
+    #[test]
+    fn a_bar_is_held_between_nothing_and_the_whole() {
+        for (share, length) in [(-1.0, 0.0), (0.5, 0.5), (7.0, 1.0), (f64::NAN, 0.0)] {
+            assert_eq!(Cell::bar(Fraction(share)).bar, Some(length));
+        }
+    }
+
+    #[test]
+    fn headings_with_units() {
+        assert_eq!(Column::number::<Amps>("Draw").full_name(), "Draw (A)");
+        assert_eq!(Column::number::<Amps>("").full_name(), "A");
+        assert_eq!(Column::money("Price", "").full_name(), "Price");
+    }
+}

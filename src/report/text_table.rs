@@ -406,3 +406,6 @@ fn paint(text: String, tone: Tone) -> Painted {
         Tone::Bad => cell.fg(Color::DarkRed),
     }
 }
+
+#[cfg(test)]
+mod tests;

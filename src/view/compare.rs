@@ -63,7 +63,7 @@ fn difference(before: &Check, after: &Check) -> Table {
     ];
     Table::new("What changes")
         .columns([
-            Column::name(""),
+            Column::name("Figure"),
             Column::figures("Before"),
             Column::figures("After"),
             Column::figures("Difference"),
