@@ -68,7 +68,11 @@ fn the_verdict_stands_once() {
 
 #[test]
 fn parts_come_in_their_order() {
-    let written = short(&view::check(&sample::falls_short("x"), &Options::default()));
+    let written = short(&view::check(
+        &sample::falls_short(sample::MARKUP),
+        &Options::default(),
+    ));
+    assert!(written.starts_with(sample::MARKUP));
     let parts = [
         "Falls short:",
         "By state",

@@ -2,7 +2,7 @@
 //!
 //! Each type is a number in one fixed unit, named in its doc. Only the lawful
 //! products are defined ([`ops`]); text is read by [`parse`] and written by
-//! [`format`]. A bare `f64` crosses no module boundary: conversion happens on
+//! [`mod@format`]. A bare `f64` crosses no module boundary: conversion happens on
 //! one visible line, by `.0`, inside the module that computes.
 //!
 //! ```
