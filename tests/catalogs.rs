@@ -3,6 +3,7 @@
 
 use ampledger::build::{Build, Draw};
 use ampledger::catalog::{CatalogError, Catalogs, Certainty, Entry, Kind};
+use ampledger::description::AccessoryText;
 use ampledger::resolve::{KitError, find_kit, resolve, with_kit};
 use std::collections::BTreeSet;
 use std::fs;
@@ -342,4 +343,22 @@ fn a_link_out_of_the_folder_is_refused() {
     let inside = folder(&[("a.yaml", "kits: []\n")]);
     std::os::unix::fs::symlink(inside.path().join("a.yaml"), inside.path().join("c.yml")).unwrap();
     assert!(Catalogs::with_folder(inside.path()).is_ok());
+}
+
+#[test]
+fn a_part_is_read_once() {
+    let catalogs = Catalogs::builtin();
+    let heater = || {
+        catalogs
+            .part::<AccessoryText>("seat-heater")
+            .unwrap()
+            .unwrap()
+    };
+    let (first, again) = (heater(), heater());
+    assert!(std::sync::Arc::ptr_eq(&first, &again));
+    assert_eq!(first.entry.title, "Seat heater");
+    assert!(
+        catalogs.part::<AccessoryText>("winding-16a").is_none(),
+        "of another kind"
+    );
 }

@@ -1,8 +1,10 @@
 //! The catalogs that the program carries, as text: nothing is parsed before a part is asked for.
 
 use super::{Certainty, Entry, Kind, Origin};
+use std::collections::BTreeMap;
 
 /// One built-in file: its name and its text.
+#[derive(Debug)]
 pub(super) struct File {
     pub(super) name: &'static str,
     pub(super) text: &'static str,
@@ -51,11 +53,26 @@ pub(super) fn blocks(
     })
 }
 
+/// Where the entries of a kind stand, by id.
+#[derive(Debug)]
+pub(super) struct Places {
+    kind: Kind,
+    blocks: BTreeMap<&'static str, (&'static str, &'static File)>,
+}
+
+/// Where the entries of a kind stand.
+pub(super) fn places(kind: Kind) -> Places {
+    let blocks = blocks(kind).map(|(id, rest, file)| (id, (rest, file)));
+    Places {
+        kind,
+        blocks: blocks.collect(),
+    }
+}
+
 /// The entry of an id.
-pub(super) fn find(kind: Kind, id: &str) -> Option<Entry> {
-    blocks(kind)
-        .find(|(found, _, _)| *found == id)
-        .map(|(id, rest, file)| entry(kind, id, rest, file))
+pub(super) fn find(places: &Places, id: &str) -> Option<Entry> {
+    let (id, (rest, file)) = places.blocks.get_key_value(id)?;
+    Some(entry(places.kind, id, rest, file))
 }
 
 /// One block as an entry: the four lines that tell of it apart from the keys of the build file.

@@ -16,11 +16,16 @@
 mod builtin;
 mod error;
 mod folder;
+mod read;
 
 pub use error::CatalogError;
+pub use read::{Parted, Read, Shared};
 
 use std::fmt;
 use std::path::{Path, PathBuf};
+use std::sync::Arc;
+
+use read::Store;
 
 /// What an entry describes.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -151,6 +156,8 @@ impl Entry {
 pub struct Catalogs {
     /// Entries of the user's folder.
     own: Vec<Entry>,
+    /// What was found and read so far; a clone shares it.
+    store: Arc<Store>,
 }
 
 impl Catalogs {
@@ -168,6 +175,7 @@ impl Catalogs {
     pub fn with_folder(folder: &Path) -> Result<Catalogs, CatalogError> {
         Ok(Catalogs {
             own: folder::read(folder)?,
+            store: Arc::default(),
         })
     }
 
@@ -178,7 +186,17 @@ impl Catalogs {
             .iter()
             .find(|e| e.kind == kind && e.id == id)
             .cloned()
-            .or_else(|| builtin::find(kind, id))
+            .or_else(|| {
+                self.store
+                    .places(kind)
+                    .and_then(|places| builtin::find(places, id))
+            })
+    }
+
+    /// The entry of an id as a part of a build. However often it is asked for, it is read once.
+    #[must_use]
+    pub fn part<T: Parted>(&self, id: &str) -> Option<Shared<T>> {
+        self.store.part(id, || self.find(T::KIND, id))
     }
 
     /// Every entry of a kind: the user's, then the built-in ones whose place none of those takes.

@@ -62,9 +62,9 @@ fn names(context: &mut Context, layers: &[Layers<AccessoryText>]) -> Vec<String>
         let written = layer.own.name.as_ref();
         let base = match (written, layer.parts.first()) {
             (Some(name), _) => name.value.clone(),
-            (None, Some(part)) => match &part.text.name {
+            (None, Some(part)) => match &part.read.text.name {
                 Some(name) => name.value.clone(),
-                None => part.entry.title.clone(),
+                None => part.read.entry.title.clone(),
             },
             (None, None) => format!("accessory {}", index + 1),
         };

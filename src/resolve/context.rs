@@ -2,9 +2,10 @@
 
 use super::Fault;
 use crate::build::{Assumed, Figure, Origin};
-use crate::catalog::{Catalogs, Entry};
+use crate::catalog::{Catalogs, Read};
 use crate::description::Written;
 use crate::quantity::Volts;
+use std::sync::Arc;
 
 /// Grounds of what is assumed.
 pub(super) const PRACTICE: &str = "common practice, no source";
@@ -144,10 +145,8 @@ pub(super) fn of_system(volts: Volts, cells: u32) -> Volts {
 
 /// A catalog part that an entry stands on.
 pub(super) struct Part<T> {
-    /// The entry as text.
-    pub(super) entry: Entry,
-    /// The entry's own keys.
-    pub(super) text: T,
+    /// The entry and its own keys.
+    pub(super) read: Arc<Read<T>>,
     /// Origin of its figures.
     pub(super) origin: Origin,
 }
@@ -175,7 +174,7 @@ impl<T> Layers<'_, T> {
         }
         self.parts
             .iter()
-            .find_map(|part| key(&part.text).map(|found| (found, &part.origin)))
+            .find_map(|part| key(&part.read.text).map(|found| (found, &part.origin)))
     }
 
     /// The value of the uppermost layer that has a key.
@@ -198,7 +197,7 @@ impl<T> Layers<'_, T> {
 
     /// Id of the part that the entry names.
     pub(super) fn part(&self) -> Option<String> {
-        self.parts.first().map(|p| p.entry.id.clone())
+        self.parts.first().map(|p| p.read.entry.id.clone())
     }
 }
 

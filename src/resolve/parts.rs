@@ -3,40 +3,8 @@
 use super::Fault;
 use super::context::{Context, Layers, Part};
 use crate::build::Origin;
-use crate::catalog::{Catalogs, Kind};
-use crate::description::{AccessoryText, BatteryText, ChargingText, StarterText, Written};
-use crate::problem::{Problem, Refusal};
-
-/// An entry of a build file that may name a catalog part.
-pub(super) trait Parted: Sized {
-    /// The kind of its parts.
-    const KIND: Kind;
-    /// The part it names.
-    fn part(&self) -> Option<&Written<String>>;
-    /// Reads the keys of a catalog entry; `name` is what messages call it.
-    fn read(name: &str, body: &str) -> Result<Self, Refusal>;
-}
-
-/// Declares the entries that may name a part.
-macro_rules! parted {
-    ($($text:ident, $kind:ident, $read:ident;)*) => { $(
-        impl Parted for $text {
-            const KIND: Kind = Kind::$kind;
-            fn part(&self) -> Option<&Written<String>> {
-                self.part.as_ref()
-            }
-            fn read(name: &str, body: &str) -> Result<Self, Refusal> {
-                crate::description::$read(name, body)
-            }
-        }
-    )* };
-}
-parted! {
-    ChargingText, Charging, read_charging;
-    BatteryText, Battery, read_battery;
-    StarterText, Starter, read_starter;
-    AccessoryText, Accessory, read_accessory;
-}
+use crate::catalog::{Catalogs, Parted};
+use crate::problem::Problem;
 
 /// An entry over its parts, nearest first. What is wrong with them is told at the path of the entry's `part`.
 pub(super) fn layers<'a, T: Parted>(
@@ -48,15 +16,15 @@ pub(super) fn layers<'a, T: Parted>(
     let mut faults: Vec<Fault> = Vec::new();
     let mut wanted = own.part().map(|p| p.value.clone());
     while let Some(id) = wanted.take() {
-        if parts.iter().any(|p| p.entry.id == id) {
-            let followed = parts.iter().map(|p| p.entry.id.clone());
+        if parts.iter().any(|p| p.read.entry.id == id) {
+            let followed = parts.iter().map(|p| p.read.entry.id.clone());
             let ids = followed.chain([id]).collect();
             faults.push(Fault::PartCycle { ids });
             break;
         }
         match part(context.catalogs, &id) {
             Ok(part) => {
-                wanted = T::part(&part.text).map(|p| p.value.clone());
+                wanted = T::part(&part.read.text).map(|p| p.value.clone());
                 parts.push(part);
             }
             Err(found) => faults.extend(found),
@@ -71,23 +39,12 @@ pub(super) fn layers<'a, T: Parted>(
 
 /// The part of an id, read; or what is wrong with it.
 fn part<T: Parted>(catalogs: &Catalogs, id: &str) -> Result<Part<T>, Vec<Fault>> {
-    let Some(entry) = catalogs.find(T::KIND, id) else {
-        return Err(vec![Fault::UnknownPart {
-            id: id.to_owned(),
-            kind: T::KIND,
-            nearest: catalogs.nearest(T::KIND, id),
-        }]);
-    };
-    match T::read(id, &entry.body) {
-        Ok(text) => {
-            let origin = Origin::Catalog(entry.words());
-            Ok(Part {
-                entry,
-                text,
-                origin,
-            })
+    match catalogs.part(id) {
+        Some(Ok(read)) => {
+            let origin = Origin::Catalog(read.entry.words());
+            Ok(Part { read, origin })
         }
-        Err(refusal) => {
+        Some(Err((entry, refusal))) => {
             let bad = |problem: &Problem| Fault::BadPart {
                 id: id.to_owned(),
                 file: entry.origin.to_string(),
@@ -98,5 +55,10 @@ fn part<T: Parted>(catalogs: &Catalogs, id: &str) -> Result<Part<T>, Vec<Fault>>
             };
             Err(refusal.problems().iter().map(bad).collect())
         }
+        None => Err(vec![Fault::UnknownPart {
+            id: id.to_owned(),
+            kind: T::KIND,
+            nearest: catalogs.nearest(T::KIND, id),
+        }]),
     }
 }

@@ -156,7 +156,7 @@ fn magnets(
 fn way(context: &mut Context, layers: &Layers<ChargingText>, place: Place) -> Option<Way> {
     let at = format!("{}.winding", place.path);
     let texts = std::iter::once((layers.own, &Origin::Stated))
-        .chain(layers.parts.iter().map(|p| (&p.text, &p.origin)));
+        .chain(layers.parts.iter().map(|p| (&p.read.text, &p.origin)));
     for (text, origin) in texts {
         let Some(winding) = &text.winding else {
             continue;
