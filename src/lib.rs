@@ -6,6 +6,7 @@ pub mod bus;
 pub mod catalog;
 pub mod chart;
 pub mod check;
+pub mod circuit;
 pub mod description;
 pub mod ledger;
 pub mod load;
