@@ -807,3 +807,68 @@ fn every_example_resolves() {
     }
     assert!(seen >= 13, "{seen}");
 }
+
+/// Every number of every example in turn made nothing, tiny, huge and negative: an answer or a refusal, never a panic,
+/// and never a figure that is not finite.
+#[test]
+fn no_number_can_break_it() {
+    let mut tried = 0;
+    for file in std::fs::read_dir("examples").unwrap() {
+        let path = file.unwrap().path();
+        let text = std::fs::read_to_string(&path).unwrap_or_default();
+        for (from, to) in numbers(&text) {
+            for other in ["0", "1e-6", "1e6", "-1"] {
+                let changed = format!("{}{other}{}", &text[..from], &text[to..]);
+                let Ok((description, _)) =
+                    ampledger::description::read("changed", changed.as_bytes())
+                else {
+                    continue;
+                };
+                if let Ok(build) = resolve(&description, &Catalogs::builtin()) {
+                    tried += 1;
+                    for source in &build.sources {
+                        if let SourceKind::Winding(w) = &source.kind {
+                            assert!(w.constants.inductance().is_finite(), "{changed}");
+                            assert!(w.resistance.value.is_finite(), "{changed}");
+                        }
+                    }
+                }
+            }
+        }
+    }
+    assert!(tried > 100, "{tried}");
+}
+
+/// Where the numbers stand that begin a value.
+fn numbers(text: &str) -> Vec<(usize, usize)> {
+    let bytes = text.as_bytes();
+    let part = |b: u8| b.is_ascii_digit() || b == b'.';
+    let mut found = Vec::new();
+    let mut at = 0;
+    while at < bytes.len() {
+        let begins = bytes[at].is_ascii_digit() && at > 0 && matches!(bytes[at - 1], b' ' | b'-');
+        let mut end = at + 1;
+        if begins {
+            while end < bytes.len() && part(bytes[end]) {
+                end += 1;
+            }
+            found.push((at, end));
+        }
+        at = end;
+    }
+    found
+}
+
+#[test]
+fn a_lighting_winding_by_its_rating() {
+    // 60 W of lamps at 12.8 V are 4.6875 A; X = √(E² − (V + R I)²) / I with E = 22 V · 0.92 and R = 0.35 Ω · 1.3144
+    // (hot), over 2π 360 Hz: 1.286 mH (Kirchhoff's law of one winding across a resistance).
+    let rated = "rated: 4.6875 A at 3600 rpm into 12.8 V, open_circuit: 22 V at 3600 rpm, resistance: 0.35 ohm, poles: 12, feeds: lighting";
+    let figures = "open_circuit: 22 V at 3600 rpm, resistance: 0.35 ohm, inductance: 1.29 mH, poles: 12, feeds: lighting";
+    let build = made(&swap(LIGHTING, figures, rated));
+    let inductance = winding(&build).constants.inductance();
+    assert!(
+        (inductance.0 * 1e3 - 1.286_14).abs() < 1e-3,
+        "{inductance:?}"
+    );
+}
