@@ -55,7 +55,7 @@ macro_rules! written {
     )* };
 }
 written! {
-    Volts "V" "V" 1.0 4;
+    Volts "V" "V" 1.0 3;
     Amps "A" "A" 1.0 3;
     Watts "W" "W" 1.0 3;
     Ohms "Ω" "ohm" 1.0 3;
@@ -113,7 +113,11 @@ fn decimals_of(number: f64, digits: i32) -> usize {
 
 /// Significant digits without the zeros that end a decimal fraction: `30`, `9.9`, `0.35`.
 fn significant(number: f64, digits: i32) -> String {
-    let text = plain(number, decimals_of(number, digits));
+    trimmed(plain(number, decimals_of(number, digits)))
+}
+
+/// Without the zeros that end a decimal fraction.
+fn trimmed(text: String) -> String {
     if text.contains('.') {
         text.trim_end_matches('0').trim_end_matches('.').to_owned()
     } else {
@@ -130,8 +134,8 @@ fn join(number: String, unit: &str) -> String {
     }
 }
 
-/// In a sentence: three significant digits (four for volts and rpm), zeros at the end dropped,
-/// with the unit. Below a tenth of an ampere, volt or ohm in thousandths: `8 mA`.
+/// In a sentence: three significant digits (four for rpm, hundredths for volts), zeros at the end
+/// dropped, with the unit. Below a tenth of an ampere, volt or ohm in thousandths: `8 mA`.
 ///
 /// ```
 /// use ampledger::quantity::{format::text, Amps, AmpHours, Ohms, Volts};
@@ -145,6 +149,10 @@ pub fn text<Q: Written>(quantity: Q) -> String {
     let number = quantity.number();
     if matches!(Q::UNIT, "A" | "V" | "Ω") && number.abs() < 0.0995 && number.abs() >= 5e-6 {
         return format!("{} m{}", significant(number * 1e3, 3), Q::UNIT);
+    }
+    // A volt is read to hundredths.
+    if Q::UNIT == "V" && number.abs() >= 1.0 {
+        return join(trimmed(plain(number, 2)), Q::UNIT);
     }
     join(significant(number, Q::DIGITS), Q::UNIT)
 }
@@ -272,12 +280,12 @@ pub fn duration(time: Hours) -> String {
     }
 }
 
-/// A share in whole per cent: `85 %`; below one per cent two digits, `0.42 %`.
+/// A share in whole per cent: `85 %`; below one per cent one digit, `0.4 %`.
 #[must_use]
 pub fn percent(share: Fraction) -> String {
     let number = share.percent();
-    if number.abs() < 0.995 {
-        return format!("{} %", significant(number, 2));
+    if number.abs() < 0.95 {
+        return format!("{} %", significant(number, 1));
     }
     format!("{} %", plain(number, 0))
 }
@@ -332,6 +340,8 @@ mod tests {
             (text(Amps(0.0301)), "30.1 mA"),
             (text(Henries(0.000_412)), "0.412 mH"),
             (text(Volts(0.85)), "0.85 V"),
+            (text(Volts(1.364)), "1.36 V"),
+            (text(Volts(9.996)), "10 V"),
             (text_signed(AmpHours(1.25)), "+1.25 Ah"),
         ] {
             assert_eq!(written, wanted);
@@ -369,7 +379,8 @@ mod tests {
     #[test]
     fn kinds_in_their_manner() {
         assert_eq!(percent(Fraction(0.85)), "85 %");
-        assert_eq!(percent(Fraction(0.004_2)), "0.42 %");
+        assert_eq!(percent(Fraction(0.004_2)), "0.4 %");
+        assert_eq!(percent(Fraction(0.009_6)), "1 %");
         assert_eq!(temperature(Celsius(2.0)), "2 °C");
         assert_eq!(temperature(Celsius(-17.78)), "−17.8 °C");
         assert_eq!(money(Money(120.0), "EUR"), "120 EUR");

@@ -125,7 +125,7 @@ pub fn charge(answer: &Check, trace: &[TraceRow]) -> Chart {
     let mut points: Vec<(Hours, Fraction)> = trace
         .iter()
         .map(|row| (hours(row.minutes), row.soc))
-        .filter(|(at, _)| *at <= end)
+        .filter(|(at, _)| at.0 <= end.0 + 1e-6)
         .collect();
     if points.len() < 2 {
         points = shift(answer)
@@ -157,7 +157,7 @@ pub fn charge(answer: &Check, trace: &[TraceRow]) -> Chart {
         answer,
     );
     reserve(plot, answer)
-        .y_between(Fraction::ZERO, Fraction::ONE)
+        .y_between(foot(answer, low), Fraction::ONE)
         .finish(words)
 }
 
@@ -189,7 +189,7 @@ fn days(answer: &Check, trace: &[TraceRow]) -> Option<Chart> {
     let words = charge_words(&over, points.first(), points.last(), low, answer);
     Some(
         reserve(plot, answer)
-            .y_between(Fraction::ZERO, Fraction::ONE)
+            .y_between(foot(answer, low), Fraction::ONE)
             .finish(words),
     )
 }
@@ -203,6 +203,14 @@ fn reserve<X: format::Written>(plot: Plot<X, Fraction>, answer: &Check) -> Plot<
         ),
         None => plot,
     }
+}
+
+/// Where the axis of charge begins: a round figure under the reserve and the lowest charge, so
+/// that a small margin shows.
+fn foot<X>(answer: &Check, low: Option<(X, Fraction)>) -> Fraction {
+    let low = low.map_or(Fraction::ZERO, |(_, soc)| soc);
+    let least = check::reserve(answer).map_or(low, |reserve| reserve.min(low));
+    Fraction((((least.0 - 0.05) * 5.0).floor() / 5.0).clamp(0.0, 0.8))
 }
 
 /// The point of least charge.
