@@ -66,6 +66,12 @@ pub struct Check {
     pub lacks_a: Option<Amps>,
     /// Why no charging can help, where that is so, and the battery that would.
     pub beyond_charging: Option<String>,
+    /// What fails first when it is worked all the same, as a clause; none when it keeps up.
+    pub fails: Option<String>,
+    /// Put away: how long it still cranks, when to recharge.
+    pub storage: Option<super::Storage>,
+    /// How long it stands with its key on, where the engine never runs.
+    pub rundown: Option<super::Rundown>,
     /// Net battery Ah over the first shift, from the charge it starts with.
     pub balance_ah: Option<AmpHours>,
     /// Charge at which each shift begins once it has settled.

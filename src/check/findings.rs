@@ -3,11 +3,12 @@
 use super::answer::{AccessoryRow, Finding, StateRow, Weight};
 use super::first_shift::FirstShift;
 use super::ruling::Ruling;
+use super::{rundown, storage};
 use crate::battery::{Charge, FREEZING_MARGIN};
 use crate::build::{Build, State};
 use crate::ledger::{Machine, connect};
 use crate::quantity::format::{duration, percent, temperature, text};
-use crate::quantity::{AmpHours, Amps, Fraction, Hours, Volts};
+use crate::quantity::{AmpHours, Amps, Days, Fraction, Hours, Volts};
 
 /// Volts a cell above which a running battery is overcharged, and above which a regulator must
 /// have failed; and below which it is not being charged. Common practice, no source.
@@ -58,6 +59,8 @@ pub fn findings(seen: &Seen<'_>) -> Vec<Finding> {
     all.extend(never_full(seen));
     all.extend(gassing(seen));
     all.extend(parasitic(seen));
+    all.extend(put_away(seen));
+    all.extend(stands(seen));
     all
 }
 
@@ -338,4 +341,49 @@ fn parasitic(seen: &Seen<'_>) -> Option<Finding> {
             PRACTICE,
         )
     })
+}
+
+/// What becomes of the battery when the machine is put away after its settled shift.
+fn put_away(seen: &Seen<'_>) -> Option<Finding> {
+    let storage = storage(seen.build, seen.machine, seen.ruling);
+    let air = temperature(seen.build.air.value);
+    let from = percent(storage.from_soc);
+    let days = storage.days_to_reserve.filter(|days| *days > Days::ZERO)?;
+    let recharge = storage
+        .days_to_recharge
+        .filter(|d| *d > Days::ZERO)
+        .map_or(String::new(), |days| {
+            format!("; recharge it after {}", text(days))
+        });
+    let text = format!(
+        "put away at {air} with {from} it is at its reserve after {}{recharge}",
+        text(days)
+    );
+    Some(finding(
+        "storage",
+        Weight::Note,
+        text,
+        "self-discharge of the battery model, practice 3 to 6 % a month at 25 °C: common practice, no source",
+    ))
+}
+
+/// How long it stands with its key on, where the engine never runs.
+fn stands(seen: &Seen<'_>) -> Option<Finding> {
+    let start = Charge::rested(seen.build.start);
+    let stands = rundown(seen.machine, start, seen.ruling.reserve.soc)?;
+    let until =
+        |time: Option<Hours>| time.map_or("never".to_owned(), |t| format!("after {}", duration(t)));
+    let text = format!(
+        "with the key on and the engine off the reserve is broken {}, and the battery is at {} {} ({} taken)",
+        until(stands.hours_to_reserve),
+        text(seen.machine.battery.end_of_discharge()),
+        until(stands.hours_to_empty),
+        text(stands.taken_ah)
+    );
+    Some(finding(
+        "rundown",
+        Weight::Note,
+        text,
+        "end of discharge 1.75 V a cell, as in SAE J537",
+    ))
 }

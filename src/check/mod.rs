@@ -1,20 +1,26 @@
 //! One build's answer: verdict, figures by state and accessory, findings.
 
 pub mod answer;
+mod beyond;
 mod cautions;
+mod course;
 mod error;
 mod findings;
 mod first_shift;
 mod rows;
 mod ruling;
+pub mod season;
 mod sentence;
+mod storage;
 
 pub use cautions::cautions;
+pub use course::{Course, Rundown, course, rundown};
 pub use error::SolveError;
 pub use first_shift::{Book, FirstShift, Mean, Passage, first_shift};
 pub use rows::{by_accessory, by_state};
 pub use ruling::{Reserve, ReserveFrom, Ruling, reserve, rule, rule_on};
 pub use sentence::ordinal;
+pub use storage::{Storage, storage};
 
 use crate::battery::Charge;
 use crate::build::{Build, State};
@@ -67,6 +73,7 @@ pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
         .as_ref()
         .and(machine.edge(ruling.reserve.soc, Spread::Everywhere));
     let lowest = ruling.settles.map_or(shift.lowest, |(_, lowest)| lowest);
+    let fails = fails(build, &machine, &ruling);
     let seen = findings::Seen {
         build,
         machine: &machine,
@@ -85,11 +92,15 @@ pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
             &ruling,
             everywhere.map(|a| (-a).max(Amps::ZERO)),
             shift.lowest,
+            fails.as_deref(),
         ),
         shifts_carried: ruling.shifts_carried,
         lacks_ah: ruling.lacks,
         lacks_a: ruling.lacks_current,
-        beyond_charging: None,
+        beyond_charging: beyond::battery_that_would_do(build, &ruling),
+        fails,
+        storage: Some(storage(build, &machine, &ruling)),
+        rundown: rundown(&machine, Charge::rested(build.start), ruling.reserve.soc),
         balance_ah: Some(shift.balance),
         settles_soc: ruling.settles.map(|(charge, _)| charge.soc),
         lowest_soc: Some(lowest),
@@ -110,6 +121,22 @@ pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
         check,
         trace: shift.trace,
     })
+}
+
+/// What fails first when a build that does not keep up is worked all the same.
+fn fails(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<String> {
+    if ruling.verdict == Verdict::KeepsUp {
+        return None;
+    }
+    let course = course(
+        build,
+        machine,
+        Charge::rested(build.start),
+        ruling.reserve.soc,
+    );
+    course
+        .clause(build)
+        .or_else(|| course.reserve_clause(build))
 }
 
 /// What may still be drawn at each running speed alone, for a build that keeps up.

@@ -7,10 +7,16 @@ use crate::quantity::{Amps, Fraction};
 
 /// The verdict in one sentence. `spare` is what may still be drawn at every running speed.
 #[must_use]
-pub fn sentence(ruling: &Ruling, spare: Option<Amps>, lowest: Fraction) -> String {
+pub fn sentence(
+    ruling: &Ruling,
+    spare: Option<Amps>,
+    lowest: Fraction,
+    fails: Option<&str>,
+) -> String {
     if let Some(never) = never_starts(ruling) {
         return never;
     }
+    let fails = fails.map_or(String::new(), |clause| format!("; {clause}"));
     let reserve = format!("the reserve of {}", percent(ruling.reserve.soc));
     match (ruling.verdict, ruling.settles) {
         (Verdict::KeepsUp, Some((charge, least))) => {
@@ -26,13 +32,13 @@ pub fn sentence(ruling: &Ruling, spare: Option<Amps>, lowest: Fraction) -> Strin
             let carried = ruling.shifts_carried.unwrap_or_default();
             let shifts = count(carried, "shift", "shifts");
             format!(
-                "Carries {shifts}: the {} breaks {reserve}; {}.",
+                "Carries {shifts}: the {} breaks {reserve}; {}{fails}.",
                 ordinal(carried + 1),
                 lacking(ruling)
             )
         }
         _ => format!(
-            "Falls short: the first shift takes the charge to {}, under {reserve}; {}.",
+            "Falls short: the first shift takes the charge to {}, under {reserve}; {}{fails}.",
             percent(lowest),
             lacking(ruling)
         ),

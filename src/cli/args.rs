@@ -131,6 +131,9 @@ pub struct CheckArgs {
     /// Show the working of one state
     #[arg(long, value_name = "STATE")]
     pub why: Option<String>,
+    /// Verdicts over a range of air temperatures (default -20 °C to 40 °C)
+    #[arg(long, value_name = "FROM to TO", num_args = 0..=1, require_equals = true, default_missing_value = "-20 °C to 40 °C")]
+    pub season: Option<String>,
     /// For whom the page is made
     #[arg(long = "for", value_name = "NAME")]
     pub made_for: Option<String>,

@@ -5,7 +5,8 @@ use super::input::{self, Opened};
 use super::{DOES_NOT, KEEPS_UP, output};
 use ampledger::catalog::Catalogs;
 use ampledger::check::answer::{Check, Verdict};
-use ampledger::check::{Checked, Wanted, check};
+use ampledger::check::{Checked, Wanted, check, season};
+use ampledger::quantity::Celsius;
 use ampledger::report::Report;
 use ampledger::resolve;
 use ampledger::view;
@@ -29,6 +30,9 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
     }
     let catalogs = input::catalogs(common)?;
     let opened = input::build(&args.builds[0], &args.build, &catalogs)?;
+    if let Some(range) = &args.season {
+        return over_season(&opened, range, common);
+    }
     let wanted = Wanted {
         trace: args.trace.is_some() || common.format == Format::Html,
     };
@@ -98,6 +102,37 @@ fn with_kit(
         source: opened.source.clone(),
         build,
     })
+}
+
+/// The verdicts over a range of air temperatures.
+fn over_season(opened: &Opened, range: &str, common: &Common) -> anyhow::Result<u8> {
+    let ends: Vec<&str> = range.split(" to ").collect();
+    let [from, to] = ends.as_slice() else {
+        bail!("--season `{range}`: write it like `-20 °C to 40 °C`");
+    };
+    let (from, to) = (
+        input::value::<Celsius>("--season", from)?,
+        input::value::<Celsius>("--season", to)?,
+    );
+    if from > to {
+        bail!("--season `{range}`: the colder temperature comes first");
+    }
+    let answer = season::season(
+        &opened.build,
+        season::Range {
+            from,
+            to,
+            ..season::Range::default()
+        },
+    )
+    .with_context(|| opened.source.name.clone())?;
+    output::write(common, || view::season(&answer), &answer)?;
+    Ok(answer
+        .rows
+        .iter()
+        .map(|row| code(row.verdict))
+        .max()
+        .unwrap_or(KEEPS_UP))
 }
 
 /// Several builds: each answer after the other; JSON as a list.

@@ -19,7 +19,7 @@
 //! ```
 
 use super::{
-    AmpHours, Amps, Celsius, Fraction, Grams, Henries, Hertz, Hours, Kelvins, Litres, Metres,
+    AmpHours, Amps, Celsius, Days, Fraction, Grams, Henries, Hertz, Hours, Kelvins, Litres, Metres,
     Minutes, Money, Ohms, Rpm, SquareMm, Volts, VoltsPerKelvin, VoltsPerRpm, WattHours, Watts,
 };
 
@@ -66,6 +66,7 @@ written! {
     WattHours "Wh" "Wh" 1.0 3;
     Hours "h" "h" 1.0 3;
     Minutes "min" "min" 1.0 3;
+    Days "days" "d" 1.0 2;
     Metres "m" "m" 1.0 3;
     SquareMm "mm²" "mm2" 1.0 3;
     Celsius "°C" "°C" 1.0 3;

@@ -110,6 +110,10 @@ quantity!(
     Minutes
 );
 quantity!(
+    /// A duration as storage is counted, days.
+    Days
+);
+quantity!(
     /// A length, metres.
     Metres
 );
@@ -198,6 +202,12 @@ impl Fraction {
 pub struct Tolerance {
     /// Share of the stated value: 0.08 for ± 8 %. A tolerance given in units is turned into this.
     pub relative: Fraction,
+}
+
+impl From<Hours> for Days {
+    fn from(time: Hours) -> Days {
+        Days(time.0 / 24.0)
+    }
 }
 
 impl From<Hours> for Minutes {

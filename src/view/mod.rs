@@ -9,7 +9,9 @@ pub mod charts;
 pub mod check;
 pub mod compare;
 pub mod quote;
+pub mod season;
 pub mod states;
 
 pub use check::{Options, check};
 pub use compare::compare;
+pub use season::season;
