@@ -71,8 +71,6 @@ pub enum Fault {
     },
     /// Figures of a winding that do not go together.
     Winding(ConstantsError),
-    /// Bench readings that no winding follows from.
-    Readings(String),
     /// Points that make no output curve.
     Curve(CurveError),
     /// Alternating current into the battery.
@@ -157,7 +155,6 @@ impl fmt::Display for Fault {
                 write!(f, "neither `winding`, `alternator` nor `part`")
             }
             Fault::Winding(error) => write!(f, "{error}"),
-            Fault::Readings(why) => write!(f, "no winding follows from `readings`: {why}"),
             Fault::Curve(error) => write!(f, "{error}"),
             other => other.connection(f),
         }
@@ -264,7 +261,7 @@ impl Fault {
         match self {
             Fault::Missing { .. } | Fault::WindingOrAlternator { both: false } => "incomplete",
             Fault::UnknownPart { .. } | Fault::UnknownName { .. } => "not there",
-            Fault::Winding(_) | Fault::Readings(_) => "these figures",
+            Fault::Winding(_) => "these figures",
             Fault::EmptyShift | Fault::NoTime { .. } => "no time",
             Fault::NameTwice { .. } => "here again",
             Fault::OnBrakingWinding { .. } | Fault::BrakingFeedsBattery => "refused for safety",

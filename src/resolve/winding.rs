@@ -4,7 +4,7 @@ use super::Fault;
 use super::charging::Place;
 use super::context::{Context, Layers, PRACTICE, by_rule, of_system};
 use crate::build::{Figure, Origin, WindingSource};
-use crate::description::{ChargingText, RatedText, WindingText, Written};
+use crate::description::{ChargingText, RatedText, ReadingText, WindingText, Written};
 use crate::quantity::{Amps, Celsius, Fraction, Henries, Ohms, Rpm, Tolerance, Volts, format};
 use crate::source::{
     Constants, ConstantsError, Known, Magnets, Phases, Rating, Rectifier, Working, rectified_dc,
@@ -151,43 +151,81 @@ fn magnets(
         })
 }
 
-/// Inductance or rating: of one layer, so that one written beside `part:` displaces that of the part. Within a layer a
-/// measured inductance comes before a rating, which then only checks it.
+/// Inductance, bench readings or rating: of one layer, so that those written beside `part:` displace those of the part.
 fn way(context: &mut Context, layers: &Layers<ChargingText>, place: Place) -> Option<Way> {
     let at = format!("{}.winding", place.path);
     let texts = std::iter::once((layers.own, &Origin::Stated))
         .chain(layers.parts.iter().map(|p| (&p.read.text, &p.origin)));
     for (text, origin) in texts {
-        let Some(winding) = &text.winding else {
-            continue;
-        };
-        if let Some(found) = &winding.inductance {
-            let usual = of_system(RATED_BUS, place.cells);
-            let rating = winding.rated.as_ref();
-            let path = format!("{at}.inductance");
-            return Some(Way {
-                inductance: Some(super::context::figure(found, origin.clone(), &path)),
-                rated: None,
-                rating: rating.map(|r| rating_of(&r.value, r.value.volts.unwrap_or(usual))),
-            });
-        }
-        if let Some(found) = &winding.rated {
-            let bus = rated_bus(context, found.value.volts, place);
-            return Some(Way {
-                inductance: None,
-                rated: Some(Figure {
-                    value: (found.value.amps, found.value.rpm, bus),
-                    origin: origin.clone(),
-                    tolerance: found.tolerance,
-                    path: format!("{at}.rated"),
-                }),
-                rating: Some(rating_of(&found.value, bus)),
-            });
+        let winding = text.winding.as_ref();
+        if let Some(way) = winding.and_then(|w| way_of(context, w, origin, place)) {
+            return Some(way);
         }
     }
     let keys = "`rated`, `inductance` or `readings`";
     context.fault(at, Fault::Missing { keys });
     None
+}
+
+/// The way of one layer: a measured inductance before bench readings, and those before a rating.
+fn way_of(context: &mut Context, text: &WindingText, origin: &Origin, place: Place) -> Option<Way> {
+    let at = format!("{}.winding", place.path);
+    if let Some(found) = &text.inductance {
+        let usual = of_system(RATED_BUS, place.cells);
+        let rating = text.rated.as_ref();
+        let path = format!("{at}.inductance");
+        return Some(Way {
+            inductance: Some(super::context::figure(found, origin.clone(), &path)),
+            rated: None,
+            rating: rating.map(|r| rating_of(&r.value, r.value.volts.unwrap_or(usual))),
+        });
+    }
+    let (rating, tolerance, path) = match (strongest(&text.readings), &text.rated) {
+        (Some((index, row)), _) => {
+            if text.readings.len() > 1 {
+                context.notes.push(format!(
+                    "{}: of its {} bench readings the one of most amps gives the inductance",
+                    place.name,
+                    text.readings.len()
+                ));
+            }
+            let rating = Rating {
+                amps: row.amps.value,
+                rpm: row.rpm.value,
+                bus: row.volts.value,
+            };
+            (
+                rating,
+                row.amps.tolerance,
+                format!("{at}.readings[{index}].amps"),
+            )
+        }
+        (None, Some(found)) => {
+            let bus = rated_bus(context, found.value.volts, place);
+            (
+                rating_of(&found.value, bus),
+                found.tolerance,
+                format!("{at}.rated"),
+            )
+        }
+        (None, None) => return None,
+    };
+    Some(Way {
+        inductance: None,
+        rated: Some(Figure {
+            value: (rating.amps, rating.rpm, rating.bus),
+            origin: origin.clone(),
+            tolerance,
+            path,
+        }),
+        rating: Some(rating),
+    })
+}
+
+/// The reading of most amps: the one that the inductance decides most. Each is a rated point of its own.
+fn strongest(readings: &[ReadingText]) -> Option<(usize, &ReadingText)> {
+    let rows = readings.iter().enumerate();
+    rows.max_by(|(_, a), (_, b)| a.amps.value.0.total_cmp(&b.amps.value.0))
 }
 
 fn rating_of(text: &RatedText, bus: Volts) -> Rating {
