@@ -12,6 +12,7 @@ mod ruling;
 pub mod season;
 mod sentence;
 mod storage;
+pub mod why;
 
 pub use cautions::cautions;
 pub use course::{Course, Rundown, course, rundown};

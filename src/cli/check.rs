@@ -30,6 +30,9 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
     }
     let catalogs = input::catalogs(common)?;
     let opened = input::build(&args.builds[0], &args.build, &catalogs)?;
+    if let Some(state) = &args.why {
+        return super::why::run(&opened, state, common);
+    }
     if let Some(range) = &args.season {
         return over_season(&opened, range, common);
     }

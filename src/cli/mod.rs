@@ -5,6 +5,7 @@ pub mod args;
 mod check;
 mod input;
 mod output;
+mod why;
 
 use ampledger::problem::Refusal;
 use args::{Arguments, Command};

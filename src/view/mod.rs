@@ -11,7 +11,9 @@ pub mod compare;
 pub mod quote;
 pub mod season;
 pub mod states;
+pub mod why;
 
 pub use check::{Options, check};
 pub use compare::compare;
 pub use season::season;
+pub use why::why;
