@@ -16,5 +16,6 @@ pub mod quantity;
 pub mod report;
 pub mod resolve;
 pub mod root;
+pub mod size;
 pub mod source;
 pub mod view;

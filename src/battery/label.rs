@@ -141,4 +141,11 @@ impl Chemistry {
     pub fn capacity_from_cranking(self, cold_cranking: Amps) -> AmpHours {
         AmpHours(cold_cranking.0 / self.defaults().cranking)
     }
+
+    /// The cold-cranking rating of a battery of which only the 20 h capacity is known: the same
+    /// ratio the other way round.
+    #[must_use]
+    pub fn cranking_from_capacity(self, capacity: AmpHours) -> Amps {
+        Amps(capacity.0 * self.defaults().cranking)
+    }
 }

@@ -5,6 +5,7 @@
 //! edge the settled cycle just touches the reserve. So the cycle is begun where it is lowest, at
 //! the reserve, and the current sought with which it comes back to it.
 
+use super::Turn;
 use crate::battery::Charge;
 use crate::build::State;
 use crate::ledger::Machine;
@@ -25,8 +26,6 @@ const REFINED: u32 = 3;
 const CLOSED: f64 = 1e-9;
 /// Width, as a share of the current, to which it is found.
 const FOUND_TO: f64 = 2e-5;
-/// Times the lowest point of the cycle is looked for anew.
-const MOST_TURNS: u32 = 4;
 
 /// What is lacking.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -49,13 +48,6 @@ pub enum Spread {
     Everywhere,
     /// In one state only.
     In(State),
-}
-
-/// A cycle begun at its lowest point with the reserve.
-#[derive(Clone, Copy, Debug)]
-struct Turn {
-    from: usize,
-    depletion: Fraction,
 }
 
 impl Machine {
@@ -111,12 +103,11 @@ impl Machine {
             machine: self.clone(),
             spread,
             reserve,
-            turn: Turn {
-                from: 0,
-                depletion: Fraction::ZERO,
-            },
+            turn: Turn::default(),
         };
-        let touching = search.current_for(0.0, |search| search.gain_touching())?;
+        let touching = search.current_for(0.0, |search| {
+            search.turn.gain(&search.machine, search.reserve).0
+        })?;
         if !self.has_constant_powers() {
             return Some(Amps(touching));
         }
@@ -240,40 +231,5 @@ impl Search {
             depletion: self.turn.depletion,
         };
         self.machine.pass_around(self.turn.from, begin).end.soc.0 - soc
-    }
-
-    /// Gain of charge over a cycle that just touches the reserve. `turn` carries the lowest
-    /// point and the depletion there from one call to the next.
-    fn gain_touching(&mut self) -> f64 {
-        let (machine, reserve, turn) = (&self.machine, self.reserve, &mut self.turn);
-        let mut start = reserve;
-        let mut gain = f64::NAN;
-        for _ in 0..MOST_TURNS {
-            let passed = machine.pass_around(
-                turn.from,
-                Charge {
-                    soc: start,
-                    depletion: turn.depletion,
-                },
-            );
-            gain = passed.end.soc.0 - start.0;
-            turn.depletion = passed.end.depletion;
-            let under = reserve.0 - passed.lowest.0;
-            if under <= 1e-10 {
-                break;
-            }
-            let lowest_at = passed.lowest_after % machine.cycle.len();
-            if lowest_at == turn.from {
-                if gain < 0.0 && (passed.lowest.0 - passed.end.soc.0).abs() < 1e-12 {
-                    break;
-                }
-                start += Fraction(under);
-            } else {
-                turn.from = lowest_at;
-                turn.depletion = Fraction::ZERO;
-                start = reserve;
-            }
-        }
-        gain
     }
 }

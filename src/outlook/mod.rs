@@ -3,9 +3,11 @@
 
 mod lacking;
 mod settle;
+mod touching;
 
 #[cfg(test)]
 mod tests;
 
 pub use lacking::{Lacking, Spread};
 pub use settle::Outlook;
+pub use touching::Turn;

@@ -1,0 +1,99 @@
+//! Filament lamps changed for LED of equal light.
+
+use super::margin::Margin;
+use super::nearest::{capital, largest};
+use crate::build::{Accessory, Build, Draw};
+use crate::check::answer::Change;
+use crate::quantity::format::text;
+use crate::quantity::{Fraction, Volts, Watts};
+
+/// Lumens a watt of an LED lamp. Common practice, no source: 80 to 110 at the lamp; the safe end.
+const LED_LUMENS_A_WATT: f64 = 80.0;
+/// Lumens a watt of a filament lamp that states no lumens: a halogen headlamp's. UN Regulation 37,
+/// category H7: 1500 lm at 58 W; common practice for others.
+const FILAMENT_LUMENS_A_WATT: f64 = 25.0;
+
+/// Power of an LED lamp as bright as a filament lamp; none for anything else.
+///
+/// ```text
+/// P = Φ / 80 lm/W,   Φ as stated, or 25 lm/W times the filament's power
+/// ```
+/// where Φ luminous flux of one lamp. Valid for: lamps at their stated volts. Source: common
+/// practice, the ends of the bands that ask for more power.
+#[must_use]
+pub fn led_power(accessory: &Accessory) -> Option<Watts> {
+    let Draw::Filament { power, .. } = accessory.draw.value else {
+        return None;
+    };
+    let light = accessory
+        .lumens
+        .map_or(FILAMENT_LUMENS_A_WATT * power.0, |l| l.0);
+    let watts = (10.0 * light / LED_LUMENS_A_WATT).ceil() / 10.0;
+    (watts < power.0).then_some(Watts(watts))
+}
+
+/// The build with some lamps changed.
+fn with_led(build: &Build, lamps: &[usize]) -> Build {
+    let mut changed = build.clone();
+    let low = Volts(1.75 * f64::from(build.cells()));
+    for index in lamps {
+        if let Some(accessory) = changed.accessories.get_mut(*index)
+            && let Some(power) = led_power(accessory)
+        {
+            accessory.draw.value = Draw::Power(power);
+            if !accessory.works.stated {
+                accessory.works.low = Some(low);
+            }
+        }
+    }
+    changed
+}
+
+/// Filament lamps as LED: the one that takes most, where that is enough; else all of them.
+pub(super) fn led(build: &Build, margin: &mut Margin) -> Option<Change> {
+    let lamps: Vec<usize> = largest(build)
+        .into_iter()
+        .map(|(index, _)| index)
+        .filter(|i| {
+            build
+                .accessories
+                .get(*i)
+                .is_some_and(|a| led_power(a).is_some())
+        })
+        .collect();
+    let (first, _) = lamps.split_first()?;
+    let holds = |margin: &mut Margin, lamps: &[usize]| margin.of(&with_led(build, lamps)) >= 0.0;
+    let enough: &[usize] = if holds(margin, &[*first]) {
+        &lamps[..1]
+    } else if lamps.len() > 1 && holds(margin, &lamps) {
+        &lamps
+    } else {
+        return None;
+    };
+    let changed = with_led(build, enough);
+    if build.start < Fraction::ONE && !super::keeps_up(&changed) {
+        return None;
+    }
+    let words = match enough {
+        [one] => {
+            let accessory = build.accessories.get(*one)?;
+            let power = led_power(accessory)?;
+            let count = if accessory.count > 1 {
+                format!("{} x ", accessory.count)
+            } else {
+                String::new()
+            };
+            format!(
+                "{} as LED of equal light, {count}{}",
+                accessory.name,
+                text(power)
+            )
+        }
+        all => format!("all {} filament lamps as LED of equal light", all.len()),
+    };
+    Some(Change {
+        text: capital(&words),
+        set: None,
+        settles_soc: None,
+    })
+}
