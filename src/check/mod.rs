@@ -113,7 +113,7 @@ pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
         accessories,
         circuits: Vec::new(),
         spare_a: spare,
-        changes: Vec::new(),
+        changes: crate::size::nearest(build, &ruling),
         assumed: build.assumed.clone(),
         cautions: cautions(build),
         notes: build.notes.clone(),
