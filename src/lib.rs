@@ -19,3 +19,4 @@ pub mod root;
 pub mod size;
 pub mod source;
 pub mod view;
+pub mod wire;

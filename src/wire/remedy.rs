@@ -1,0 +1,174 @@
+//! Where no standard pair of wire and fuse will do: which constraint cannot be met, and what would.
+
+use super::ampacity::Laid;
+use super::answer::Unmet;
+use super::conductor::Gauge;
+use super::demand::Demand;
+use super::size::{Miss, NoChoice, Settled, choose};
+use super::tables::Tables;
+use crate::quantity::{Celsius, Fraction, Metres, format};
+
+/// Most wires that a load is split over.
+const MOST_WIRES: u32 = 8;
+/// Halvings in the search for the longest run.
+const HALVINGS: u32 = 40;
+
+/// A demand without a choice, told.
+pub(super) fn unmet(
+    tables: &Tables,
+    gauge: Gauge,
+    demand: &Demand,
+    laid: &Laid,
+    why: &NoChoice,
+) -> Unmet {
+    let (impossible, amps) = match why {
+        NoChoice::Insulation(class) => (vec![no_class(tables, *class)], None),
+        NoChoice::NoSizes => (vec!["the tables hold no size of wire".to_owned()], None),
+        NoChoice::Thickest(settled, misses) => {
+            let all = misses.iter().map(|miss| told(miss, settled, demand));
+            (all.collect(), Some(settled.amps))
+        }
+    };
+    Unmet {
+        name: demand.name.clone(),
+        accessories: demand.members.iter().map(|m| m.name.clone()).collect(),
+        amps,
+        run_m: demand.run,
+        impossible,
+        would: would(tables, gauge, demand, laid, why),
+    }
+}
+
+fn no_class(tables: &Tables, class: Celsius) -> String {
+    let lowest = tables.ampacity.classes().next().unwrap_or(Celsius::ZERO);
+    format!(
+        "ampacity: the table begins at insulation of {}, this is {}",
+        format::temperature(lowest),
+        format::temperature(class)
+    )
+}
+
+/// One constraint missed by the thickest wire.
+fn told(miss: &Miss, thickest: &Settled, demand: &Demand) -> String {
+    let wire = thickest.wire.name();
+    match miss {
+        Miss::NoFuse { amps, most } => format!(
+            "fuse and load: the load is {}, the largest standard fuse carries {}",
+            format::text(*amps),
+            format::text(*most)
+        ),
+        Miss::Surge { accessory, peak } => format!(
+            "fuse and load: no standard fuse is sure to hold the {} at which {accessory} starts",
+            format::text(*peak)
+        ),
+        Miss::Ampacity { fuse, allows } => format!(
+            "fuse and wire: the load needs a fuse of {}, {wire}, the thickest wire, may carry {}",
+            format::text(*fuse),
+            format::text(*allows)
+        ),
+        Miss::Drop { lost, allowed } => format!(
+            "volts lost: {wire}, the thickest wire, loses {} over {}, {} are allowed",
+            format::text(*lost),
+            format::text(demand.length()),
+            format::text(*allowed)
+        ),
+    }
+}
+
+/// Single changes with which a choice exists, each tried.
+fn would(
+    tables: &Tables,
+    gauge: Gauge,
+    demand: &Demand,
+    laid: &Laid,
+    why: &NoChoice,
+) -> Vec<String> {
+    let holds = |demand: &Demand, laid: &Laid| choose(tables, gauge, demand, laid).is_ok();
+    let mut ways = Vec::new();
+    let better = tables
+        .ampacity
+        .classes()
+        .filter(|class| *class > laid.insulation)
+        .find(|class| {
+            holds(
+                demand,
+                &Laid {
+                    insulation: *class,
+                    ..*laid
+                },
+            )
+        });
+    if let Some(class) = better {
+        ways.push(format!("insulation of {}", format::temperature(class)));
+    }
+    if laid.engine_space
+        && holds(
+            demand,
+            &Laid {
+                engine_space: false,
+                ..*laid
+            },
+        )
+    {
+        ways.push("a way outside the engine space".to_owned());
+    }
+    if laid.bundle > 2 && holds(demand, &Laid { bundle: 1, ..*laid }) {
+        ways.push("the wire by itself, in no bundle".to_owned());
+    }
+    let split = (2..=MOST_WIRES).find(|n| {
+        let share = Fraction(1.0 / f64::from(*n));
+        holds(
+            &Demand {
+                share,
+                ..demand.clone()
+            },
+            laid,
+        )
+    });
+    if let Some(wires) = split {
+        ways.push(format!(
+            "the load split evenly over {wires} wires, each with its own fuse"
+        ));
+    }
+    if let Some(run) = longest_run(&holds, demand, laid) {
+        ways.push(format!("a run of at most {} m", format::fixed(run, 1)));
+    }
+    if let NoChoice::Thickest(settled, misses) = why {
+        if matches!(misses.as_slice(), [Miss::Drop { .. }]) {
+            let share = Fraction(settled.lost / demand.system);
+            ways.push(format!("`max_drop: {}`", format::text(round_up(share))));
+        }
+    }
+    ways
+}
+
+/// The longest run with a choice, in whole decimetres; none where even no length helps.
+fn longest_run(
+    holds: &impl Fn(&Demand, &Laid) -> bool,
+    demand: &Demand,
+    laid: &Laid,
+) -> Option<Metres> {
+    let with = |run: f64| Demand {
+        run: Metres(run),
+        ..demand.clone()
+    };
+    if !holds(&with(0.0), laid) {
+        return None;
+    }
+    let (mut low, mut high) = (0.0, demand.run.0);
+    for _ in 0..HALVINGS {
+        let middle = 0.5 * (low + high);
+        if holds(&with(middle), laid) {
+            low = middle
+        } else {
+            high = middle
+        }
+    }
+    let run = (low * 10.0 + 1e-6).floor() / 10.0;
+    (run > 0.0).then_some(Metres(run))
+}
+
+/// A share as the next whole tenth of a per cent.
+fn round_up(share: Fraction) -> Fraction {
+    Fraction((share.0 * 1000.0).ceil() / 1000.0)
+}
