@@ -12,8 +12,10 @@ pub mod quote;
 pub mod season;
 pub mod states;
 pub mod why;
+pub mod wire;
 
 pub use check::{Options, check};
 pub use compare::compare;
 pub use season::season;
 pub use why::why;
+pub use wire::wire;

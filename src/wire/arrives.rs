@@ -5,12 +5,11 @@ use super::demand::{Demand, Member};
 use super::size::Settled;
 use super::volts::Seen;
 use crate::build::{Accessory, Build, Draw};
+use crate::circuit::HOT_COIL;
 use crate::description::accessory::LoadKind;
 use crate::load::{coil_at, filament_light};
-use crate::quantity::{Amps, Celsius, Ohms, Volts};
+use crate::quantity::{Amps, Ohms, Volts};
 
-/// Temperature of a coil at work. Common practice, no source.
-const HOT_COIL: Celsius = Celsius(100.0);
 /// Rounds in which volts and currents settle.
 const ROUNDS: usize = 80;
 

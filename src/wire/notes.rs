@@ -40,19 +40,9 @@ pub(super) fn sources(grounds: &[Ground]) -> Vec<SourceRow> {
 
 /// What the reader should know of the figures; figures from memory are named first.
 pub(super) fn notes(build: &Build, demands: &[Demand], grounds: &[Ground]) -> Vec<String> {
-    let mut notes: Vec<String> = Vec::new();
-    for ground in grounds {
-        let text = match ground.certainty {
-            Certainty::Memory => format!("from memory: {}: {}", ground.what, ground.source),
-            Certainty::CommonPractice => {
-                format!("common practice: {}: {}", ground.what, ground.source)
-            }
-            _ => continue,
-        };
-        if !notes.contains(&text) {
-            notes.push(text);
-        }
-    }
+    let mut notes = Vec::new();
+    notes.extend(of_certainty(grounds, Certainty::Memory));
+    notes.extend(of_certainty(grounds, Certainty::CommonPractice));
     if demands.is_empty() {
         return notes;
     }
@@ -67,6 +57,18 @@ pub(super) fn notes(build: &Build, demands: &[Demand], grounds: &[Ground]) -> Ve
     }
     notes.extend(without_surge(build, demands));
     notes
+}
+
+/// The grounds of one certainty in one line, each once.
+fn of_certainty(grounds: &[Ground], certainty: Certainty) -> Option<String> {
+    let mut texts: Vec<String> = Vec::new();
+    for ground in grounds.iter().filter(|g| g.certainty == certainty) {
+        let text = format!("{} ({})", ground.what, ground.source);
+        if !texts.contains(&text) {
+            texts.push(text);
+        }
+    }
+    (!texts.is_empty()).then(|| format!("{certainty}: {}", texts.join("; ")))
 }
 
 /// Lamps and motors whose surge is not stated.

@@ -14,7 +14,13 @@ pub(super) fn binds(choice: &Choice, tables: &Tables, gauge: super::Gauge) -> St
         let least = tables.conductors.least(gauge);
         return least.map_or_else(
             || "least size: the thinnest of the list".to_owned(),
-            |least| format!("least size: {}", least.ground.source),
+            |least| {
+                let wire = choice.settled.wire.name();
+                format!(
+                    "least size: {wire} is the thinnest laid ({})",
+                    least.ground.source
+                )
+            },
         );
     };
     let all: Vec<String> = misses.iter().map(|miss| missed(miss, thinner)).collect();
@@ -67,7 +73,7 @@ fn load(build: &Build, demand: &Demand, choice: &Choice) -> String {
         let high = seen.map_or_else(String::new, |s| format::text(s.high));
         let how = match build.accessories.get(member.index).map(|a| a.draw.value) {
             Some(Draw::Power(_)) => format!(
-                "a constant power at {} and less what the wire loses",
+                "a constant power at {} less what the wire loses",
                 format::text(demand.system.min(seen.map_or(demand.system, |s| s.low)))
             ),
             Some(Draw::Current(_)) => "a constant current".to_owned(),
@@ -76,7 +82,10 @@ fn load(build: &Build, demand: &Demand, choice: &Choice) -> String {
         return format!("load: {amps} in {state}, {how}");
     }
     let names: Vec<&str> = demand.members.iter().map(|m| m.name.as_str()).collect();
-    format!("load: {amps} in {state}, {} together", names.join(", "))
+    format!(
+        "load: {amps} in {state}, {} together; the feed is as long as the longest run",
+        names.join(", ")
+    )
 }
 
 fn fuse(fused: &Fused, loading: Fraction) -> String {
@@ -101,7 +110,7 @@ fn surge(fused: &Fused) -> Option<String> {
     Some(match held.opens {
         None => format!("surge: {name} starts at {peak}, which the fuse passes for hours"),
         Some(opens) => format!(
-            "surge: {name} starts at {peak}, in heat as much as {} of it; the fuse holds that for {} at least",
+            "surge: {name} starts at {peak} and heats a fuse like {} of that; the fuse holds it for {} at least",
             short(held.surge.lasts()),
             short(opens)
         ),
@@ -194,5 +203,10 @@ pub(super) fn short(time: Hours) -> String {
     if seconds >= 1.0 {
         return format::duration(time);
     }
-    format!("{:.0} ms", seconds * 1e3)
+    let milliseconds = seconds * 1e3;
+    if milliseconds >= 9.95 {
+        format!("{milliseconds:.0} ms")
+    } else {
+        format!("{milliseconds:.1} ms")
+    }
 }

@@ -4,9 +4,9 @@ use super::ampacity::Laid;
 use super::answer::Unmet;
 use super::conductor::Gauge;
 use super::demand::Demand;
-use super::size::{Miss, NoChoice, Settled, choose};
+use super::size::{Miss, NoChoice, Settled, choose, settle};
 use super::tables::Tables;
-use crate::quantity::{Celsius, Fraction, Metres, format};
+use crate::quantity::{Amps, Celsius, Fraction, Metres, format};
 
 /// Most wires that a load is split over.
 const MOST_WIRES: u32 = 8;
@@ -127,19 +127,41 @@ fn would(
     });
     if let Some(wires) = split {
         ways.push(format!(
-            "the load split evenly over {wires} wires, each with its own fuse"
+            "the load, where it can be parted, split evenly over {wires} wires, each with its own fuse"
         ));
     }
     if let Some(run) = longest_run(&holds, demand, laid) {
         ways.push(format!("a run of at most {} m", format::fixed(run, 1)));
     }
     if let NoChoice::Thickest(settled, misses) = why {
+        if matches!(misses.first(), Some(Miss::NoFuse { .. })) {
+            ways.extend(beyond_fuses(tables, gauge, demand, laid));
+        }
         if matches!(misses.as_slice(), [Miss::Drop { .. }]) {
             let share = Fraction(settled.lost / demand.system);
             ways.push(format!("`max_drop: {}`", format::text(round_up(share))));
         }
     }
     ways
+}
+
+/// A fuse or breaker beyond the list, and the thinnest wire that it protects and that loses no more
+/// volts than allowed.
+fn beyond_fuses(tables: &Tables, gauge: Gauge, demand: &Demand, laid: &Laid) -> Option<String> {
+    let place = tables.ampacity.place(laid)?;
+    let (loading, _) = tables.fuses.loading()?;
+    let mut sizes = tables.conductors.offered(gauge).into_iter();
+    let settled = sizes.find_map(|wire| {
+        let settled = settle(tables, demand, &place, wire)?;
+        let carries = settled.amps.0 / loading.0 <= settled.allows.0;
+        (carries && settled.lost <= demand.allowed()).then_some(settled)
+    })?;
+    Some(format!(
+        "a bolted-down fuse or a breaker, neither in these tables, of {} to {} on {}",
+        format::text(Amps(settled.amps.0 / loading.0)),
+        format::text(settled.allows),
+        settled.wire.name()
+    ))
 }
 
 /// The longest run with a choice, in whole decimetres; none where even no length helps.

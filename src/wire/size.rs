@@ -158,7 +158,12 @@ pub(super) fn choose(
 /// A wire with its current settled: what is drawn depends on the volts lost, they on the wire's
 /// resistance, that on its temperature, and that on the current. Every round raises all of them, so
 /// they close in from below; copper hotter than its insulation bears is taken as that hot.
-fn settle(tables: &Tables, demand: &Demand, place: &Place, wire: Conductor) -> Option<Settled> {
+pub(super) fn settle(
+    tables: &Tables,
+    demand: &Demand,
+    place: &Place,
+    wire: Conductor,
+) -> Option<Settled> {
     let (table, ground) = tables.ampacity.single(wire.section, place.class)?;
     let allows = table * place.share();
     let mut lost = Volts::ZERO;

@@ -3,6 +3,7 @@
 use crate::battery::Charge;
 use crate::build::{Accessory, Build, State};
 use crate::check::reserve;
+use crate::circuit::{Circuit, CircuitError, circuits, is_coil};
 use crate::ledger::{Machine, connect};
 use crate::quantity::{Fraction, Volts};
 
@@ -25,6 +26,7 @@ pub(super) struct Supplies<'a> {
     build: &'a Build,
     machine: Option<Machine>,
     lowest: Charge,
+    circuits: Result<Vec<Circuit>, CircuitError>,
 }
 
 impl<'a> Supplies<'a> {
@@ -38,22 +40,51 @@ impl<'a> Supplies<'a> {
             build,
             machine,
             lowest,
+            circuits: circuits(build),
         }
     }
 
-    /// What an accessory on the battery sees in each state in which it is on, in the order of the
-    /// speeds, then stopped; while cranking only if it is on in no other.
+    /// What an accessory sees in each state in which it is on, in the order of the speeds, then
+    /// stopped; while cranking only if it is on in no other.
     ///
     /// # Errors
-    /// Why it sees none.
+    /// Why it sees nothing.
     pub(super) fn seen(&self, index: usize) -> Result<Vec<Seen>, String> {
-        let (Some(machine), Some(accessory)) = (&self.machine, self.build.accessories.get(index))
-        else {
-            return Err("there is no battery".to_owned());
+        let Some(accessory) = self.build.accessories.get(index) else {
+            return Err("it is not in the build".to_owned());
         };
-        if accessory.circuit.is_some() {
-            return Err("it hangs on a circuit of its own".to_owned());
+        match &self.machine {
+            Some(machine) if accessory.circuit.is_none() => Ok(self.on_battery(machine, accessory)),
+            _ => self.on_circuit(index, accessory),
         }
+    }
+
+    /// On a winding's own circuit: rms volts where they heat a filament or a resistance, mean volts
+    /// of a coil.
+    fn on_circuit(&self, index: usize, accessory: &Accessory) -> Result<Vec<Seen>, String> {
+        let circuits = self.circuits.as_ref().map_err(ToString::to_string)?;
+        let hung = circuits.iter().flat_map(|c| &c.accessories);
+        let coil = is_coil(accessory);
+        Ok(hung
+            .filter(|hung| hung.accessory == index)
+            .flat_map(|hung| &hung.states)
+            .filter_map(|at| {
+                let speed = self.build.speeds.iter().position(|s| s.name == at.state)?;
+                let (low, high) = if coil {
+                    (at.volts, at.highest)
+                } else {
+                    (at.heating, at.heating_highest)
+                };
+                Some(Seen {
+                    state: State::Running(speed),
+                    low,
+                    high: high.max(low),
+                })
+            })
+            .collect())
+    }
+
+    fn on_battery(&self, machine: &Machine, accessory: &Accessory) -> Vec<Seen> {
         let alone = alone(self.build, accessory);
         let cells = self.build.cells();
         let at = |build: &Build, state, charge| {
@@ -69,7 +100,7 @@ impl<'a> Supplies<'a> {
                 high: full.max(self.setpoint(state)),
             }
         });
-        Ok(seen.collect())
+        seen.collect()
     }
 
     /// The highest setpoint on the battery bus while the engine runs.
