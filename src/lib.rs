@@ -7,6 +7,7 @@ pub mod catalog;
 pub mod chart;
 pub mod check;
 pub mod circuit;
+pub mod curve;
 pub mod description;
 pub mod ledger;
 pub mod load;

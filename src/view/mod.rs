@@ -8,6 +8,7 @@ pub mod accessories;
 pub mod charts;
 pub mod check;
 pub mod compare;
+pub mod curve;
 pub mod quote;
 pub mod season;
 pub mod states;
@@ -16,6 +17,7 @@ pub mod wire;
 
 pub use check::{Options, check};
 pub use compare::compare;
+pub use curve::curve;
 pub use season::season;
 pub use why::why;
 pub use wire::wire;
