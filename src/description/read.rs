@@ -143,6 +143,9 @@ fn lowered<R: DeserializeOwned, T>(
     mut problems: Problems,
     lower: impl FnOnce(&mut Lower<'_>, &Map<R>) -> Option<T>,
 ) -> Result<(T, Source), Refusal> {
+    if problems.left_out() > 0 {
+        return Err(Refusal::new(source, problems));
+    }
     let root: Map<R> = match serde_yaml::from_str(&source.text) {
         Ok(root) => root,
         Err(e) => {
@@ -177,5 +180,6 @@ fn second_reader(text: &str, e: &serde_yaml::Error) -> Problem {
         .unwrap_or(&what)
         .replace('`', "\"");
     let hint = Some("check the indentation and the brackets of this line");
-    Problem::text(TextProblem::Syntax { what, hint }, at..end)
+    let opened = None;
+    Problem::text(TextProblem::Syntax { what, hint, opened }, at..end)
 }

@@ -1,8 +1,12 @@
 //! One pass over a file's YAML events: where every value stands, and everything that is refused before a key means anything.
 
+mod syntax;
+
+pub(super) use syntax::tab_near;
+
 use super::places::{Child, Content, Key, Place, Places};
 use crate::problem::{Problem, Problems, TextProblem, text::MOST_DEEP, text::MOST_VALUES};
-use saphyr_parser::{Event, Parser, ScalarStyle, ScanError, Span};
+use saphyr_parser::{Event, Parser, ScalarStyle, Span};
 use std::collections::BTreeMap;
 use std::ops::Range;
 
@@ -169,7 +173,7 @@ impl<'a> Scan<'a> {
         if self.wants_key() {
             return self.key(text, plain, range);
         }
-        let range = self.value_only(range);
+        let range = self.value_only(range, style, anchor > 0);
         self.places.places.push(Place {
             span: range,
             content: Content::Scalar {
@@ -193,10 +197,22 @@ impl<'a> Scan<'a> {
         Ok(())
     }
 
-    /// The span without line ends after it (a block of lines reaches to the next key).
-    fn value_only(&self, range: Range<usize>) -> Range<usize> {
+    /// The value alone: without an anchor before it, and without space or a remark after it.
+    fn value_only(&self, range: Range<usize>, style: ScalarStyle, anchored: bool) -> Range<usize> {
         let written = self.text.get(range.clone()).unwrap_or_default();
-        range.start..range.start + written.trim_end().len()
+        let anchor = if anchored && written.starts_with('&') {
+            let name = written.find(char::is_whitespace).unwrap_or(written.len());
+            written.len() - written[name..].trim_start().len()
+        } else {
+            0
+        };
+        let value = &written[anchor..];
+        let length = match style {
+            ScalarStyle::SingleQuoted => quoted_length(value, '\'').unwrap_or(value.len()),
+            ScalarStyle::DoubleQuoted => quoted_length(value, '"').unwrap_or(value.len()),
+            _ => value.trim_end().len(),
+        };
+        range.start + anchor..range.start + anchor + length
     }
 
     fn key(&mut self, text: &str, plain: bool, range: Range<usize>) -> Result<(), Box<Problem>> {
@@ -287,7 +303,17 @@ impl<'a> Scan<'a> {
         let bracket = range.end.checked_sub(1).filter(|_| !range.is_empty());
         let flow =
             bracket.is_some_and(|b| matches!(self.text.as_bytes().get(b), Some(b'[' | b'{')));
-        let start = bracket.filter(|_| flow).unwrap_or(range.end);
+        let dash = || match (&kind, self.open.last().map(|f| &f.kind)) {
+            (
+                FrameKind::List(_),
+                Some(FrameKind::Mapping {
+                    key: Some((key, _)),
+                    ..
+                }),
+            ) => self.first_dash(&key.span, range.end),
+            _ => None,
+        };
+        let start = bracket.filter(|_| flow).or_else(dash).unwrap_or(range.end);
         self.open.push(Frame {
             start,
             anchor,
@@ -297,6 +323,20 @@ impl<'a> Scan<'a> {
             kind,
         });
         Ok(())
+    }
+
+    /// The dash of a list's first entry, which stands on a line of its own after the key; the event tells of the entry.
+    fn first_dash(&self, key: &Range<usize>, entry: usize) -> Option<usize> {
+        let between = self.text.get(key.end..entry)?;
+        let mut at = key.end;
+        for line in between.split_inclusive('\n') {
+            let indent = line.len() - line.trim_start().len();
+            if at > key.end && line[indent..].starts_with('-') {
+                return Some(at + indent);
+            }
+            at += line.len();
+        }
+        None
     }
 
     fn end(&mut self, bracket: usize) {
@@ -363,36 +403,6 @@ impl<'a> Scan<'a> {
             }
         }
     }
-
-    /// A syntax error, told as a tab where it is one.
-    fn syntax(&self, e: &ScanError) -> Problem {
-        let at = self.byte(e.marker().index());
-        if let Some(tab) = tab_near(self.text, at) {
-            return Problem::text(TextProblem::Tab, tab);
-        }
-        let end = self.text[at..]
-            .char_indices()
-            .nth(1)
-            .map_or(self.text.len(), |(i, _)| at + i);
-        let what = e.info().replace(['`', '\''], "\"");
-        let hint = hint(self.text, at, &what);
-        Problem::text(TextProblem::Syntax { what, hint }, at..end)
-    }
-}
-
-/// A tab in the indentation of the line of an error, or of the next.
-pub(super) fn tab_near(text: &str, at: usize) -> Option<Range<usize>> {
-    let start = text[..at].rfind('\n').map_or(0, |n| n + 1);
-    let mut line_start = start;
-    for line in text[start..].split('\n').take(2) {
-        let indent = line.len() - line.trim_start_matches([' ', '\t']).len();
-        if let Some(tab) = line[..indent].find('\t') {
-            let end = tab + line[tab..indent].len();
-            return Some(line_start + tab..line_start + end);
-        }
-        line_start += line.len() + 1;
-    }
-    None
 }
 
 /// A problem that ends the pass.
@@ -400,42 +410,20 @@ fn refused(kind: TextProblem, bytes: Range<usize>) -> Box<Problem> {
     Box::new(Problem::text(kind, bytes))
 }
 
-/// What would put a common slip right.
-fn hint(text: &str, at: usize, what: &str) -> Option<&'static str> {
-    let start = text[..at].rfind('\n').map_or(0, |n| n + 1);
-    let line = text[start..].lines().next().unwrap_or_default();
-    let above = text[..start].lines().next_back().unwrap_or_default();
-    let joined = |line: &str| {
-        let key = line.trim_start_matches([' ', '-']);
-        key.split_once(':').is_some_and(|(k, v)| {
-            !v.is_empty()
-                && !v.starts_with(char::is_whitespace)
-                && k.chars().all(|c| c.is_alphanumeric() || c == '_')
-        })
-    };
-    let unclosed = |open: char, close: char| {
-        text[..at].matches(open).count() > text[..at].matches(close).count()
-    };
-    match what {
-        _ if joined(line) || joined(above) => Some("put a space after the colon: `key: value`"),
-        w if w.contains("mapping values") => {
-            Some("check the indentation, and put a text that holds `: ` into quotes")
+/// Bytes from a quotation mark to the one that ends it: `\'\'` and `\\"` do not.
+fn quoted_length(text: &str, mark: char) -> Option<usize> {
+    let mut chars = text.char_indices().skip(1).peekable();
+    while let Some((at, c)) = chars.next() {
+        match c {
+            '\\' if mark == '"' => _ = chars.next(),
+            c if c == mark => match chars.peek() {
+                Some((_, '\'')) if mark == '\'' => _ = chars.next(),
+                _ => return Some(at + 1),
+            },
+            _ => {}
         }
-        w if w.contains("quoted scalar") => Some("close the quotation mark"),
-        _ if unclosed('[', ']') => {
-            Some("close the bracket `[` with `]`, and put a comma between entries")
-        }
-        _ if unclosed('{', '}') => {
-            Some("close the brace `{` with `}`, and put a comma between entries")
-        }
-        w if w.contains("unexpected character") => {
-            Some("put a text that begins with this character into quotes")
-        }
-        w if w.contains("unknown anchor") => {
-            Some("an alias `*name` needs an anchor `&name` before it")
-        }
-        _ => Some("check the indentation and the brackets of this line"),
     }
+    None
 }
 
 #[cfg(test)]

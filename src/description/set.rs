@@ -1,7 +1,7 @@
 //! `--set PATH=VALUE`: puts a value into the text where its path stands, so that all else is read as if it were written there.
 
 use super::path::{self, Step};
-use super::places::{Content, Found};
+use super::places::{Child, Content, Found};
 use super::{open, scan};
 use crate::problem::{Problem, Problems, Refusal, SetKind, SetProblem, Shape, Source, Splice};
 use std::ops::Range;
@@ -12,7 +12,10 @@ pub struct Assignment {
     /// As given: `engine.speeds.idle=1900 rpm`.
     pub text: String,
     path: Vec<Step>,
+    /// The value, fit to stand anywhere.
     value: String,
+    /// The same in braces, where it may be one key and its value.
+    pair: Option<String>,
 }
 
 impl Assignment {
@@ -33,6 +36,7 @@ impl Assignment {
                 path: path.to_owned(),
             })
         })?;
+        let pair = is_pair(value).then(|| format!("{{{value}}}"));
         let value = flow(value).ok_or_else(|| {
             fail(SetKind::NotAValue {
                 value: value.to_owned(),
@@ -42,6 +46,7 @@ impl Assignment {
             text: text.to_owned(),
             path: steps,
             value,
+            pair,
         })
     }
 }
@@ -61,18 +66,20 @@ fn flow(value: &str) -> Option<String> {
         return None;
     }
     let wrapped = format!("[{value}]");
+    let bracketed = value.starts_with(['[', '{', '"', '\'']);
     let alone = scan::scan(&wrapped)
         .ok()
         .filter(|(_, problems)| problems.is_empty())
         .and_then(|(places, _)| {
             let entry = places.find("[0]")?;
             let single = places.find("[1]").is_none() && entry.value == (1..1 + value.len());
-            let same = places
-                .scalar(&entry)
-                .is_none_or(|(text, plain)| !plain || text == value);
+            let same = match places.scalar(&entry) {
+                _ if bracketed => true,
+                Some((text, plain)) => plain && text == value,
+                None => false,
+            };
             (single && same).then_some(())
         });
-    let bracketed = value.starts_with(['[', '{', '"', '\'']);
     match (alone, bracketed) {
         (Some(()), _) if serde_yaml::from_str::<serde::de::IgnoredAny>(&wrapped).is_ok() => {
             Some(value.to_owned())
@@ -87,6 +94,18 @@ fn flow(value: &str) -> Option<String> {
                 .replace('\t', "\\t")
         )),
     }
+}
+
+/// Whether a text is one key and its value.
+fn is_pair(value: &str) -> bool {
+    let scanned = scan::scan(&format!("{{{value}}}"));
+    let pair = scanned.is_ok_and(|(places, _)| {
+        let one = places
+            .find("")
+            .is_some_and(|root| places.keys(root.place).count() == 1);
+        one && value.contains(": ")
+    });
+    pair && !value.starts_with(['[', '{', '"', '\''])
 }
 
 /// Puts every assignment in, one after the other.
@@ -149,7 +168,7 @@ fn put(source: &Source, assignment: &Assignment) -> Result<(Source, Problems), B
         }));
     }
     let edit = match rest.split_first() {
-        None => target.replace(&assignment.value),
+        None => target.replace(target.value()),
         Some((step, deeper)) => target.insert(step, deeper)?,
     };
     target.spliced(&edit)
@@ -160,6 +179,24 @@ impl Target<'_> {
         let assignment = self.assignment.text.clone();
         let problem = SetProblem { assignment, kind };
         Box::new(Problem::value(self.at.as_str(), problem))
+    }
+
+    /// The value: in braces where a mapping stands, or an entry of a list, which is written `state: time` in the file.
+    fn value(&self) -> &str {
+        let Assignment {
+            path, value, pair, ..
+        } = self.assignment;
+        let content = self
+            .source
+            .places
+            .places
+            .get(self.found.place)
+            .map(|p| &p.content);
+        let mapping = self.rest.is_empty() && matches!(content, Some(Content::Mapping { .. }));
+        let entry = matches!(path.last(), Some(Step::Index(_) | Step::Named(_)));
+        pair.as_deref()
+            .filter(|_| mapping || entry)
+            .unwrap_or(value)
     }
 
     /// Whether another part of the file would change with it. Putting a value in place of an alias changes nothing else.
@@ -220,7 +257,7 @@ impl Target<'_> {
 
     /// A key or an entry that is not there yet.
     fn insert(&self, step: &Step, deeper: &[Step]) -> Result<Edit, Box<Problem>> {
-        let value = nested(deeper, &self.assignment.value);
+        let value = nested(deeper, self.value());
         let value = value.ok_or_else(|| self.no_entry(deeper.first().unwrap_or(step)))?;
         let content = self
             .source
@@ -229,24 +266,15 @@ impl Target<'_> {
             .get(self.found.place)
             .map(|p| &p.content);
         match (content, step) {
-            (Some(Content::Mapping { flow, entries }), Step::Key(key)) => Ok(self.new_key(
-                *flow,
-                entries.is_empty(),
-                &format!("{}: {value}", quoted(key)),
-            )),
+            (Some(Content::Mapping { flow, entries }), Step::Key(key)) => {
+                let last = self.end_of(entries.last().map(|(_, child)| child));
+                Ok(self.new_entry(*flow, last, &format!("{}: {value}", quoted(key))))
+            }
             (Some(Content::List { flow, entries }), Step::Index(index))
                 if *index == entries.len() =>
             {
-                let last = entries.last().map(|child| match &child.alias {
-                    Some(alias) => alias.end,
-                    None => self
-                        .source
-                        .places
-                        .places
-                        .get(child.place)
-                        .map_or(0, |p| p.span.end),
-                });
-                Ok(self.new_entry(*flow, last, &value))
+                let entry = if *flow { value } else { format!("- {value}") };
+                Ok(self.new_entry(*flow, self.end_of(entries.last()), &entry))
             }
             (Some(Content::Scalar { text, plain: true }), _)
                 if matches!(text.as_str(), "" | "~" | "null") =>
@@ -264,46 +292,42 @@ impl Target<'_> {
         }
     }
 
-    fn new_key(&self, flow: bool, empty: bool, entry: &str) -> Edit {
-        let start = self.found.value.start;
-        match (flow, empty) {
-            (true, true) => Edit {
-                bytes: start + 1..start + 1,
-                text: entry.to_owned(),
-            },
-            (true, false) => Edit {
-                bytes: start + 1..start + 1,
-                text: format!("{entry}, "),
-            },
-            (false, _) => Edit {
-                bytes: start..start,
-                text: format!("{entry}\n{}", self.indent()),
-            },
+    /// Where the last entry of what was found ends.
+    fn end_of(&self, last: Option<&Child>) -> Option<usize> {
+        let child = last?;
+        match &child.alias {
+            Some(alias) => Some(alias.end),
+            None => self
+                .source
+                .places
+                .places
+                .get(child.place)
+                .map(|p| p.span.end),
         }
     }
 
-    fn new_entry(&self, flow: bool, last: Option<usize>, value: &str) -> Edit {
+    /// A further entry, after the last one; within brackets behind a comma, else on a line of its own.
+    fn new_entry(&self, flow: bool, last: Option<usize>, entry: &str) -> Edit {
         let start = self.found.value.start;
         match (flow, last) {
             (true, None) => Edit {
                 bytes: start + 1..start + 1,
-                text: value.to_owned(),
+                text: entry.to_owned(),
             },
             (true, Some(end)) => Edit {
                 bytes: end..end,
-                text: format!(", {value}"),
+                text: format!(", {entry}"),
             },
             (false, _) => {
                 let end = last.unwrap_or(start);
-                let line_end = self
-                    .source
-                    .text
+                let text = &self.source.text;
+                let line_end = text
                     .get(end..)
                     .and_then(|t| t.find('\n'))
-                    .map_or(self.source.text.len(), |n| end + n);
+                    .map_or(text.len(), |n| end + n);
                 Edit {
                     bytes: line_end..line_end,
-                    text: format!("\n{}- {value}", self.indent()),
+                    text: format!("\n{}{entry}", self.indent()),
                 }
             }
         }
@@ -368,9 +392,12 @@ impl Target<'_> {
         }) {
             return Err(self.unplaced(&problems));
         }
+        let breaks = |text: &str| isize::try_from(text.matches('\n').count()).unwrap_or(isize::MAX);
+        let lines = breaks(&edit.text) - text.get(edit.bytes.clone()).map_or(0, breaks);
         kept.push(Splice {
             bytes,
             assignment: self.assignment.text.clone(),
+            lines,
         });
         Ok((
             Source {
@@ -406,7 +433,7 @@ impl Splice {
         };
         Some(Splice {
             bytes,
-            assignment: self.assignment.clone(),
+            ..self.clone()
         })
     }
 }

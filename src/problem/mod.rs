@@ -199,6 +199,11 @@ impl Problems {
         }
     }
 
+    /// Counts further ones that are not kept.
+    pub(crate) fn leave_out(&mut self, count: usize) {
+        self.left_out += count;
+    }
+
     /// Adds all of another list.
     pub fn append(&mut self, other: Problems) {
         for problem in other.list {
@@ -233,7 +238,7 @@ impl Problems {
     /// In the order of the file.
     pub(crate) fn sort(&mut self, source: &Source) {
         self.list
-            .sort_by_key(|p| source.bytes(p).map_or(0, |b| b.start));
+            .sort_by_cached_key(|p| source.bytes(p).map_or(0, |b| b.start));
     }
 }
 

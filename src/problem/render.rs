@@ -25,6 +25,8 @@ pub struct Splice {
     pub bytes: Range<usize>,
     /// The assignment, as given.
     pub assignment: String,
+    /// Lines that the text has gained by it (or lost).
+    pub lines: isize,
 }
 
 /// Longest line that is drawn; of a longer one only the place is told.
@@ -101,7 +103,18 @@ impl Source {
     #[must_use]
     pub fn line_column(&self, byte: usize) -> (usize, usize) {
         let before = &self.text[..self.within(0..byte).end];
-        let line = before.matches('\n').count() + 1;
+        // lines are counted as the file has them, without those that `--set` brought
+        let brought: isize = self
+            .splices
+            .iter()
+            .filter(|s| s.bytes.start < byte)
+            .map(|s| s.lines)
+            .sum();
+        let line = before
+            .matches('\n')
+            .count()
+            .saturating_add_signed(brought.saturating_neg())
+            + 1;
         let start = before.rfind('\n').map_or(0, |n| n + 1);
         (line, before[start..].chars().count() + 1)
     }
@@ -118,6 +131,10 @@ impl Source {
             ProblemKind::Text(TextProblem::DuplicateKey { first, .. }) => {
                 Some((self.within(first.clone()), "first given here"))
             }
+            ProblemKind::Text(TextProblem::Syntax {
+                opened: Some(opened),
+                ..
+            }) => Some((self.within(opened.clone()), "not closed")),
             ProblemKind::Sense(SenseProblem::DuplicateName { first, .. }) => {
                 let found = self.places.find(first)?;
                 Some((
@@ -139,14 +156,14 @@ pub fn render(source: &Source, problems: &Problems, colour: bool) -> String {
         Renderer::plain()
     };
     let mut out = String::new();
-    let mut drawn: Vec<String> = Vec::new();
+    let mut drawn = Vec::new();
     for problem in problems.iter() {
-        let text = draw(source, problem, &renderer);
         // one value behind an anchor is wrong once, however often it is used
-        if !drawn.contains(&text) {
-            out.push_str(&text);
+        let once = (source.bytes(problem), &problem.kind);
+        if once.0.is_none() || !drawn.contains(&once) {
+            out.push_str(&draw(source, problem, &renderer));
             out.push_str("\n\n");
-            drawn.push(text);
+            drawn.push(once);
         }
     }
     let count = drawn.len() + problems.left_out();
@@ -169,6 +186,7 @@ fn draw(source: &Source, problem: &Problem, renderer: &Renderer) -> String {
     let bytes = source.bytes(problem);
     let label = annotate_snippets::normalize_untrusted_str(&problem.kind.label());
     group = match &bytes {
+        None if source.name.is_empty() => group,
         None => group.element(Origin::path(source.name.as_str())),
         Some(bytes) => {
             let second = source.second(problem);

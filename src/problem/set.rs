@@ -1,5 +1,6 @@
 //! A `--set` that cannot be done.
 
+use super::Shape;
 use super::words::{list, nearest};
 use std::fmt;
 
@@ -38,7 +39,7 @@ pub enum SetKind {
         /// Path of what stands in the way.
         at: String,
         /// What it is.
-        shape: super::Shape,
+        shape: Shape,
     },
     /// A value that an anchor and its aliases share.
     Shared {
@@ -65,6 +66,9 @@ impl fmt::Display for SetProblem {
             P::NoEquals => f.write_str("`=` is missing between path and value"),
             P::NotAPath { path } => write!(f, "`{path}` is not a path"),
             P::NoEntry { found, list, .. } => write!(f, "`{list}` has no entry `{found}`"),
+            P::NoWay { at, shape } if at.is_empty() => {
+                write!(f, "the file is {shape}: the path does not begin so")
+            }
             P::NoWay { at, shape } => write!(f, "`{at}` is {shape}: the path leads no further"),
             P::Shared { at } => write!(f, "`{at}` is shared by an anchor and its aliases"),
             P::NotAValue { value } => write!(f, "`{value}` is not a value"),
@@ -106,15 +110,11 @@ impl SetProblem {
                 "entries are counted from 0 to {}; a new one is `[{count}]`",
                 count - 1
             ),
-            P::NoWay {
-                at,
-                shape: super::Shape::Single,
-            } => format!("set the whole of `{at}`"),
-            P::NoWay {
-                shape: super::Shape::List,
-                ..
-            } => "name an entry of it, like `[0]`".into(),
-            P::NoWay { .. } => "name a key of it, like `.draw`".into(),
+            P::NoWay { at, shape } => match shape {
+                Shape::Single => format!("set the whole of `{at}`"),
+                Shape::List => format!("name an entry of it in brackets, like `{at}[0]`"),
+                Shape::Mapping => "name a key of it behind a point, like `battery.capacity`".into(),
+            },
             P::Unplaced { .. } => "change the value in the file itself".into(),
             P::Shared { .. } => "write the value out in the file".into(),
             P::NotAValue { .. } => {

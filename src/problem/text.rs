@@ -31,6 +31,8 @@ pub enum TextProblem {
         what: String,
         /// What would do.
         hint: Option<&'static str>,
+        /// Bytes of a bracket that is still open there.
+        opened: Option<Range<usize>>,
     },
     /// Lists and mappings inside each other beyond the limit.
     TooDeep,

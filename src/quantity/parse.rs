@@ -126,7 +126,7 @@ pub fn whole(text: &str) -> Result<u32, ParseError> {
     Err(ParseError {
         range,
         kind,
-        wanted: Dimension::Factor,
+        wanted: Dimension::Whole,
     })
 }
 

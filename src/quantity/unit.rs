@@ -43,6 +43,8 @@ pub enum Dimension {
     Times,
     /// A plain number without a unit.
     Factor,
+    /// A whole number without a unit.
+    Whole,
     /// What an accessory draws: a power, a current or a resistance.
     Draw,
 }
@@ -59,7 +61,7 @@ impl Dimension {
             Dimension::Inductance => "an inductance",
             Dimension::Frequency => "a frequency",
             Dimension::Speed => "a speed of rotation",
-            Dimension::Charge => "a charge",
+            Dimension::Charge => "a charge in ampere-hours",
             Dimension::Duration => "a duration",
             Dimension::Length => "a length",
             Dimension::Section => "a cross-section",
@@ -69,6 +71,7 @@ impl Dimension {
             Dimension::Share => "a share in per cent",
             Dimension::Times => "a multiple",
             Dimension::Factor => "a plain number",
+            Dimension::Whole => "a whole number",
             Dimension::Draw => "a power, a current or a resistance",
         }
     }
@@ -94,6 +97,7 @@ impl Dimension {
             Dimension::Share => "85 %",
             Dimension::Times => "8 x",
             Dimension::Factor => "2.4",
+            Dimension::Whole => "12",
         }
     }
 
@@ -336,14 +340,22 @@ pub(crate) fn measured_by(word: &str) -> Option<Dimension> {
     UNITS.iter().find(|u| u.word == word).map(|u| u.dimension)
 }
 
-/// The unit nearest to an unknown word: the same letters in another case first, then one letter off.
+/// The unit nearest to an unknown word: the same letters in another case, then one that begins so, then one letter off.
 pub(crate) fn nearest(word: &str, dimension: Dimension) -> Option<&'static str> {
     let rows = || UNITS.iter().filter(|u| dimension.covers(u.dimension));
     let lower = word.to_lowercase();
+    let long = |u: &&UnitWord| u.word.chars().count() > 2;
     rows()
         .find(|u| u.word != word && u.word.to_lowercase() == lower)
         .or_else(|| {
-            rows().find(|u| u.word.chars().count() > 1 && strsim::osa_distance(u.word, word) == 1)
+            rows()
+                .filter(long)
+                .find(|u| u.offered && u.word.starts_with(&lower))
+        })
+        .or_else(|| {
+            rows()
+                .filter(long)
+                .find(|u| strsim::osa_distance(u.word, word) == 1)
         })
         .map(|u| u.word)
 }

@@ -2,9 +2,9 @@
 
 use super::Lower;
 use crate::battery::Chemistry;
-use crate::description::{BatteryText, raw};
+use crate::description::{BatteryText, Written, path, raw};
 use crate::problem::{Problem, SenseProblem};
-use crate::quantity::bounds;
+use crate::quantity::{Volts, bounds};
 
 /// `type:`.
 const CHEMISTRIES: &[(&str, Chemistry)] = &[
@@ -16,11 +16,6 @@ const CHEMISTRIES: &[(&str, Chemistry)] = &[
 impl Lower<'_> {
     /// A battery, of the machine or of a catalog.
     pub(in crate::description) fn battery(&mut self, raw: &raw::Battery, at: &str) -> BatteryText {
-        let rest = crate::description::path::key(at, "rest_volts");
-        let volts = self
-            .map(&raw.rest_volts, &rest)
-            .cloned()
-            .unwrap_or_default();
         let nothing = [&raw.part, &raw.capacity, &raw.reserve_capacity]
             .iter()
             .all(|n| n.is_absent());
@@ -34,7 +29,8 @@ impl Lower<'_> {
                 },
             ));
         }
-        let battery = BatteryText {
+        let (rest_full, rest_empty) = self.rest_volts(raw, at);
+        BatteryText {
             path: at.to_owned(),
             part: self.name(at, "part", &raw.part),
             capacity: self.quantity(at, "capacity", &raw.capacity, &bounds::CAPACITY),
@@ -57,8 +53,8 @@ impl Lower<'_> {
                 &raw.resistance,
                 &bounds::BATTERY_RESISTANCE,
             ),
-            rest_full: self.quantity(&rest, "full", &volts.full, &bounds::REST_VOLTS),
-            rest_empty: self.quantity(&rest, "empty", &volts.empty, &bounds::REST_VOLTS),
+            rest_full,
+            rest_empty,
             reserve: self.quantity(at, "reserve", &raw.reserve, &bounds::RESERVE),
             cells: self.count(
                 at,
@@ -69,14 +65,28 @@ impl Lower<'_> {
             gassing: self.factor(at, "gassing", &raw.gassing, &bounds::CHARGE_FACTOR),
             health: self.quantity(at, "health", &raw.health, &bounds::HEALTH),
             price: self.quantity(at, "price", &raw.price, &bounds::PRICE),
+        }
+    }
+
+    /// `rest_volts: {full: 12.65 V, empty: 11.89 V}`, in that order.
+    fn rest_volts(
+        &mut self,
+        raw: &raw::Battery,
+        at: &str,
+    ) -> (Option<Written<Volts>>, Option<Written<Volts>>) {
+        let at = path::key(at, "rest_volts");
+        let Some(volts) = self.map(&raw.rest_volts, &at) else {
+            return (None, None);
         };
-        if let (Some(full), Some(empty)) = (&battery.rest_full, &battery.rest_empty)
+        let full = self.quantity(&at, "full", &volts.full, &bounds::REST_VOLTS);
+        let empty = self.quantity(&at, "empty", &volts.empty, &bounds::REST_VOLTS);
+        if let (Some(full), Some(empty)) = (&full, &empty)
             && empty.value >= full.value
         {
             let (low, high) = ("the volts when empty", "the volts when full");
             let reversed = SenseProblem::Reversed { low, high };
             self.problem(Problem::value(empty.path.as_str(), reversed));
         }
-        battery
+        (full, empty)
     }
 }

@@ -30,7 +30,7 @@ impl Lower<'_> {
         node: &'n Node<L, M>,
         wanted: &'static str,
     ) -> Option<(Cow<'n, str>, String)> {
-        if node.is_absent() {
+        if matches!(node, Node::Absent) {
             return None;
         }
         self.at_path(path::key(at, key), node, wanted)

@@ -13,14 +13,15 @@ use super::path;
 use super::places::Places;
 use super::raw::{self, Keys, List, Map, Named, Node};
 use crate::problem::words::nearest;
-use crate::problem::{Problem, Problems, Shape, ShapeProblem};
+use crate::problem::{MOST_KEPT, Problem, Problems, Shape, ShapeProblem};
+use std::collections::BTreeMap;
 
 /// What lowering reads beside the raw keys, and the problems found so far.
 pub(super) struct Lower<'a> {
     text: &'a str,
     places: &'a Places,
     /// Mappings with a misspelt key, and the key that was meant.
-    misspelt: Vec<(String, &'static str)>,
+    misspelt: BTreeMap<String, Vec<&'static str>>,
     /// Gathered in passing.
     pub(super) problems: Problems,
 }
@@ -31,7 +32,7 @@ impl<'a> Lower<'a> {
         Lower {
             text,
             places,
-            misspelt: Vec::new(),
+            misspelt: BTreeMap::new(),
             problems: Problems::default(),
         }
     }
@@ -40,16 +41,23 @@ impl<'a> Lower<'a> {
         self.problems.push(problem);
     }
 
-    /// A key that must be there and is not. Where a misspelt key stands for it, that has been told.
+    /// A key that must be there and is not. Where it is misspelt, or has nothing behind it, that has been told.
     fn missing(&mut self, path: &str, key: &'static str, example: &'static str) {
-        if self
+        let misspelt = self
             .misspelt
-            .iter()
-            .any(|(at, meant)| at == path && *meant == key)
-        {
+            .get(path)
+            .is_some_and(|meant| meant.contains(&key));
+        if misspelt || self.is_empty(&path::key(path, key)) {
             return;
         }
         self.problem(Problem::value(path, ShapeProblem::Missing { key, example }));
+    }
+
+    /// Whether a key is there with nothing behind it.
+    fn is_empty(&self, path: &str) -> bool {
+        self.places
+            .find(path)
+            .is_some_and(|found| found.value.is_empty())
     }
 
     /// A value of another shape than its key wants, or none.
@@ -58,8 +66,7 @@ impl<'a> Lower<'a> {
             Node::Absent => return,
             Node::Null => {
                 // `~` and `null` leave a key out on purpose
-                let written = self.places.find(path).and_then(|f| self.text.get(f.value));
-                if written.is_none_or(|w| w.trim().is_empty()) {
+                if self.is_empty(path) {
                     self.problem(Problem::value(path, ShapeProblem::NoValue { wanted }));
                 }
                 return;
@@ -76,16 +83,21 @@ impl<'a> Lower<'a> {
 
     /// The keys of a mapping; those that are not known are told.
     fn keys<'k, T>(&mut self, keys: &'k Keys<T>, path: &str) -> &'k T {
-        for found in &keys.unknown {
+        for found in keys.unknown.iter().take(MOST_KEPT) {
             let problem = ShapeProblem::UnknownKey {
                 found: found.clone(),
                 known: keys.known.to_vec(),
             };
             self.problem(Problem::key(path::key(path, found), problem));
             if let Some(meant) = nearest(found, keys.known.iter().copied()) {
-                self.misspelt.push((path.to_owned(), meant));
+                self.misspelt
+                    .entry(path.to_owned())
+                    .or_default()
+                    .push(meant);
             }
         }
+        self.problems
+            .leave_out(keys.unknown.len().saturating_sub(MOST_KEPT));
         &keys.body
     }
 

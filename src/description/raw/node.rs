@@ -39,9 +39,9 @@ pub(crate) type List<T> = Node<Vec<T>, Refused>;
 pub(crate) type Named<T> = Node<Refused, Names<T>>;
 
 impl<L, M> Node<L, M> {
-    /// Whether the key is not there.
+    /// Whether the key is not there, or has nothing behind it.
     pub(crate) fn is_absent(&self) -> bool {
-        matches!(self, Node::Absent)
+        matches!(self, Node::Absent | Node::Null)
     }
 }
 

@@ -113,11 +113,16 @@ impl fmt::Display for ParseError {
             K::UnknownUnit { found, .. } if wanted == Dimension::Factor => {
                 write!(f, "unit `{found}` where a plain number is needed")
             }
-            K::UnknownUnit { found, .. } => write!(f, "unknown unit `{found}`: {wanted} is needed"),
+            K::UnknownUnit { found, .. } => {
+                write!(f, "unknown unit `{found}` where {wanted} is needed")
+            }
             K::WrongUnit {
                 found, measures, ..
             } => {
-                write!(f, "wrong unit: `{found}` is {measures}, {wanted} is needed")
+                write!(
+                    f,
+                    "wrong unit: `{found}` is {measures} where {wanted} is needed"
+                )
             }
             K::Trailing { found } => write!(f, "`{found}` is left over after the value"),
             K::Order { found } => write!(f, "`{found}` comes after a smaller unit"),
@@ -175,7 +180,6 @@ impl ParseError {
                     "numbers have a point for decimals and nothing between thousands: `{plain}`"
                 )
             }
-            ParseErrorKind::NotWhole { .. } => "write digits alone, like `12`".into(),
             ParseErrorKind::ToleranceTooWide { .. }
             | ParseErrorKind::ToleranceOfZero
             | ParseErrorKind::ToleranceHere => {

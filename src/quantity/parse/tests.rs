@@ -178,7 +178,7 @@ fn phrases_point_at_their_own_part() {
         (&text[e.range.clone()], e.to_string().as_str()),
         (
             "V",
-            "wrong unit: `V` is a voltage, a speed of rotation is needed"
+            "wrong unit: `V` is a voltage where a speed of rotation is needed"
         )
     );
     let text = "28 V at 3600 rpm ± 6";
@@ -215,150 +215,74 @@ fn phrases_point_at_their_own_part() {
 }
 
 #[test]
-fn errors_name_what_stands_there() {
+fn what_is_no_number_is_told() {
     use ParseErrorKind as K;
+    let is = |text: &str, mark: &str, kind: fn(String) -> K| {
+        assert_eq!(wrong::<Watts>(text), (mark, kind(mark.into())), "{text}");
+    };
     assert_eq!(wrong::<Watts>(""), ("", K::Empty));
-    assert_eq!(
-        wrong::<Watts>("bright"),
-        (
-            "bright",
-            K::NotNumber {
-                found: "bright".into()
-            }
-        )
-    );
-    assert_eq!(
-        wrong::<Watts>(".nan"),
-        (
-            ".nan",
-            K::NotFinite {
-                found: ".nan".into()
-            }
-        )
-    );
-    assert_eq!(
-        wrong::<Watts>("-.inf W"),
-        (
-            "-.inf",
-            K::NotFinite {
-                found: "-.inf".into()
-            }
-        )
-    );
-    assert_eq!(
-        wrong::<Watts>("1e400 W"),
-        (
-            "1e400",
-            K::TooLarge {
-                found: "1e400".into()
-            }
-        )
-    );
-    assert_eq!(
-        wrong::<Watts>("1e306 kW"),
-        (
-            "1e306 kW",
-            K::TooLarge {
-                found: "1e306 kW".into()
-            }
-        )
-    );
+    is("bright", "bright", |found| K::NotNumber { found });
+    is("1.2.3 W", "1.2.3 W", |found| K::NotNumber { found });
+    is(".nan", ".nan", |found| K::NotFinite { found });
+    is("-.inf W", "-.inf", |found| K::NotFinite { found });
+    is("1e400 W", "1e400", |found| K::TooLarge { found });
+    is("1e306 kW", "1e306 kW", |found| K::TooLarge { found });
+    is("55 W 3", "3", |found| K::Trailing { found });
+}
+
+#[test]
+fn units_are_told() {
+    use ParseErrorKind as K;
+    let unknown = |found: &str, near| K::UnknownUnit {
+        found: found.into(),
+        near,
+    };
     assert_eq!(
         wrong::<Watts>("55"),
         ("55", K::UnitMissing { found: "55".into() })
     );
-    assert_eq!(
-        wrong::<Watts>("55 w"),
-        (
-            "w",
-            K::UnknownUnit {
-                found: "w".into(),
-                near: Some("W")
-            }
-        )
-    );
-    assert_eq!(
-        wrong::<Rpm>("55 rpn"),
-        (
-            "rpn",
-            K::UnknownUnit {
-                found: "rpn".into(),
-                near: Some("rpm")
-            }
-        )
-    );
-    assert_eq!(
-        wrong::<Watts>("55 lux"),
-        (
-            "lux",
-            K::UnknownUnit {
-                found: "lux".into(),
-                near: None
-            }
-        )
-    );
-    assert_eq!(
-        wrong::<Watts>("55 W 3"),
-        ("3", K::Trailing { found: "3".into() })
-    );
-    assert_eq!(
-        wrong::<Watts>("1.2.3 W"),
-        (
-            "1.2.3 W",
-            K::NotNumber {
-                found: "1.2.3 W".into()
-            }
-        )
-    );
-    let grouping = |found: &str, plain: &str| K::Grouping {
-        found: found.into(),
-        plain: plain.into(),
+    assert_eq!(wrong::<Watts>("55 w"), ("w", unknown("w", Some("W"))));
+    assert_eq!(wrong::<Rpm>("55 rpn"), ("rpn", unknown("rpn", Some("rpm"))));
+    assert_eq!(wrong::<Watts>("55 lux"), ("lux", unknown("lux", None)));
+    assert_eq!(wrong::<Hours>("12:30"), (":", unknown(":", None)));
+    let (measures, near) = (Dimension::Length, Some("min"));
+    let metres = K::WrongUnit {
+        found: "m".into(),
+        measures,
+        near,
     };
-    assert_eq!(wrong::<Watts>("5,5 W"), ("5,5", grouping("5,5", "5.5")));
-    assert_eq!(
-        wrong::<Watts>("0,125 W"),
-        ("0,125", grouping("0,125", "0.125"))
-    );
-    assert_eq!(
-        wrong::<Rpm>("3,600 rpm"),
-        ("3,600", grouping("3,600", "3600"))
-    );
-    assert_eq!(
-        wrong::<Rpm>("3 600 rpm"),
-        ("3 600", grouping("3 600", "3600"))
-    );
-    assert_eq!(
-        wrong::<Rpm>("1_000 rpm"),
-        ("1_000", grouping("1_000", "1000"))
-    );
-    assert!(matches!(
-        wrong::<Hours>("12:30"),
-        (":", K::UnknownUnit { .. })
-    ));
-    assert!(matches!(
-        wrong::<Hours>("20 m"),
-        (
-            "m",
-            K::WrongUnit {
-                measures: Dimension::Length,
-                ..
-            }
-        )
-    ));
+    assert_eq!(wrong::<Hours>("20 m"), ("m", metres));
     assert!(matches!(
         factor("2 V").expect_err("a unit").kind,
         K::WrongUnit { .. }
     ));
-    for text in ["", "-3", "1.5", "three", "3 x"] {
-        assert!(
-            matches!(whole(text).expect_err(text).kind, K::NotWhole { .. }),
-            "{text}"
+}
+
+#[test]
+fn commas_and_spaces_in_numbers_are_told() {
+    for (text, mark, plain) in [
+        ("5,5 rpm", "5,5", "5.5"),
+        ("0,125 rpm", "0,125", "0.125"),
+        ("3,600 rpm", "3,600", "3600"),
+        ("3 600 rpm", "3 600", "3600"),
+        ("1_000 rpm", "1_000", "1000"),
+    ] {
+        let (found, plain) = (mark.into(), plain.into());
+        assert_eq!(
+            wrong::<Rpm>(text),
+            (mark, ParseErrorKind::Grouping { found, plain })
         );
     }
-    assert!(matches!(
-        whole("99999999999").expect_err("beyond u32").kind,
-        K::TooLarge { .. }
-    ));
+}
+
+#[test]
+fn whole_numbers_are_digits() {
+    for text in ["", "-3", "1.5", "three", "3 x"] {
+        let kind = whole(text).expect_err(text).kind;
+        assert!(matches!(kind, ParseErrorKind::NotWhole { .. }), "{text}");
+    }
+    let kind = whole("99999999999").expect_err("beyond u32").kind;
+    assert!(matches!(kind, ParseErrorKind::TooLarge { .. }));
 }
 
 #[test]
@@ -380,7 +304,7 @@ fn a_draw_is_told_by_its_unit() {
         say("55 V").map(|_| ()),
         same(
             "V",
-            "wrong unit: `V` is a voltage, a power, a current or a resistance is needed",
+            "wrong unit: `V` is a voltage where a power, a current or a resistance is needed",
             "a voltage"
         )
     );
@@ -396,7 +320,7 @@ fn a_draw_is_told_by_its_unit() {
         say("5 a").map(|_| ()),
         same(
             "a",
-            "unknown unit `a`: a power, a current or a resistance is needed",
+            "unknown unit `a` where a power, a current or a resistance is needed",
             "did you mean `A`?"
         )
     );
@@ -405,7 +329,7 @@ fn a_draw_is_told_by_its_unit() {
         say("5 A ± 3 W").map(|_| ()),
         same(
             "W",
-            "wrong unit: `W` is a power, a current is needed",
+            "wrong unit: `W` is a power where a current is needed",
             "a power"
         )
     );
@@ -413,7 +337,7 @@ fn a_draw_is_told_by_its_unit() {
         say("55 W ± 3 A").map(|_| ()),
         same(
             "A",
-            "wrong unit: `A` is a current, a power, a current or a resistance is needed",
+            "wrong unit: `A` is a current where a power, a current or a resistance is needed",
             "a current"
         )
     );
@@ -426,7 +350,7 @@ fn messages_are_sentences() {
     assert_eq!(
         say("55 V").map(|_| ()),
         same(
-            "wrong unit: `V` is a voltage, a power is needed",
+            "wrong unit: `V` is a voltage where a power is needed",
             "a voltage",
             "write it like `55 W`"
         )
@@ -442,7 +366,7 @@ fn messages_are_sentences() {
     assert_eq!(
         say("55 w").map(|_| ()),
         same(
-            "unknown unit `w`: a power is needed",
+            "unknown unit `w` where a power is needed",
             "did you mean `W`?",
             "write it like `55 W`"
         )
