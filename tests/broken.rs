@@ -2,6 +2,7 @@
 //!
 //! `SNAPSHOTS=overwrite cargo test --test broken` writes the messages anew; read them before they go in.
 
+use ampledger::catalog::Catalogs;
 use ampledger::description::{Assignment, read_file};
 use ampledger::problem::{
     FileProblem, Problem, ProblemKind, Refusal, SenseProblem, SetKind, SetProblem, ShapeProblem,
@@ -9,6 +10,7 @@ use ampledger::problem::{
 };
 use ampledger::quantity::bounds::Side;
 use ampledger::quantity::parse::ParseErrorKind;
+use ampledger::resolve::{Fault, more_problems, resolve};
 use std::collections::BTreeSet;
 use std::path::{Path, PathBuf};
 
@@ -26,6 +28,7 @@ use ProblemKind as K;
 use ValueProblem as V;
 
 kinds! {
+    K::Fault(_) => "fault",
     K::File(FileProblem::Missing) => "file missing",
     K::File(FileProblem::Folder) => "folder for a file",
     K::File(FileProblem::Unreadable { .. }) => "file unreadable",
@@ -79,6 +82,38 @@ kinds! {
     K::Set(SetProblem { kind: SetKind::Unplaced { .. }, .. }) => "set unplaced",
 }
 
+/// The same for what resolving finds; none where reading tells of it before.
+fn fault(fault: &Fault) -> Option<usize> {
+    Some(match fault {
+        Fault::EmptyShift
+        | Fault::NoTime { .. }
+        | Fault::ReservedName { .. }
+        | Fault::NameTwice { .. }
+        | Fault::Curve(_)
+        | Fault::WindingOrAlternator { .. } => return None,
+        Fault::Missing { .. } => 0,
+        Fault::UnknownPart { .. } => 1,
+        Fault::PartCycle { .. } => 2,
+        Fault::BadPart { .. } => 3,
+        Fault::UnknownName { .. } => 4,
+        Fault::CannotCrank { .. } => 5,
+        Fault::Winding(_) => 7,
+        Fault::AcIntoBattery => 9,
+        Fault::RegulatorOnAc => 10,
+        Fault::ThreePhaseNeedsBridge => 11,
+        Fault::FeedsNoBattery => 12,
+        Fault::CircuitTwice { .. } => 13,
+        Fault::NoBus => 14,
+        Fault::OnBrakingWinding { .. } => 15,
+        Fault::BrakingFeedsBattery => 16,
+        Fault::NeedsDc { .. } => 17,
+        Fault::WithItself => 6,
+        Fault::TogetherAndApart { .. } => 8,
+        Fault::ApartOverfull { .. } => 18,
+    })
+}
+const FAULTS: std::ops::Range<usize> = 0..19;
+
 /// The same for the kinds of a quantity's error.
 fn quantity(kind: &ParseErrorKind) -> usize {
     match kind {
@@ -115,9 +150,20 @@ fn refusal(path: &Path) -> Refusal {
             Err(problem) => return Refusal::new(Default::default(), Problem::whole(problem)),
         }
     }
+    let folder = path.with_extension("catalogs");
+    let catalogs = match folder.is_dir() {
+        true => Catalogs::with_folder(&folder).expect("a folder of catalogs"),
+        false => Catalogs::builtin(),
+    };
     match read_file(path, &assignments) {
-        Ok(_) => panic!("{} was accepted", path.display()),
-        Err(refusal) => refusal,
+        Ok((description, source)) => match resolve(&description, &catalogs) {
+            Ok(_) => panic!("{} was accepted", path.display()),
+            Err(problems) => Refusal::new(source, problems),
+        },
+        Err(refusal) => {
+            let more = refusal.partial().map(|p| more_problems(p, &catalogs));
+            refusal.and(more.unwrap_or_default())
+        }
     }
 }
 
@@ -156,6 +202,7 @@ fn each_file_has_its_message() {
 fn each_kind_has_a_file() {
     let mut found: BTreeSet<&str> = BTreeSet::new();
     let mut quantities = BTreeSet::new();
+    let mut faults = BTreeSet::new();
     let big = tempfile::NamedTempFile::new().expect("a temporary file");
     std::fs::write(
         big.path(),
@@ -165,8 +212,10 @@ fn each_kind_has_a_file() {
     for path in cases().iter().map(PathBuf::as_path).chain([big.path()]) {
         for problem in refusal(path).problems().iter() {
             found.insert(name(&problem.kind));
-            if let K::Value(V::Quantity(e)) = &problem.kind {
-                quantities.insert(quantity(&e.kind));
+            match &problem.kind {
+                K::Value(V::Quantity(e)) => _ = quantities.insert(quantity(&e.kind)),
+                K::Fault(found) => faults.extend(fault(found)),
+                _ => {}
             }
         }
     }
@@ -177,4 +226,6 @@ fn each_kind_has_a_file() {
         QUANTITIES,
         "kinds of quantity errors with a file: {quantities:?}"
     );
+    let without: Vec<_> = FAULTS.filter(|n| !faults.contains(n)).collect();
+    assert!(without.is_empty(), "no file for the faults {without:?}");
 }

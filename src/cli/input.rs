@@ -5,7 +5,7 @@ use ampledger::build::Build;
 use ampledger::catalog::Catalogs;
 use ampledger::description::set::Assignment;
 use ampledger::description::{Description, read_file, read_set};
-use ampledger::problem::{Refusal, Source};
+use ampledger::problem::{Problem, Refusal, Source};
 use ampledger::quantity::parse::parse;
 use ampledger::quantity::{Celsius, Fraction};
 use ampledger::resolve;
@@ -42,9 +42,13 @@ pub fn build(file: &str, args: &BuildArgs, catalogs: &Catalogs) -> anyhow::Resul
     let assignments: Vec<Assignment> = args
         .set
         .iter()
-        .map(|text| Assignment::parse(text).map_err(|problem| anyhow!("--set `{text}`: {problem}")))
-        .collect::<anyhow::Result<_>>()?;
-    let (description, source) = describe(file, &assignments)?;
+        .map(|text| {
+            Assignment::parse(text)
+                .map_err(|problem| Refusal::new(Source::default(), Problem::whole(problem)))
+        })
+        .collect::<Result<_, _>>()?;
+    let (description, source) =
+        describe(file, &assignments).map_err(|refusal| whole(refusal, catalogs))?;
     let build = resolved(&description, &source, args, catalogs)?;
     Ok(Opened {
         description,
@@ -78,6 +82,19 @@ pub fn resolved(
         build = build.starting_at(charge);
     }
     Ok(build)
+}
+
+/// A refused file with the parts that are in no catalog among its problems, so that all is told at once.
+fn whole(problem: anyhow::Error, catalogs: &Catalogs) -> anyhow::Error {
+    match problem.downcast::<Refusal>() {
+        Err(other) => other,
+        Ok(refusal) => {
+            let more = refusal
+                .partial()
+                .map(|partial| resolve::more_problems(partial, catalogs));
+            refusal.and(more.unwrap_or_default()).into()
+        }
+    }
 }
 
 fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Description, Source)> {

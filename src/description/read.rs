@@ -33,7 +33,16 @@ pub fn read_set(
     } else {
         set::set(source, assignments)?
     };
-    lowered(source, problems, |low, root| low.file(root))
+    let outcome = lowered(source, problems, |low, root| low.file(root));
+    let Outcome {
+        value,
+        source,
+        problems,
+    } = outcome;
+    match value {
+        Some(description) if problems.is_empty() => Ok((description, source)),
+        partial => Err(Refusal::new(source, problems).with_partial(partial)),
+    }
 }
 
 /// Reads a build file from a path.
@@ -112,7 +121,15 @@ fn part<R: DeserializeOwned, T>(
 ) -> Result<T, Refusal> {
     let (source, problems) = open_text(name, text.as_bytes())?;
     let lower = |low: &mut Lower<'_>, root: &Map<R>| low.map(root, "").map(|raw| lower(low, raw));
-    lowered(source, problems, lower).map(|(part, _)| part)
+    let Outcome {
+        value,
+        source,
+        problems,
+    } = lowered(source, problems, lower);
+    match value {
+        Some(part) if problems.is_empty() => Ok(part),
+        _ => Err(Refusal::new(source, problems)),
+    }
 }
 
 /// Bytes to text and places.
@@ -137,28 +154,34 @@ pub(super) fn open_text(name: &str, bytes: &[u8]) -> Result<(Source, Problems), 
     }
 }
 
+/// What came of a text: its value as far as it reads, and all that is wrong.
+struct Outcome<T> {
+    value: Option<T>,
+    source: Source,
+    problems: Problems,
+}
+
 /// Text and places to typed values, by serde's reading of the same text.
 fn lowered<R: DeserializeOwned, T>(
     source: Source,
     mut problems: Problems,
     lower: impl FnOnce(&mut Lower<'_>, &Map<R>) -> Option<T>,
-) -> Result<(T, Source), Refusal> {
-    if problems.left_out() > 0 {
-        return Err(Refusal::new(source, problems));
-    }
-    let root: Map<R> = match serde_yaml::from_str(&source.text) {
-        Ok(root) => root,
-        Err(e) => {
-            problems.push(second_reader(&source.text, &e));
-            return Err(Refusal::new(source, problems));
+) -> Outcome<T> {
+    let mut value = None;
+    if problems.left_out() == 0 {
+        match serde_yaml::from_str(&source.text) {
+            Ok(root) => {
+                let mut low = Lower::new(&source.text, &source.places);
+                value = lower(&mut low, &root);
+                problems.append(low.problems);
+            }
+            Err(e) => problems.push(second_reader(&source.text, &e)),
         }
-    };
-    let mut low = Lower::new(&source.text, &source.places);
-    let value = lower(&mut low, &root);
-    problems.append(low.problems);
-    match value {
-        Some(value) if problems.is_empty() => Ok((value, source)),
-        _ => Err(Refusal::new(source, problems)),
+    }
+    Outcome {
+        value,
+        source,
+        problems,
     }
 }
 

@@ -20,6 +20,7 @@ pub use shape::{Shape, ShapeProblem};
 pub use text::TextProblem;
 pub use value::ValueProblem;
 
+use crate::description::Description;
 use crate::resolve::Fault;
 use std::fmt;
 use std::ops::Range;
@@ -253,7 +254,14 @@ impl From<Problem> for Problems {
 
 /// An input that was refused: what is wrong, and the text to show it on.
 #[derive(Clone, Debug)]
-pub struct Refusal(Box<(Source, Problems)>);
+pub struct Refusal(Box<Refused>);
+
+#[derive(Clone, Debug)]
+struct Refused {
+    source: Source,
+    problems: Problems,
+    partial: Option<Description>,
+}
 
 impl Refusal {
     /// A refusal with its problems in the order of the file.
@@ -261,19 +269,47 @@ impl Refusal {
     pub fn new(source: Source, problems: impl Into<Problems>) -> Refusal {
         let mut problems = problems.into();
         problems.sort(&source);
-        Refusal(Box::new((source, problems)))
+        Refusal(Box::new(Refused {
+            source,
+            problems,
+            partial: None,
+        }))
+    }
+
+    /// With what could be read of the file all the same.
+    pub(crate) fn with_partial(mut self, partial: Option<Description>) -> Refusal {
+        self.0.partial = partial;
+        self
+    }
+
+    /// What could be read of a build file all the same: values that are wrong are left out of it.
+    /// It serves to find more of what is wrong ([`crate::resolve::more_problems`]), and nothing else.
+    #[must_use]
+    pub fn partial(&self) -> Option<&Description> {
+        self.0.partial.as_ref()
+    }
+
+    /// With further problems, in the order of the file.
+    #[must_use]
+    pub fn and(mut self, more: Problems) -> Refusal {
+        let Refused {
+            source, problems, ..
+        } = self.0.as_mut();
+        problems.append(more);
+        problems.sort(source);
+        self
     }
 
     /// The text and its places.
     #[must_use]
     pub fn source(&self) -> &Source {
-        &self.0.0
+        &self.0.source
     }
 
     /// What is wrong, in the order of the file.
     #[must_use]
     pub fn problems(&self) -> &Problems {
-        &self.0.1
+        &self.0.problems
     }
 
     /// Each problem drawn on its line, with colours or plain.

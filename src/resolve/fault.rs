@@ -2,7 +2,7 @@
 //! connections that must not be.
 
 use crate::catalog::Kind;
-use crate::problem::{Problem, ProblemKind};
+use crate::problem::{Problem, ProblemKind, words};
 use crate::quantity::{Fraction, format};
 use crate::source::{ConstantsError, CurveError};
 use std::fmt;
@@ -217,9 +217,9 @@ impl Fault {
     #[must_use]
     pub fn help(&self) -> Option<String> {
         match self {
-            Fault::UnknownPart { nearest: Some(id), .. } => Some(format!("did you mean `{id}`?")),
             Fault::UnknownPart { .. } => Some("`ampledger parts` lists what there is".to_owned()),
-            Fault::UnknownName { name, known, .. } => Some(known_names(name, known)),
+            Fault::UnknownName { known, .. } if known.is_empty() => Some("there is none".to_owned()),
+            Fault::UnknownName { known, .. } => Some(format!("names here: {}", words::list(known))),
             Fault::ReservedName { .. } => {
                 Some("`crank`, `stopped` and `parked` are states of their own".to_owned())
             }
@@ -258,6 +258,16 @@ impl Fault {
 
     /// What to write beside the mark on the line.
     pub(crate) fn label(&self) -> String {
+        let near = match self {
+            Fault::UnknownPart { nearest, .. } => nearest.as_deref(),
+            Fault::UnknownName { name, known, .. } => {
+                words::nearest(name, known.iter().map(String::as_str))
+            }
+            _ => None,
+        };
+        if let Some(near) = near {
+            return format!("did you mean `{near}`?");
+        }
         match self {
             Fault::Missing { .. } | Fault::WindingOrAlternator { both: false } => "incomplete",
             Fault::UnknownPart { .. } | Fault::UnknownName { .. } => "not there",
@@ -269,22 +279,6 @@ impl Fault {
             _ => "here",
         }
         .to_owned()
-    }
-}
-
-/// The nearest of the known names, else all of them.
-fn known_names(name: &str, known: &[String]) -> String {
-    let mut best: Option<(f64, &String)> = None;
-    for candidate in known {
-        let score = strsim::jaro_winkler(name, candidate);
-        if score > 0.78 && best.is_none_or(|(top, _)| score > top) {
-            best = Some((score, candidate));
-        }
-    }
-    match best {
-        Some((_, nearest)) => format!("did you mean `{nearest}`?"),
-        None if known.is_empty() => "there is none".to_owned(),
-        None => format!("there is {}", list(known, ", ")),
     }
 }
 

@@ -51,6 +51,19 @@ pub fn resolve(description: &Description, catalogs: &Catalogs) -> Result<Build, 
     }
 }
 
+/// What is wrong besides with a file that did not read whole: parts that are in no catalog or do not read.
+/// Other faults would only follow from what is missing in it.
+#[must_use]
+pub fn more_problems(partial: &Description, catalogs: &Catalogs) -> Problems {
+    let mut context = Context::new(catalogs);
+    let _ = build(&mut context, partial);
+    let of_parts = |fault: &Fault| {
+        matches!(fault, Fault::UnknownPart { .. } | Fault::PartCycle { .. } | Fault::BadPart { .. })
+    };
+    context.faults.retain(|(_, fault)| of_parts(fault));
+    problems(context.faults)
+}
+
 fn problems(faults: Vec<(String, Fault)>) -> Problems {
     let mut problems = Problems::default();
     for (path, fault) in faults {

@@ -134,7 +134,7 @@ impl<'a> Lower<'a> {
         }
     }
 
-    /// The whole file. None where something that must be there is wrong; the problems say what.
+    /// The whole file, as far as it reads; the problems say what does not.
     pub(super) fn file(&mut self, root: &Map<raw::File>) -> Option<Description> {
         let file = self.map(root, "")?;
         let build = self.name("", "build", &file.build);
@@ -166,8 +166,9 @@ impl<'a> Lower<'a> {
             .map(|w| self.wiring(w))
             .unwrap_or_default();
         self.fit(&engine, &accessories, &shift, may.as_ref());
-        let build = build?;
-        let whole = Description {
+        // without a name there is a problem, and the description serves only to find more of them
+        let build = build.unwrap_or_else(|| leaf::exact(String::new(), "build".into()));
+        Some(Description {
             build,
             air,
             engine,
@@ -180,7 +181,6 @@ impl<'a> Lower<'a> {
             charger,
             may,
             wiring,
-        };
-        self.problems.is_empty().then_some(whole)
+        })
     }
 }
