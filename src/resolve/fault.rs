@@ -257,7 +257,8 @@ impl Fault {
     }
 
     /// What to write beside the mark on the line.
-    pub(crate) fn label(&self) -> String {
+    #[must_use]
+    pub fn label(&self) -> String {
         let near = match self {
             Fault::UnknownPart { nearest, .. } => nearest.as_deref(),
             Fault::UnknownName { name, known, .. } => {

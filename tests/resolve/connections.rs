@@ -55,7 +55,7 @@ fn direct_current_is_refused_on_alternating() {
 fn what_must_not_be_connected() {
     let (path, wrong) = fault(&swap(LIGHTING, ", feeds: lighting", ", feeds: lights"));
     assert_eq!(path, "accessories[0].circuit");
-    assert_eq!(wrong.help().unwrap(), "did you mean `lights`?");
+    assert_eq!(wrong.label(), "did you mean `lights`?");
     let (path, wrong) = fault(&swap(
         LIGHTING,
         "rectifier: none",

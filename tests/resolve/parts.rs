@@ -101,7 +101,7 @@ fn parts_that_are_not_there() {
         "{part: seat-heatr}",
     ));
     assert_eq!(path, "accessories[0].part");
-    assert_eq!(wrong.help().unwrap(), "did you mean `seat-heater`?");
+    assert_eq!(wrong.label(), "did you mean `seat-heater`?");
     let (path, _) = fault(&swap(BARE, "{capacity: 30 Ah}", "{part: battery-30}"));
     assert_eq!(path, "battery.part");
 }
