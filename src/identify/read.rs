@@ -1,0 +1,241 @@
+//! Bench tables as written: the keys of a build's charging entry, or a CSV table with those keys in its comments.
+
+use super::readings::{Reading, Readings};
+use crate::description::charging::{RectifierKind, RectifierText};
+use crate::description::{ChargingText, read_charging};
+use crate::problem::Refusal;
+use crate::quantity::parse::parse;
+use crate::quantity::unit::Unit;
+use crate::quantity::{Amps, Rpm, Volts};
+use crate::source::{Phases, Rectifier, Working};
+use std::fmt;
+
+/// Forward drop of one diode where none is written. Common practice, no source.
+const USUAL_DROP: Volts = Volts(0.9);
+
+/// Why a bench table cannot be read.
+#[derive(Debug)]
+pub enum ReadError {
+    /// The keys have problems, each with its place.
+    Keys(Refusal),
+    /// A key that is needed is not there.
+    Missing {
+        /// The key, with an example.
+        what: &'static str,
+    },
+    /// The readings were not taken through a rectifier.
+    NoRectifier,
+    /// The table has no row under a header.
+    Empty,
+    /// The header lacks a column.
+    Column {
+        /// The column.
+        name: &'static str,
+    },
+    /// A cell is not a number of its column's unit.
+    Cell {
+        /// Line of the file, from 1.
+        line: u64,
+        /// The column.
+        column: &'static str,
+        /// What stands there.
+        found: String,
+    },
+    /// The table itself cannot be taken apart.
+    Table {
+        /// Line of the file, from 1, where it is known.
+        line: Option<u64>,
+        /// What is wrong.
+        why: String,
+    },
+}
+
+impl fmt::Display for ReadError {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        match self {
+            ReadError::Keys(refusal) => write!(f, "{refusal}"),
+            ReadError::Missing { what } => write!(f, "the readings need {what}"),
+            ReadError::NoRectifier => {
+                write!(
+                    f,
+                    "`rectifier` is `none`: readings of mean amps are taken through a rectifier"
+                )
+            }
+            ReadError::Empty => write!(
+                f,
+                "there is no reading: a row needs `rpm`, `volts` and `amps`"
+            ),
+            ReadError::Column { name } => write!(f, "the table's header has no column `{name}`"),
+            ReadError::Cell {
+                line,
+                column,
+                found,
+            } => {
+                write!(f, "line {line}: `{found}` is no number for `{column}`")
+            }
+            ReadError::Table {
+                line: Some(line),
+                why,
+            } => write!(f, "line {line}: {why}"),
+            ReadError::Table { line: None, why } => write!(f, "{why}"),
+        }
+    }
+}
+
+impl std::error::Error for ReadError {}
+
+/// The bench table of a charging entry: `winding: {readings: [...], poles, ...}`, `rectifier`, `regulator: {holds}`.
+/// Without `working` the rows were taken at 20 °C; without a drop a diode's is 0.9 V.
+///
+/// # Errors
+/// [`ReadError`]: a key that is needed is not there, or there is no rectifier.
+pub fn readings_of(text: &ChargingText) -> Result<Readings, ReadError> {
+    let readings = without_rows(text)?;
+    if readings.rows.is_empty() {
+        Err(ReadError::Empty)
+    } else {
+        Ok(readings)
+    }
+}
+
+fn without_rows(text: &ChargingText) -> Result<Readings, ReadError> {
+    let winding = text.winding.as_ref();
+    let winding = winding.ok_or(ReadError::Missing {
+        what: "`winding`, with at least `poles: 12`",
+    })?;
+    let poles = winding.poles.as_ref().ok_or(ReadError::Missing {
+        what: "`poles: 12` in `winding`",
+    })?;
+    let rectifier = text.rectifier.as_ref();
+    let rectifier = rectifier.ok_or(ReadError::Missing {
+        what: "`rectifier: full-wave` or `half-wave`",
+    })?;
+    let mut working = Working::AS_MEASURED;
+    if let Some(temperature) = &winding.working {
+        working.winding = temperature.value;
+    }
+    if let Some(magnets) = &winding.magnets {
+        working.magnets = magnets.value;
+    }
+    let row = |row: &crate::description::ReadingText| Reading {
+        rpm: row.rpm.value,
+        bus: row.volts.value,
+        amps: row.amps.value,
+    };
+    let setpoint = text
+        .regulator
+        .as_ref()
+        .and_then(|regulator| regulator.holds.as_ref());
+    Ok(Readings {
+        rows: winding.readings.iter().map(row).collect(),
+        open_circuit: winding.open_circuit.as_ref().map(|k| k.value.0 / k.value.1),
+        resistance: winding.resistance.as_ref().map(|r| r.value),
+        poles: poles.value,
+        phases: match &winding.phases {
+            Some(phases) if phases.value == 3 => Phases::Three,
+            _ => Phases::One,
+        },
+        rectifier: rectifier_of(rectifier)?,
+        setpoint: setpoint.map(|holds| holds.value),
+        working,
+    })
+}
+
+fn rectifier_of(text: &RectifierText) -> Result<Rectifier, ReadError> {
+    let drop = text.drop.as_ref().map_or(USUAL_DROP, |drop| drop.value);
+    match text.kind.value {
+        RectifierKind::HalfWave => Ok(Rectifier::HalfWave { drop }),
+        RectifierKind::FullWave => Ok(Rectifier::FullWave { drop }),
+        RectifierKind::None => Err(ReadError::NoRectifier),
+    }
+}
+
+/// A bench table as CSV: a header with `rpm`, `volts` and `amps` in any order, numbers in those units, and before it the
+/// keys of a charging entry as comments:
+///
+/// ```text
+/// # winding:
+/// #   poles: 12
+/// #   resistance: 0.14 ohm
+/// # rectifier: full-wave
+/// rpm,volts,amps
+/// 1800,12.8,3.2
+/// 3600,14.1,15.0
+/// ```
+///
+/// `name` is what messages call the file.
+///
+/// # Errors
+/// [`ReadError`], with the line where there is one.
+pub fn read_csv(name: &str, text: &str) -> Result<Readings, ReadError> {
+    let keys = read_charging(name, &comments(text)).map_err(ReadError::Keys)?;
+    let mut readings = without_rows(&keys)?;
+    let mut reader = csv::ReaderBuilder::new()
+        .comment(Some(b'#'))
+        .trim(csv::Trim::All)
+        .from_reader(text.as_bytes());
+    let header = reader.headers().map_err(|e| table(&e))?.clone();
+    let column = |name: &'static str| {
+        let found = header
+            .iter()
+            .position(|cell| cell.eq_ignore_ascii_case(name));
+        found
+            .map(|index| (index, name))
+            .ok_or(ReadError::Column { name })
+    };
+    let (rpm, volts, amps) = (column("rpm")?, column("volts")?, column("amps")?);
+    for record in reader.records() {
+        let record = record.map_err(|e| table(&e))?;
+        readings.rows.push(Reading {
+            rpm: cell(&record, rpm, Rpm)?,
+            bus: cell(&record, volts, Volts)?,
+            amps: cell(&record, amps, Amps)?,
+        });
+    }
+    if readings.rows.is_empty() {
+        Err(ReadError::Empty)
+    } else {
+        Ok(readings)
+    }
+}
+
+/// The comments alone, every line and column where it was.
+fn comments(text: &str) -> String {
+    let keep = |line: &str| match line.strip_prefix('#') {
+        Some(rest) => format!(" {rest}\n"),
+        None => "\n".to_owned(),
+    };
+    text.lines().map(keep).collect()
+}
+
+fn table(error: &csv::Error) -> ReadError {
+    ReadError::Table {
+        line: error.position().map(csv::Position::line),
+        why: error.to_string(),
+    }
+}
+
+/// A number in the column's unit, with or without the unit written.
+fn cell<Q: Unit>(
+    record: &csv::StringRecord,
+    (index, column): (usize, &'static str),
+    of: fn(f64) -> Q,
+) -> Result<Q, ReadError> {
+    let found = record.get(index).unwrap_or_default();
+    if let Ok(number) = found.parse::<f64>()
+        && number.is_finite()
+    {
+        return Ok(of(number));
+    }
+    match parse::<Q>(found) {
+        Ok(measured) => Ok(measured.value),
+        Err(_) => {
+            let line = record.position().map_or(0, csv::Position::line);
+            Err(ReadError::Cell {
+                line,
+                column,
+                found: found.to_owned(),
+            })
+        }
+    }
+}
