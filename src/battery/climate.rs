@@ -177,6 +177,12 @@ impl Climate {
         }
     }
 
+    /// Current at which half of the polarisation acts.
+    #[must_use]
+    pub fn half_current(&self) -> Amps {
+        Amps(k::POLARISATION_HALF * self.cell.c20)
+    }
+
     /// Greatest charge the battery can hold: at vanishing current, 25 °C.
     #[must_use]
     pub fn capacity_greatest(&self) -> AmpHours {

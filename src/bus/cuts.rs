@@ -43,15 +43,9 @@ impl Cuts {
             .map_or(0, |k| k + 1)
     }
 
-    /// Whether nothing ever drops out.
-    #[must_use]
-    pub fn is_none(&self) -> bool {
-        self.limits.is_empty()
-    }
-
-    /// Whether anything drops out at these volts.
-    pub(super) fn reach(&self, volts: f64) -> bool {
-        self.limits.last().is_some_and(|limit| volts < *limit)
+    /// The volts from which nothing drops out.
+    pub(super) fn highest(&self) -> Option<f64> {
+        self.limits.last().copied()
     }
 
     /// Share of its current that an accessory takes at some volts, by its class.

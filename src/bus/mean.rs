@@ -3,19 +3,22 @@
 //! Bus volts as a function of the load have kinks: where a regulator lets go, and where the
 //! battery turns from charging to discharging. Between kinks they are smooth. So the cases are
 //! sorted into the regions between kinks; a region with a regulator holding has one voltage, and
-//! a smooth one is integrated at [`NODES`] loads that keep the first three moments of its cases
-//! on either side of its mean. Up to [`FEW`] cases in a region are each solved for themselves.
+//! a smooth one is integrated at two loads that keep the first three moments of its cases, or at
+//! two on either side of its mean where they spread. Up to [`FEW`] cases in a region are each
+//! solved for themselves.
 
 use super::Cuts;
-use super::point::{Boundary, Bus, Drawn};
+use super::point::{Bus, Drawn};
 use crate::battery::{Climate, Terminals};
-use crate::load::{At, Coincidences, LoadSum};
+use crate::load::{Coincidences, LoadSum};
 use crate::quantity::{Amps, Fraction, Volts};
+use std::ops::Range;
 
 /// Cases of a region that are solved one by one.
 const FEW: usize = 3;
-/// Loads that stand for half a region's cases.
-const NODES: usize = 2;
+/// Spread of a region's currents, against the current at which half of the battery's polarisation
+/// acts, from which its halves are integrated apart.
+const NARROW: f64 = 0.1;
 
 /// Means over the coincidences.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
@@ -96,32 +99,23 @@ impl Sums {
 /// The mean flow over all coincidences.
 #[must_use]
 pub fn flow(bus: &Bus<'_>, cases: &Coincidences, cuts: &Cuts, climate: &Climate) -> Flow {
-    let boundaries = bus.boundaries();
     let mut sums = Sums::default();
-    let lightest_first = cases.len();
-    if lightest_first > 1 || !cuts.is_none() {
-        let lowest = bus.operating_point(&cases.heaviest_total(), &boundaries);
-        if cuts.reach(lowest) {
-            with_cuts(bus, cases, cuts, climate, &boundaries, &mut sums);
-            return sums.flow();
-        }
+    if cuts
+        .highest()
+        .is_some_and(|limit| !bus.holds(&cases.heaviest_total(), limit))
+    {
+        with_cuts(bus, cases, cuts, climate, &mut sums);
+    } else {
+        by_region(bus, cases, climate, &mut sums);
     }
-    by_region(bus, cases, climate, &boundaries, &mut sums);
     sums.flow()
 }
 
 /// Every case by itself, accessories dropping out below their limits.
-fn with_cuts(
-    bus: &Bus<'_>,
-    cases: &Coincidences,
-    cuts: &Cuts,
-    climate: &Climate,
-    boundaries: &[Boundary],
-    sums: &mut Sums,
-) {
+fn with_cuts(bus: &Bus<'_>, cases: &Coincidences, cuts: &Cuts, climate: &Climate, sums: &mut Sums) {
     for (case, (share, _)) in cases.cases().enumerate() {
         let draw = cuts.gated(cases.by_class(case));
-        let volts = bus.operating_point(&draw, boundaries);
+        let volts = bus.operating_point(&draw);
         sums.add(
             share.0,
             volts,
@@ -132,163 +126,77 @@ fn with_cuts(
     }
 }
 
-/// One stretch of bus volts between two boundaries, and the cases that fall into it.
-#[derive(Default)]
-struct Region<'c> {
-    low: f64,
-    high: f64,
-    cases: Vec<(f64, &'c LoadSum)>,
-}
-
-fn by_region(
-    bus: &Bus<'_>,
-    cases: &Coincidences,
-    climate: &Climate,
-    boundaries: &[Boundary],
-    sums: &mut Sums,
-) {
-    let mut regions: Vec<Region<'_>> = Vec::with_capacity(boundaries.len() + 1);
+/// Cases in the order of what they draw, cut into the regions between boundaries. Their order at
+/// a boundary's volts is all but that at the reference volts; one that falls on the wrong side is
+/// solved at the boundary itself, where it is all but right.
+fn by_region(bus: &Bus<'_>, cases: &Coincidences, climate: &Climate, sums: &mut Sums) {
+    let mut from = 0;
     let mut high = bus.high;
-    for boundary in boundaries {
-        regions.push(Region {
-            low: boundary.volts,
-            high,
-            cases: Vec::new(),
-        });
-        high = boundary.volts;
-    }
-    regions.push(Region {
-        low: bus.low,
-        high,
-        cases: Vec::new(),
-    });
-    let mut held: Vec<(f64, f64)> = vec![(0.0, 0.0); boundaries.len()];
-    'cases: for (share, sum) in cases.cases() {
-        for (k, boundary) in boundaries.iter().enumerate() {
-            let drawn = sum.current(boundary.at).0;
-            if drawn <= boundary.above {
-                regions[k].cases.push((share.0, sum));
-                continue 'cases;
+    for boundary in bus.boundaries() {
+        let to = cases.first_from(from, |sum| sum.current(boundary.at).0 > boundary.above);
+        integrate(bus, cases, from..to, (boundary.volts, high), climate, sums);
+        from = to;
+        if boundary.below > boundary.above {
+            let to = cases.first_from(from, |sum| sum.current(boundary.at).0 > boundary.below);
+            let held = cases.tally(from..to);
+            if held.share > 0.0 {
+                let drawn = held.mean().current(boundary.at).0;
+                sums.add(held.share, boundary.volts, drawn, bus.terminals, climate);
             }
-            if drawn <= boundary.below {
-                held[k].0 += share.0;
-                held[k].1 += share.0 * drawn;
-                continue 'cases;
-            }
+            from = to;
         }
-        if let Some(last) = regions.last_mut() {
-            last.cases.push((share.0, sum));
-        }
-    }
-    for (boundary, (share, drawn)) in boundaries.iter().zip(&held) {
-        if *share > 0.0 {
-            sums.add(
-                *share,
-                boundary.volts,
-                drawn / share,
-                bus.terminals,
-                climate,
-            );
-        }
-    }
-    for region in &regions {
-        region.integrate(bus, climate, sums);
-    }
-}
-
-impl Region<'_> {
-    fn integrate(&self, bus: &Bus<'_>, climate: &Climate, sums: &mut Sums) {
-        if self.cases.len() <= FEW {
-            for (share, sum) in &self.cases {
-                self.solve(bus, climate, *share, *sum, sums);
-            }
+        if from == cases.len() {
             return;
         }
-        let at = At::new(Volts(bus.terminals.emf().0), bus.filaments);
-        let loads: Vec<f64> = self
-            .cases
-            .iter()
-            .map(|(_, sum)| sum.current(at).0)
-            .collect();
-        let share: f64 = self.cases.iter().map(|c| c.0).sum();
-        let mean = self
-            .cases
-            .iter()
-            .zip(&loads)
-            .map(|(c, i)| c.0 * i)
-            .sum::<f64>()
-            / share;
-        for heavy in [false, true] {
-            let half: Vec<(f64, f64, &LoadSum)> = self
-                .cases
-                .iter()
-                .zip(&loads)
-                .filter(|(_, load)| (**load >= mean) == heavy)
-                .map(|((p, sum), load)| (*p, *load, *sum))
-                .collect();
-            for (share, sum) in nodes(&half) {
-                self.solve(bus, climate, share, &sum, sums);
-            }
-        }
+        high = boundary.volts;
     }
+    integrate(
+        bus,
+        cases,
+        from..cases.len(),
+        (bus.low, high),
+        climate,
+        sums,
+    );
+}
 
-    fn solve(&self, bus: &Bus<'_>, climate: &Climate, share: f64, sum: &LoadSum, sums: &mut Sums) {
-        let volts = bus.balance(sum, self.low, self.high, bus.guess(sum));
+/// Adds the cases of one smooth region of bus volts.
+fn integrate(
+    bus: &Bus<'_>,
+    cases: &Coincidences,
+    range: Range<usize>,
+    volts: (f64, f64),
+    climate: &Climate,
+    sums: &mut Sums,
+) {
+    let mut solve = |share: f64, sum: &LoadSum| {
+        let solved = bus.balance(sum, volts.0, volts.1, bus.guess(sum));
         sums.add(
             share,
-            volts,
-            sum.drawn(volts, bus.filaments).0,
+            solved,
+            sum.drawn(solved, bus.filaments).0,
             bus.terminals,
             climate,
         );
-    }
-}
-
-/// Two loads with shares that keep the cases' share, mean, variance and third moment of current:
-/// the two-point Gauss rule of their distribution. Each load is composed as the cases near it
-/// are, by the regression of every law's share on the current.
-///
-/// ```text
-/// x± = μ + σ (γ/2 ± √(1 + γ²/4)),   w± = ½ (1 ∓ (γ/2) / √(1 + γ²/4))
-/// ```
-/// where μ mean, σ² variance, γ skewness of the currents. Source: derived (moment matching).
-fn nodes(cases: &[(f64, f64, &LoadSum)]) -> Vec<(f64, LoadSum)> {
-    let share: f64 = cases.iter().map(|c| c.0).sum();
-    if share <= 0.0 {
-        return Vec::new();
-    }
-    if cases.len() <= NODES {
-        return cases.iter().map(|(p, _, sum)| (*p, **sum)).collect();
-    }
-    let mean = cases.iter().map(|(p, i, _)| p * i).sum::<f64>() / share;
-    let moment = |n: i32| {
-        cases
-            .iter()
-            .map(|(p, i, _)| p * (i - mean).powi(n))
-            .sum::<f64>()
-            / share
     };
-    let centre: LoadSum = cases
-        .iter()
-        .map(|(p, _, sum)| sum.share(Fraction(p / share)))
-        .sum();
-    let variance = moment(2);
-    if variance < 1e-12 {
-        return vec![(share, centre)];
+    if range.len() <= FEW {
+        for case in range {
+            solve(cases.share(case), cases.total(case));
+        }
+        return;
     }
-    let tilt: LoadSum = cases
-        .iter()
-        .map(|(p, i, sum)| sum.share(Fraction(p * (i - mean) / (share * variance))))
-        .sum();
-    let sigma = variance.sqrt();
-    let half_skew = 0.5 * moment(3) / (variance * sigma);
-    let root = (1.0 + half_skew * half_skew).sqrt();
-    [1.0, -1.0]
-        .iter()
-        .map(|sign| {
-            let away = sigma * (half_skew + sign * root);
-            let weight = 0.5 * (1.0 - sign * half_skew / root);
-            (share * weight, centre + tilt.share(Fraction(away)))
-        })
-        .collect()
+    let all = cases.tally(range.clone());
+    let halves = if all.deviation() < NARROW * climate.half_current().0 {
+        [range, 0..0]
+    } else {
+        let middle = cases.first_above(range.clone(), all.mean_current());
+        [range.start..middle, middle..range.end]
+    };
+    for half in halves {
+        for (share, sum) in cases.tally(half).nodes() {
+            if share > 0.0 {
+                solve(share, &sum);
+            }
+        }
+    }
 }

@@ -57,7 +57,7 @@ impl Connected {
         let terminals = climate.at(charge);
         let bus = Bus::new(&self.supply, &terminals, self.loads.has_filaments(), cells);
         let draw = self.cuts.gated(self.loads.heaviest());
-        let volts = bus.operating_point(&draw, &bus.boundaries());
+        let volts = bus.operating_point(&draw);
         Point {
             bus: Volts(volts),
             loads: Amps(draw.drawn(volts, bus.filaments).0),

@@ -9,8 +9,8 @@ use crate::quantity::{Amps, Volts};
 pub(super) const LEAST_CELL_VOLTS: f64 = 0.05;
 /// Steps of the root search; halving alone closes the widest bracket within it.
 const MOST_STEPS: usize = 80;
-/// Imbalance that counts as balanced, A.
-const BALANCED: f64 = 1e-10;
+/// Imbalance from which one more of Newton's steps ends the search, A: it squares what is left.
+const BALANCED: f64 = 1e-6;
 
 /// Where a regulator or the zero of the battery current divides the bus voltages.
 #[derive(Clone, Copy, Debug)]
@@ -34,6 +34,39 @@ pub(super) struct Bus<'a> {
     /// Volts bracket of the whole search.
     pub low: f64,
     pub high: f64,
+}
+
+/// The boundaries of a bus, highest first.
+pub(super) struct Boundaries<'b> {
+    bus: &'b Bus<'b>,
+    /// Next of the supply's setpoints.
+    setpoint: usize,
+    /// The voltage an added current holds where no regulator does.
+    ceiling: Option<f64>,
+    /// The battery's own voltage.
+    rest: Option<f64>,
+}
+
+impl Iterator for Boundaries<'_> {
+    type Item = Boundary;
+
+    fn next(&mut self) -> Option<Boundary> {
+        if let Some(volts) = self.ceiling.take() {
+            return Some(self.bus.boundary(volts, true));
+        }
+        let held = self.bus.supply.setpoints().get(self.setpoint).copied();
+        match (held, self.rest) {
+            (Some(held), rest) if rest.is_none_or(|rest| held >= rest) => {
+                self.setpoint += 1;
+                Some(self.bus.boundary(held, true))
+            }
+            (_, Some(rest)) => {
+                self.rest = None;
+                Some(self.bus.boundary(rest, false))
+            }
+            (_, None) => None,
+        }
+    }
 }
 
 /// A draw on the bus as a function of volts: amps and slope.
@@ -76,28 +109,23 @@ impl<'a> Bus<'a> {
         (give - battery.total.0, give_slope - 1.0 / resistance.0)
     }
 
-    /// Setpoints and the battery's own voltage, highest first.
-    pub fn boundaries(&self) -> Vec<Boundary> {
-        let mut volts: Vec<(f64, bool)> =
-            self.supply.setpoints().iter().map(|v| (*v, true)).collect();
-        if self.supply.setpoints().is_empty() && self.supply.extra_holds() {
-            volts.push((self.supply.ceiling_with_extra(), true));
-        }
+    /// Setpoints and the battery's own voltage, highest first, each worked out when it is asked for.
+    pub fn boundaries(&self) -> Boundaries<'_> {
         let rest = self.terminals.emf().0;
-        if rest > self.low && rest < self.high {
-            volts.push((rest, false));
+        let ceiling = self.supply.setpoints().is_empty() && self.supply.extra_holds();
+        Boundaries {
+            bus: self,
+            setpoint: 0,
+            ceiling: ceiling.then(|| self.supply.ceiling_with_extra()),
+            rest: (rest > self.low && rest < self.high).then_some(rest),
         }
-        volts.sort_by(|a, b| b.0.total_cmp(&a.0));
-        volts
-            .iter()
-            .map(|(v, holds)| self.boundary(*v, *holds))
-            .collect()
     }
 
     fn boundary(&self, volts: f64, holds: bool) -> Boundary {
-        let below = self.spare(volts, Side::Below).0;
+        let battery = self.terminals.current(Volts(volts)).total.0;
+        let below = self.supply.give(volts, Side::Below).0 - battery;
         let above = if holds {
-            self.spare(volts, Side::Above).0
+            self.supply.give(volts, Side::Above).0 - battery
         } else {
             below
         };
@@ -107,6 +135,11 @@ impl<'a> Bus<'a> {
             below,
             at: At::new(Volts(volts), self.filaments),
         }
+    }
+
+    /// Whether a draw leaves the bus at or above some volts.
+    pub fn holds(&self, draw: &LoadSum, volts: f64) -> bool {
+        draw.current(At::new(Volts(volts), self.filaments)).0 <= self.spare(volts, Side::Below).0
     }
 
     /// The balance of a draw between two voltages where nothing switches: Newton's steps, kept
@@ -160,9 +193,9 @@ impl<'a> Bus<'a> {
     }
 
     /// The operating point of one draw, whatever switches on the way.
-    pub fn operating_point(&self, draw: &impl Drawn, boundaries: &[Boundary]) -> f64 {
+    pub fn operating_point(&self, draw: &impl Drawn) -> f64 {
         let (mut low, mut high) = (self.low, self.high);
-        for boundary in boundaries {
+        for boundary in self.boundaries() {
             let drawn = draw.drawn(boundary.volts, self.filaments).0;
             if drawn <= boundary.above {
                 low = boundary.volts;

@@ -6,7 +6,9 @@
 //! independent cycling accessories nothing is merged and the result is the enumeration.
 
 use super::LoadSum;
+use super::tally::Tally;
 use crate::quantity::{Fraction, Volts};
+use std::ops::Range;
 
 /// Cases kept before neighbours are merged.
 pub const MOST_CASES: usize = 96;
@@ -28,9 +30,12 @@ pub struct Coincidences {
     totals: Vec<LoadSum>,
     heaviest: Vec<LoadSum>,
     heaviest_total: LoadSum,
-    mean: LoadSum,
     filaments: bool,
     classes: usize,
+    /// Current of each case at the reference volts, rising.
+    currents: Vec<f64>,
+    /// Sums over the cases before each, and over all.
+    tallies: Vec<Tally>,
 }
 
 impl Coincidences {
@@ -53,23 +58,29 @@ impl Coincidences {
             }
         }
         sort_by_current(&mut cases, reference);
-        Coincidences::from_cases(&cases, heaviest, classes)
+        Coincidences::from_cases(&cases, heaviest, reference)
     }
 
     fn from_cases(
         cases: &[(f64, Vec<LoadSum>)],
         heaviest: Vec<LoadSum>,
-        classes: usize,
+        reference: Volts,
     ) -> Coincidences {
         let totals: Vec<LoadSum> = cases
             .iter()
             .map(|(_, sums)| sums.iter().copied().sum())
             .collect();
-        let mean = cases
+        let currents: Vec<f64> = totals
             .iter()
-            .zip(&totals)
-            .map(|((p, _), total)| total.share(Fraction(*p)))
-            .sum();
+            .map(|total| total.current_at(reference).0)
+            .collect();
+        let origin = cases.iter().zip(&currents).map(|((p, _), i)| p * i).sum();
+        let mut running = Tally::counted_from(origin);
+        let mut tallies = vec![running];
+        for ((share, _), (total, current)) in cases.iter().zip(totals.iter().zip(&currents)) {
+            running.enter(*share, current - origin, total);
+            tallies.push(running);
+        }
         let heaviest_total: LoadSum = heaviest.iter().copied().sum();
         Coincidences {
             shares: cases.iter().map(|(p, _)| *p).collect(),
@@ -78,11 +89,12 @@ impl Coincidences {
                 .flat_map(|(_, sums)| sums.iter().copied())
                 .collect(),
             filaments: heaviest_total.has_filaments(),
+            classes: heaviest.len(),
             totals,
+            currents,
+            tallies,
             heaviest,
             heaviest_total,
-            mean,
-            classes,
         }
     }
 
@@ -124,7 +136,32 @@ impl Coincidences {
     /// The mean draw.
     #[must_use]
     pub fn mean(&self) -> LoadSum {
-        self.mean
+        self.tally(0..self.len()).mean()
+    }
+
+    /// Share of the time of one case.
+    pub(crate) fn share(&self, case: usize) -> f64 {
+        self.shares[case]
+    }
+
+    /// What one case draws in all.
+    pub(crate) fn total(&self, case: usize) -> &LoadSum {
+        &self.totals[case]
+    }
+
+    /// The first case at or after one of which something holds that holds of all heavier ones.
+    pub(crate) fn first_from(&self, from: usize, holds: impl Fn(&LoadSum) -> bool) -> usize {
+        from + self.totals[from..].partition_point(|sum| !holds(sum))
+    }
+
+    /// The first case of some whose current at the reference volts is at or above another.
+    pub(crate) fn first_above(&self, range: Range<usize>, amps: f64) -> usize {
+        range.start + self.currents[range].partition_point(|current| *current < amps)
+    }
+
+    /// Sums over some cases.
+    pub(crate) fn tally(&self, range: Range<usize>) -> Tally {
+        self.tallies[range.end].less(&self.tallies[range.start])
     }
 
     /// Whether any filament is among them.

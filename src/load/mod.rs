@@ -1,6 +1,7 @@
 //! What accessories draw: the laws, and the sums of those that are on together.
 
 pub mod coincidence;
+mod tally;
 
 pub use coincidence::Coincidences;
 
@@ -49,13 +50,15 @@ impl At {
         At {
             volts: v,
             inverse: 1.0 / v,
-            filament: if filaments {
-                v.powf(FILAMENT_EXPONENT)
-            } else {
-                0.0
-            },
+            filament: if filaments { filament_volts(v) } else { 0.0 },
         }
     }
+}
+
+/// V^0.55. Never inlined: it would be worked out for buses without filaments too.
+#[inline(never)]
+fn filament_volts(volts: f64) -> f64 {
+    volts.powf(FILAMENT_EXPONENT)
 }
 
 impl LoadSum {
@@ -164,6 +167,13 @@ impl std::ops::Add for LoadSum {
             watts: self.watts + o.watts,
             filament: self.filament + o.filament,
         }
+    }
+}
+
+impl std::ops::Sub for LoadSum {
+    type Output = LoadSum;
+    fn sub(self, o: LoadSum) -> LoadSum {
+        self + o.share(Fraction(-1.0))
     }
 }
 

@@ -161,7 +161,12 @@ impl Machine {
             let touching = self.touching(charge, lowest, reserve)?;
             let span = charge.soc.0 - touching;
             let mut high = (charge.soc.0, here);
-            let held = PROBES.iter().find_map(|share| {
+            let probes = if self.has_constant_powers() {
+                &PROBES[..]
+            } else {
+                &PROBES[PROBES.len() - 1..]
+            };
+            let held = probes.iter().find_map(|share| {
                 let soc = touching + share * span;
                 let gain = at(soc).0;
                 if gain < 0.0 {
