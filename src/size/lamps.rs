@@ -2,16 +2,20 @@
 
 use super::margin::Margin;
 use super::nearest::{capital, largest};
+use super::worth::Worth;
 use crate::build::{Accessory, Build, Draw};
 use crate::check::answer::Change;
 use crate::quantity::format::text;
-use crate::quantity::{Fraction, Volts, Watts};
+use crate::quantity::{AmpHours, Fraction, Volts, Watts};
 
 /// Lumens a watt of an LED lamp. Common practice, no source: 80 to 110 at the lamp; the safe end.
 const LED_LUMENS_A_WATT: f64 = 80.0;
 /// Lumens a watt of a filament lamp that states no lumens: a halogen headlamp's. UN Regulation 37,
 /// category H7: 1500 lm at 58 W; common practice for others.
 const FILAMENT_LUMENS_A_WATT: f64 = 25.0;
+
+/// Share of what is lacking below which a change is not tried.
+const NOT_NEARLY: f64 = 0.7;
 
 /// Power of an LED lamp as bright as a filament lamp; none for anything else.
 ///
@@ -50,25 +54,25 @@ fn with_led(build: &Build, lamps: &[usize]) -> Build {
 }
 
 /// Filament lamps as LED: the one that takes most, where that is enough; else all of them.
-pub(super) fn led(build: &Build, margin: &mut Margin) -> Option<Change> {
+pub(super) fn led(
+    build: &Build,
+    worth: &Worth<'_>,
+    wanted: AmpHours,
+    margin: &mut Margin<'_>,
+) -> Option<Change> {
     let lamps: Vec<usize> = largest(build)
         .into_iter()
         .map(|(index, _)| index)
-        .filter(|i| {
-            build
-                .accessories
-                .get(*i)
-                .is_some_and(|a| led_power(a).is_some())
-        })
+        .filter(|i| build.accessories.get(*i).and_then(led_power).is_some())
         .collect();
-    let (first, _) = lamps.split_first()?;
-    let holds = |margin: &mut Margin, lamps: &[usize]| margin.of(&with_led(build, lamps)) >= 0.0;
-    let enough: &[usize] = if holds(margin, &[*first]) {
-        &lamps[..1]
-    } else if lamps.len() > 1 && holds(margin, &lamps) {
-        &lamps
-    } else {
-        return None;
+    let mut holds = |lamps: &[usize]| {
+        worth.of_led(lamps).0 > NOT_NEARLY * wanted.0 && margin.of(&with_led(build, lamps)) >= 0.0
+    };
+    let enough: &[usize] = match lamps.as_slice() {
+        [] => return None,
+        [first, ..] if holds(&[*first]) => lamps.get(..1)?,
+        [_, _, ..] if holds(&lamps) => &lamps,
+        _ => return None,
     };
     let changed = with_led(build, enough);
     if build.start < Fraction::ONE && !super::keeps_up(&changed) {

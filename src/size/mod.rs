@@ -8,6 +8,7 @@ mod nearest;
 #[cfg(test)]
 mod tests;
 mod value;
+mod worth;
 
 pub use knob::{Knob, knobs};
 pub use lamps::led_power;

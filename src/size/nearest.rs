@@ -1,19 +1,23 @@
 //! The nearest single changes that make a build keep up; what more it could carry when it does.
 //!
-//! Part of every check, so it looks at few things and loosely: amounts to two or three digits, on
-//! the side that holds, each proved.
+//! Part of every check, so it looks at few things and loosely: amounts to three digits, on the side
+//! that holds, each proved by the margin (see [`Margin`]).
 
 use super::knob::{self, Knob};
 use super::lamps;
 use super::margin::Margin;
-use super::value::{Rated, Round, written};
+use super::value::{Rated, Round, rounded, written};
+use super::worth::Worth;
 use crate::build::{Accessory, Build, State};
 use crate::check::answer::{Change, Verdict};
 use crate::check::{ReserveFrom, Ruling};
+use crate::ledger::Machine;
 use crate::load::LoadSum;
 use crate::quantity::format::{duration, percent, text};
 use crate::quantity::{AmpHours, Amps, Fraction, Hours, Rpm, Volts};
 
+/// Changes that are enough without looking at the battery.
+const FEW: usize = 3;
 /// Most changes listed.
 const MOST: usize = 6;
 /// How far a speed may rise, times.
@@ -24,65 +28,128 @@ const FASTER_TOP: f64 = 1.1;
 const WIDER: f64 = 4.0;
 /// Greatest battery looked at, times what there is.
 const LARGER: f64 = 4.0;
+/// Charge lacking, as a share of the battery's, up to which a larger battery may help.
+const BY_BATTERY: f64 = 0.1;
 /// Share of an amount left open before it is rounded and proved.
-const CLOSENESS: f64 = 4e-3;
+const CLOSENESS: f64 = 1e-2;
 /// Digits of an amount.
 const DIGITS: i32 = 3;
 /// Accessories looked at, those that take most.
-const LOADS: usize = 3;
+const LOADS: usize = 2;
 /// Volts a cell at which accessories are ranked.
 const RANKED_AT_CELL: f64 = 2.1;
 /// Duty below which an accessory may as well be left off, per cent.
 const HARDLY_ON: f64 = 5.0;
+/// Power below which there is no room to speak of, W.
+const HARDLY_ROOM: f64 = 1.0;
 
 /// The nearest single changes with which a build keeps up, each with its figure; when it keeps up
 /// already, what could still be added. At most six.
 #[must_use]
 pub fn nearest(build: &Build, ruling: &Ruling) -> Vec<Change> {
-    if build.battery.is_none() {
+    let Some(machine) = Machine::new(build) else {
         return Vec::new();
-    }
-    let mut margin = Margin::new(build);
+    };
+    let edge = ruling.lacks_current.unwrap_or(Amps::ZERO);
+    let worth = Worth::new(build, &machine, ruling.reserve.soc, edge);
+    let full = machine.battery.cmax() / f64::from(machine.shifts.max(1));
+    let margin = Margin::new(build, machine);
+    // What the cycle on the edge loses or gains is lacking or to spare, to first order.
+    let wanted = match ruling.lacks {
+        Some(lacks) if ruling.verdict != Verdict::KeepsUp => lacks,
+        _ => -margin.now * full,
+    };
+    let mut near = Near {
+        build,
+        worth,
+        margin,
+        wanted,
+    };
     let mut changes = if ruling.verdict == Verdict::KeepsUp {
-        what_more(build, &mut margin)
+        near.what_more()
     } else {
-        ways_out(build, ruling, &mut margin)
+        near.ways_out(ruling)
     };
     changes.truncate(MOST);
     changes
 }
 
-/// Single changes that make it keep up.
-fn ways_out(build: &Build, ruling: &Ruling, margin: &mut Margin) -> Vec<Change> {
-    let mut changes = Vec::new();
-    if ruling.lacks.is_some() {
-        changes.extend(faster(build, margin));
-        changes.extend(
-            knob::windings(build)
-                .filter_map(|(index, _, _)| wider(build, margin, &Knob::Winding(index))),
-        );
-    }
-    changes.extend(larger(build, ruling, margin));
-    if ruling.reserve.soc > Fraction::ONE {
-        return changes;
-    }
-    changes.extend(lamps::led(build, margin));
-    for (index, _) in largest(build).into_iter().take(LOADS) {
-        changes.extend(less(build, margin, index));
-    }
-    if ruling.lacks.is_none() {
-        changes.extend(shorter(build, margin));
-    }
-    changes
+/// What the search for changes goes by.
+struct Near<'b> {
+    build: &'b Build,
+    worth: Worth<'b>,
+    margin: Margin<'b>,
+    /// Worth that is wanted; below zero what may be lost.
+    wanted: AmpHours,
 }
 
-/// Each running speed, raised to the next one or by a share.
-fn faster(build: &Build, margin: &mut Margin) -> Vec<Change> {
-    let mut changes = Vec::new();
-    let speeds = 0..build.speeds.len();
-    for (index, now) in speeds.filter_map(|i| Some((i, build.speeds.get(i)?.rpm.value.0))) {
+impl Near<'_> {
+    /// Single changes that make it keep up.
+    fn ways_out(&mut self, ruling: &Ruling) -> Vec<Change> {
+        let build = self.build;
+        let mut changes = Vec::new();
+        if ruling.reserve.soc > Fraction::ONE {
+            changes.extend(self.larger(Knob::ColdCranking));
+            changes.extend(self.larger(Knob::Capacity));
+            return changes;
+        }
+        if ruling.lacks.is_some() {
+            for speed in 0..build.speeds.len() {
+                changes.extend(self.faster(speed));
+            }
+            let windings: Vec<usize> = knob::windings(build).map(|(i, _, _)| i).collect();
+            for index in windings {
+                changes.extend(self.wider(index));
+            }
+        }
+        changes.extend(lamps::led(
+            build,
+            &self.worth,
+            self.wanted,
+            &mut self.margin,
+        ));
+        for (index, _) in largest(build).into_iter().take(LOADS) {
+            changes.extend(self.less(index));
+        }
+        let capacity = build.battery.as_ref().map(|b| b.label.capacity);
+        let small = ruling
+            .lacks
+            .zip(capacity)
+            .is_none_or(|(lacks, capacity)| lacks < BY_BATTERY * capacity);
+        // A battery is looked for last, and only where there is little else: it takes longest.
+        let small = small && changes.len() < FEW;
+        if small {
+            changes.extend(self.larger(Knob::Capacity));
+        }
+        if small && ruling.reserve.from == ReserveFrom::ColdStart {
+            changes.extend(self.larger(Knob::ColdCranking));
+        }
+        if ruling.lacks.is_none() {
+            changes.extend(self.shorter());
+        }
+        changes
+    }
+
+    /// The amount at which it just keeps up, rounded to the side that holds.
+    fn amount(&mut self, knob: &Knob, now: f64, limit: f64, side: Round) -> Option<f64> {
+        let x = self
+            .margin
+            .by_worth(&self.worth, self.wanted, knob, (now, limit))?;
+        if x == limit {
+            return Some(x);
+        }
+        let x = rounded(x, DIGITS, side);
+        let proved =
+            self.build.start >= Fraction::ONE || super::keeps_up(&knob.apply(self.build, x));
+        proved.then_some(x)
+    }
+
+    /// A running speed, raised to the next one or by a share.
+    fn faster(&mut self, index: usize) -> Option<Change> {
+        let build = self.build;
+        let now = build.speeds.get(index)?.rpm.value.0;
         if !knob::occurs(build, State::Running(index)) {
-            continue;
+            return None;
         }
         let all = build.speeds.iter().map(|s| s.rpm.value.0);
         let next = all.filter(|rpm| *rpm > now).fold(f64::INFINITY, f64::min);
@@ -92,56 +159,41 @@ fn faster(build: &Build, margin: &mut Margin) -> Vec<Change> {
             FASTER_TOP * now
         };
         let knob = Knob::Speed(index);
-        if let Some(rpm) = least(margin, &knob, now, most) {
-            let name = build.state_name(State::Running(index));
-            let (to, from) = (text(Rpm(rpm)), text(Rpm(now)));
-            changes.push(change(
-                build,
-                &knob,
-                rpm,
-                format!("{name} at {to} instead of {from}"),
-            ));
-        }
+        let rpm = self.amount(&knob, now, most, Round::Up)?;
+        let name = build.state_name(State::Running(index));
+        let (to, from) = (text(Rpm(rpm)), text(Rpm(now)));
+        let words = format!("{name} at {to} instead of {from}");
+        Some(change(build, &knob, rpm, &words))
     }
-    changes
-}
 
-/// A winding of the same volts and more current.
-fn wider(build: &Build, margin: &mut Margin, knob: &Knob) -> Option<Change> {
-    let Knob::Winding(index) = knob else {
-        return None;
-    };
-    let winding = knob::winding(build, *index)?;
-    let now = winding.scale.value.0;
-    let scale = least(margin, knob, now, WIDER * now)?;
-    let rated = Rated::of(build, winding);
-    let (rpm, _) = rated.point();
-    let (amps, before) = (rated.at(Fraction(scale)), rated.at(Fraction(now)));
-    let words = format!(
-        "a winding of {} at {} instead of {}",
-        text(amps),
-        text(rpm),
-        text(before)
-    );
-    Some(change(build, knob, scale, words))
-}
+    /// A winding of the same volts and more current.
+    fn wider(&mut self, index: usize) -> Option<Change> {
+        let build = self.build;
+        let knob = Knob::Winding(index);
+        let winding = knob::winding(build, index)?;
+        let now = winding.scale.value.0;
+        let scale = self.amount(&knob, now, WIDER * now, Round::Up)?;
+        let rated = Rated::of(build, winding);
+        let (rpm, _) = rated.point();
+        let (amps, before) = (rated.at(Fraction(scale)), rated.at(Fraction(now)));
+        let (amps, rpm, before) = (text(amps), text(rpm), text(before));
+        let words = format!("a winding of {amps} at {rpm} instead of {before}");
+        Some(change(build, &knob, scale, &words))
+    }
 
-/// A larger battery, and one that cranks better where the cold start sets the reserve.
-fn larger(build: &Build, ruling: &Ruling, margin: &mut Margin) -> Vec<Change> {
-    let mut changes = Vec::new();
-    let starts = matches!(
-        ruling.reserve.from,
-        ReserveFrom::ColdStart | ReserveFrom::NeverCranks { .. }
-    );
-    for knob in [Knob::Capacity, Knob::ColdCranking] {
-        let Some(now) = knob.now(build) else { continue };
-        if knob == Knob::ColdCranking && !starts {
-            continue;
-        }
+    /// A larger battery, or one that cranks better.
+    fn larger(&mut self, knob: Knob) -> Option<Change> {
+        let build = self.build;
+        let now = knob.now(build)?;
         let most = (LARGER * now).min(knob.range(build).1);
-        let Some(x) = least(margin, &knob, now, most) else {
-            continue;
-        };
+        if most <= now {
+            return None;
+        }
+        let (here, top) = (self.margin.now, self.margin.at(&knob, most));
+        let x = self
+            .margin
+            .edge(&knob, (now, here), (most, top), CLOSENESS)?;
+        let x = self.margin.proved(&knob, x, DIGITS, Round::Up)?;
         let words = if knob == Knob::Capacity {
             let (to, from) = (text(AmpHours(x)), text(AmpHours(now)));
             format!("a battery of {to} instead of {from}")
@@ -149,142 +201,116 @@ fn larger(build: &Build, ruling: &Ruling, margin: &mut Margin) -> Vec<Change> {
             let (to, from) = (text(Amps(x)), text(Amps(now)));
             format!("a battery of {to} cold cranking instead of {from}")
         };
-        changes.push(change(build, &knob, x, words));
+        Some(change(build, &knob, x, &words))
     }
-    changes
-}
 
-/// Less duty of an accessory.
-fn less(build: &Build, margin: &mut Margin, index: usize) -> Option<Change> {
-    let accessory = build.accessories.get(index)?;
-    let knob = most_of_duty(build, index)?;
-    let now = knob.now(build)?;
-    let off = margin.at(&knob, 0.0);
-    let x = margin.edge(&knob, (now, margin.now), (0.0, off), CLOSENESS)?;
-    let Knob::Duty { state, .. } = knob else {
-        return None;
-    };
-    let at = state.map_or(String::new(), |s| format!(" at {}", build.state_name(s)));
-    let name = &accessory.name;
-    if x < HARDLY_ON {
-        let words = format!("{name} off{at}");
-        return Some(change(build, &knob, 0.0, words));
-    }
-    let x = margin.proved(&knob, x, DIGITS, Round::Down)?;
-    let (to, from) = (
-        text(Fraction::from_percent(x)),
-        percent(Fraction::from_percent(now)),
-    );
-    let words = format!("{name} on {to} of the time{at} instead of {from}");
-    Some(change(build, &knob, x, words))
-}
-
-/// Less time standing with the key on.
-fn shorter(build: &Build, margin: &mut Margin) -> Option<Change> {
-    let stopped = |i: &usize| build.shift.get(*i).map(|s| (s.state, s.time.value));
-    let (index, time) = (0..build.shift.len())
-        .filter_map(|i| {
-            stopped(&i)
-                .filter(|(s, _)| *s == State::Stopped)
-                .map(|s| (i, s.1))
-        })
-        .max_by(|a, b| a.1.0.total_cmp(&b.1.0))?;
-    let knob = Knob::Time(index);
-    let none = margin.at(&knob, 0.0);
-    let x = margin.edge(&knob, (time.minutes(), margin.now), (0.0, none), CLOSENESS)?;
-    let x = margin.proved(&knob, x, DIGITS, Round::Down)?;
-    let (to, from) = (duration(Hours::from_minutes(x)), duration(time));
-    let words = format!("stopped for {to} instead of {from}");
-    Some(change(build, &knob, x, words))
-}
-
-/// What more a build that keeps up could carry.
-fn what_more(build: &Build, margin: &mut Margin) -> Vec<Change> {
-    let mut changes = Vec::new();
-    if margin.now < 0.0 {
-        // It holds itself up from a full battery only: no room to speak of.
-        return changes;
-    }
-    let knob = Knob::AddedPower;
-    let (_, most) = knob.range(build);
-    let heaviest = margin.at(&knob, most);
-    let watts = margin
-        .edge(&knob, (most, heaviest), (0.0, margin.now), CLOSENESS / 8.0)
-        .and_then(|x| margin.proved(&knob, x, DIGITS, Round::Down));
-    if let Some(watts) = watts.filter(|w| *w >= 1.0) {
-        let words = format!(
-            "room for {} more whenever the engine runs",
-            written(watts, "W")
-        );
-        changes.push(change(build, &knob, watts, words));
-    }
-    let cycling = |i: usize| {
-        let knob = most_of_duty(build, i)?;
+    /// Less duty of an accessory.
+    fn less(&mut self, index: usize) -> Option<Change> {
+        let build = self.build;
+        let name = &build.accessories.get(index)?.name;
+        let (knob, at) = most_of_duty(build, index)?;
         let now = knob.now(build)?;
-        (now < 100.0).then_some((i, knob, now))
-    };
-    let loads: Vec<_> = largest(build)
-        .into_iter()
-        .filter_map(|l| cycling(l.0))
-        .collect();
-    for (index, knob, now) in loads.into_iter().take(LOADS - 1) {
-        changes.extend(more(build, margin, index, &knob, now));
+        let x = self.amount(&knob, now, 0.0, Round::Down)?;
+        if x < HARDLY_ON {
+            return Some(change(build, &knob, 0.0, &format!("{name} off{at}")));
+        }
+        let to = text(Fraction::from_percent(x));
+        let from = percent(Fraction::from_percent(now));
+        let words = format!("{name} on {to} of the time{at} instead of {from}");
+        Some(change(build, &knob, x, &words))
     }
-    changes
+
+    /// Less time standing with the key on.
+    fn shorter(&mut self) -> Option<Change> {
+        let build = self.build;
+        let steps = build.shift.iter().enumerate();
+        let (index, longest) = steps
+            .filter(|(_, step)| step.state == State::Stopped)
+            .max_by(|a, b| a.1.time.value.0.total_cmp(&b.1.time.value.0))?;
+        let time = longest.time.value;
+        let knob = Knob::Time(index);
+        let (here, none) = (self.margin.now, self.margin.at(&knob, 0.0));
+        let x = self
+            .margin
+            .edge(&knob, (time.minutes(), here), (0.0, none), CLOSENESS)?;
+        let x = self.margin.proved(&knob, x, DIGITS, Round::Down)?;
+        let (to, from) = (duration(Hours::from_minutes(x)), duration(time));
+        let words = format!("stopped for {to} instead of {from}");
+        Some(change(build, &knob, x, &words))
+    }
+
+    /// What more a build that keeps up could carry.
+    fn what_more(&mut self) -> Vec<Change> {
+        let build = self.build;
+        let mut changes = Vec::new();
+        if self.margin.now <= 0.0 {
+            // It holds itself up from a full battery only: no room to speak of.
+            return changes;
+        }
+        let knob = Knob::AddedPower;
+        let (_, most) = knob.range(build);
+        let watts = self.amount(&knob, 0.0, most, Round::Down);
+        if let Some(watts) = watts.filter(|w| *w >= HARDLY_ROOM) {
+            let watts = written(watts, "W");
+            let words = format!("room for {watts} more whenever the engine runs");
+            changes.push(Change {
+                text: capital(&words),
+                set: None,
+                settles_soc: None,
+            });
+        }
+        let cycling: Vec<usize> = largest(build)
+            .into_iter()
+            .map(|(index, _)| index)
+            .filter(|index| {
+                most_of_duty(build, *index)
+                    .and_then(|(knob, _)| knob.now(build))
+                    .is_some_and(|now| now < 100.0)
+            })
+            .collect();
+        for index in cycling.into_iter().take(LOADS) {
+            changes.extend(self.more(index));
+        }
+        changes
+    }
+
+    /// More duty of an accessory that cycles.
+    fn more(&mut self, index: usize) -> Option<Change> {
+        let build = self.build;
+        let name = &build.accessories.get(index)?.name;
+        let (knob, at) = most_of_duty(build, index)?;
+        let now = knob.now(build)?;
+        let (_, most) = knob.range(build);
+        let x = self.amount(&knob, now, most, Round::Down)?;
+        let from = percent(Fraction::from_percent(now));
+        let to = text(Fraction::from_percent(x));
+        let words = format!("{name} may be on {to} of the time{at} instead of {from}");
+        (x > now).then(|| change(build, &knob, x, &words))
+    }
 }
 
-/// More duty of an accessory that cycles.
-fn more(build: &Build, margin: &mut Margin, index: usize, knob: &Knob, now: f64) -> Option<Change> {
-    let name = &build.accessories.get(index)?.name;
-    let Knob::Duty { state, .. } = knob else {
-        return None;
-    };
-    let at = state.map_or(String::new(), |s| format!(" at {}", build.state_name(s)));
-    let (_, most) = knob.range(build);
-    let all = margin.at(knob, most);
-    let from = percent(Fraction::from_percent(now));
-    if all >= 0.0 {
-        let to = percent(Fraction::from_percent(most));
-        let words = format!("{name} on {to} of the time{at} instead of {from} does no harm");
-        return Some(change(build, knob, most, words));
-    }
-    let x = margin.edge(knob, (most, all), (now, margin.now), CLOSENESS)?;
-    let x = margin.proved(knob, x, DIGITS, Round::Down)?;
-    let to = text(Fraction::from_percent(x));
-    let words = format!("{name} on up to {to} of the time{at} instead of {from}");
-    (x > now).then(|| change(build, knob, x, words))
-}
-
-/// The least amount between what is and the most that keeps up, rounded up and proved.
-fn least(margin: &mut Margin, knob: &Knob, now: f64, most: f64) -> Option<f64> {
-    if most <= now {
-        return None;
-    }
-    let top = margin.at(knob, most);
-    let x = margin.edge(knob, (now, margin.now), (most, top), CLOSENESS)?;
-    margin
-        .proved(knob, x, DIGITS, Round::Up)
-        .filter(|x| *x <= 1.01 * most)
-}
-
-/// The duty of an accessory in which it takes most: in every running state where that is one
-/// figure, else in one.
-fn most_of_duty(build: &Build, index: usize) -> Option<Knob> {
-    let knobs = knob::duties(build, index);
+/// The duty of an accessory in which it takes most, and where that is in words: in every running
+/// state, where that is one figure, else in one state.
+fn most_of_duty(build: &Build, index: usize) -> Option<(Knob, String)> {
+    let duty = &build.accessories.get(index)?.duty;
     let weight = |knob: &Knob| -> f64 {
         let Knob::Duty { state, .. } = knob else {
             return 0.0;
         };
-        let duty = &build.accessories[index].duty;
         let steps = build.shift.iter().filter(|step| match state {
             Some(state) => step.state == *state,
             None => matches!(step.state, State::Running(_)),
         });
         steps.map(|s| duty.share(s.state).0 * s.time.value.0).sum()
     };
-    knobs
+    let knob = knob::duties(build, index)
         .into_iter()
-        .max_by(|a, b| weight(a).total_cmp(&weight(b)))
+        .max_by(|a, b| weight(a).total_cmp(&weight(b)))?;
+    let Knob::Duty { state, .. } = knob else {
+        return None;
+    };
+    let at = state.map_or(String::new(), |s| format!(" at {}", build.state_name(s)));
+    Some((knob, at))
 }
 
 /// Accessories on the battery bus with their Ah in a shift at a rested battery's volts, most first.
@@ -310,12 +336,12 @@ pub(super) fn largest(build: &Build) -> Vec<(usize, AmpHours)> {
 }
 
 /// A change of one knob.
-fn change(build: &Build, knob: &Knob, x: f64, words: String) -> Change {
+fn change(build: &Build, knob: &Knob, x: f64, words: &str) -> Change {
     let set = knob
         .path(build)
         .map(|path| format!("{path}={}", written(x, knob.unit())));
     Change {
-        text: capital(&words),
+        text: capital(words),
         set,
         settles_soc: None,
     }
