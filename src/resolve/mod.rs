@@ -58,7 +58,10 @@ pub fn more_problems(partial: &Description, catalogs: &Catalogs) -> Problems {
     let mut context = Context::new(catalogs);
     let _ = build(&mut context, partial);
     let of_parts = |fault: &Fault| {
-        matches!(fault, Fault::UnknownPart { .. } | Fault::PartCycle { .. } | Fault::BadPart { .. })
+        matches!(
+            fault,
+            Fault::UnknownPart { .. } | Fault::PartCycle { .. } | Fault::BadPart { .. }
+        )
     };
     context.faults.retain(|(_, fault)| of_parts(fault));
     problems(context.faults)
