@@ -12,6 +12,7 @@ pub mod description;
 pub mod identify;
 pub mod ledger;
 pub mod load;
+pub mod odds;
 pub mod outlook;
 pub mod problem;
 pub mod quantity;

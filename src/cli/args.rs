@@ -97,6 +97,8 @@ pub enum Colour {
 pub enum Command {
     /// Does the charging system keep up? The verdict, with its working
     Check(CheckArgs),
+    /// How often do builds within the tolerances keep up, and which tolerance matters most?
+    Odds(OddsArgs),
 }
 
 /// Which build, and what is changed in it.
@@ -140,4 +142,24 @@ pub struct CheckArgs {
     /// Date to print on the page, as you write it
     #[arg(long, value_name = "DATE")]
     pub date: Option<String>,
+}
+
+/// `odds`.
+#[derive(Args, Debug)]
+pub struct OddsArgs {
+    /// Build file; `-` is standard input
+    #[arg(value_name = "BUILD")]
+    pub build: String,
+    /// Changes to the build.
+    #[command(flatten)]
+    pub changes: BuildArgs,
+    /// How many builds are drawn
+    #[arg(long, value_name = "COUNT", default_value_t = 4096, value_parser = clap::value_parser!(u64).range(1..=1_000_000))]
+    pub runs: u64,
+    /// Which sequence of draws: the same seed gives the same answer
+    #[arg(long, value_name = "NUMBER", default_value_t = 1)]
+    pub seed: u64,
+    /// Write the worst draw as a build file
+    #[arg(long, value_name = "FILE.yaml")]
+    pub worst: Option<PathBuf>,
 }

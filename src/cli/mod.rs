@@ -4,8 +4,10 @@
 pub mod args;
 mod check;
 mod input;
+mod odds;
 mod output;
 mod why;
+mod progress;
 
 use ampledger::problem::Refusal;
 use args::{Arguments, Command};
@@ -25,6 +27,7 @@ pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
     let common = &arguments.common;
     match &arguments.command {
         Command::Check(check) => check::run(check, common),
+        Command::Odds(odds) => odds::run(odds, common),
     }
 }
 

@@ -103,6 +103,18 @@ impl<T: Unit> Bounds<T> {
     }
 }
 
+impl<T: Unit> Bounds<T> {
+    /// The value, or the limit that it lies beyond.
+    #[must_use]
+    pub fn held(&self, value: T) -> T {
+        T::of(
+            value
+                .amount()
+                .clamp(self.least.value::<T>(), self.most.value::<T>()),
+        )
+    }
+}
+
 impl fmt::Display for OutOfBounds {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         let OutOfBounds { name, limit, side } = self;

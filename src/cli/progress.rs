@@ -1,0 +1,50 @@
+//! How far a long command has come, on standard error.
+
+use indicatif::{ProgressBar, ProgressDrawTarget, ProgressStyle};
+use std::io::IsTerminal;
+use std::sync::atomic::{AtomicBool, Ordering};
+use std::time::{Duration, Instant};
+
+/// Commands shorter than this show nothing.
+const PATIENCE: Duration = Duration::from_millis(500);
+
+/// A bar with the time left: only on a terminal, and only after half a second.
+pub struct Progress {
+    bar: ProgressBar,
+    began: Instant,
+    waits: AtomicBool,
+}
+
+impl Progress {
+    /// Of so many steps.
+    pub fn new(steps: u64, what: &'static str) -> Progress {
+        let bar = ProgressBar::with_draw_target(Some(steps), ProgressDrawTarget::hidden());
+        let style = ProgressStyle::with_template("{msg} {bar:30} {pos} of {len}, {eta} left");
+        if let Ok(style) = style {
+            bar.set_style(style);
+        }
+        bar.set_message(what);
+        Progress {
+            bar,
+            began: Instant::now(),
+            waits: AtomicBool::new(std::io::stderr().is_terminal()),
+        }
+    }
+
+    /// One step more; from any thread.
+    pub fn step(&self) {
+        self.bar.inc(1);
+        if self.waits.load(Ordering::Relaxed)
+            && self.began.elapsed() > PATIENCE
+            && self.waits.swap(false, Ordering::Relaxed)
+        {
+            self.bar.set_draw_target(ProgressDrawTarget::stderr());
+        }
+    }
+}
+
+impl Drop for Progress {
+    fn drop(&mut self) {
+        self.bar.finish_and_clear();
+    }
+}
