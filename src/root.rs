@@ -104,40 +104,47 @@ pub fn bracketed(
             at_high,
         });
     }
-    // a is the newest point, b the end opposite in sign, c the point a replaced.
-    let (mut a, mut fa) = (high, at_high);
-    let (mut b, mut fb) = (low, at_low);
+    narrow(at, (high, at_high), (low, at_low), tolerance)
+}
+
+/// The search of [`bracketed`], between two points of opposite sign.
+fn narrow(
+    mut at: impl FnMut(f64) -> Result<f64, RootError>,
+    mut newest: (f64, f64),
+    mut opposite: (f64, f64),
+    tolerance: f64,
+) -> Result<f64, RootError> {
     let mut share = 0.5;
     for _ in 2..MOST_EVALUATIONS {
-        let x = a + share * (b - a);
+        let x = newest.0 + share * (opposite.0 - newest.0);
         let fx = at(x)?;
-        let (c, fc);
-        if (fx > 0.0) == (fa > 0.0) {
-            (c, fc) = (a, fa);
+        let replaced;
+        if (fx > 0.0) == (newest.1 > 0.0) {
+            replaced = newest;
         } else {
-            (c, fc) = (b, fb);
-            (b, fb) = (a, fa);
+            replaced = opposite;
+            opposite = newest;
         }
-        (a, fa) = (x, fx);
-        let (best, f_best) = if fa.abs() < fb.abs() {
-            (a, fa)
-        } else {
-            (b, fb)
-        };
-        let width = (b - a).abs();
-        let least = 0.5 * tolerance + 2.0 * f64::EPSILON * best.abs();
-        if f_best == 0.0 || width <= 2.0 * least {
-            return Ok(best);
+        newest = (x, fx);
+        let best = better(newest, opposite);
+        let width = (opposite.0 - newest.0).abs();
+        let least = 0.5 * tolerance + 2.0 * f64::EPSILON * best.0.abs();
+        if best.1 == 0.0 || width <= 2.0 * least {
+            return Ok(best.0);
         }
-        share = next_share((a, fa), (b, fb), (c, fc)).clamp(least / width, 1.0 - least / width);
+        share = next_share(newest, opposite, replaced).clamp(least / width, 1.0 - least / width);
     }
-    let residual = if fa.abs() < fb.abs() { fa } else { fb };
     Err(RootError::NotConverged {
-        low: a.min(b),
-        high: a.max(b),
-        residual,
+        low: newest.0.min(opposite.0),
+        high: newest.0.max(opposite.0),
+        residual: better(newest, opposite).1,
         evaluations: MOST_EVALUATIONS,
     })
+}
+
+/// The point nearer to zero.
+fn better(a: (f64, f64), b: (f64, f64)) -> (f64, f64) {
+    if a.1.abs() < b.1.abs() { a } else { b }
 }
 
 /// Where between the newest point (0) and the opposite end (1) to look next.

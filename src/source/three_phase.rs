@@ -219,7 +219,7 @@ fn commutating(s: &Sector<'_>, add: &mut impl FnMut(&Piece)) {
         let (e1, opposed) = ((-rho * d).exp(), u / 3.0 * g(d));
         s_b(s.on + d) + opposed - b1 * e1 - e1 * at_next(d, e1, opposed)
     };
-    let d = root::within(mismatch, 0.0, T, 1e-15);
+    let d = root::within(mismatch, 0.0, T, 1e-13);
     let three = s.three_from(at_next(d, (-rho * d).exp(), u / 3.0 * g(d)));
     let over = s.on + d;
     add_three(&three, over, add);

@@ -2,8 +2,8 @@
 
 use ampledger::quantity::{Amps, Henries, Ohms, Rpm, Volts, VoltsPerRpm};
 use ampledger::source::{
-    CircuitLoad, Phases, Rectifier, Winding, half_wave_coil, lamps_on_ac, rectified, short_circuit,
-    without_battery,
+    CircuitLoad, CircuitOutput, Phases, Rectifier, Winding, half_wave_coil, lamps_on_ac, rectified,
+    short_circuit, without_battery,
 };
 
 /// What hangs on the winding. Volts, ohms, henries, watts.
@@ -127,26 +127,14 @@ impl Case {
                 half_wave,
             } => {
                 let out = rectified(&w, &rectifier(drop, half_wave), rpm, Volts(bus));
-                Figures {
-                    dc: out.dc.0,
-                    rms: out.winding_rms.0,
-                    volts: 0.0,
-                }
+                figures(out.dc, out.winding_rms, Volts::ZERO)
             }
-            Load::Short => Figures {
-                dc: 0.0,
-                rms: short_circuit(&w, rpm).0,
-                volts: 0.0,
-            },
+            Load::Short => figures(Amps::ZERO, short_circuit(&w, rpm), Volts::ZERO),
             Load::Lamps { watts, at, heater } => {
                 let current =
                     |v: Volts| Amps(watts / at * (v.0 / at).powf(0.55)) + v / Ohms(heater);
                 let out = lamps_on_ac(&w, rpm, current).expect("an operating point");
-                Figures {
-                    dc: 0.0,
-                    rms: out.amps.0,
-                    volts: out.volts.0,
-                }
+                figures(Amps::ZERO, out.amps, out.volts)
             }
             Load::Coil {
                 coil,
@@ -160,12 +148,7 @@ impl Case {
                     resistive: resistor.map(Ohms),
                 };
                 let out = without_battery(&w, &rectifier(drop, half_wave), rpm, &load, true);
-                let out = out.expect("an operating point");
-                Figures {
-                    dc: out.coil.0,
-                    rms: out.winding_rms.0,
-                    volts: out.volts.0,
-                }
+                of_circuit(&out.expect("an operating point"))
             }
             Load::CoilAlone {
                 coil,
@@ -173,15 +156,22 @@ impl Case {
                 drop,
             } => {
                 let out = half_wave_coil(&w, Volts(drop), rpm, Ohms(coil), Henries(inductance));
-                let out = out.expect("an operating point");
-                Figures {
-                    dc: out.coil.0,
-                    rms: out.winding_rms.0,
-                    volts: out.volts.0,
-                }
+                of_circuit(&out.expect("an operating point"))
             }
         }
     }
+}
+
+fn figures(dc: Amps, rms: Amps, volts: Volts) -> Figures {
+    Figures {
+        dc: dc.0,
+        rms: rms.0,
+        volts: volts.0,
+    }
+}
+
+fn of_circuit(out: &CircuitOutput) -> Figures {
+    figures(out.coil, out.winding_rms, out.volts)
 }
 
 fn rectifier(drop: f64, half_wave: bool) -> Rectifier {
