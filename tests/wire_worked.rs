@@ -270,7 +270,7 @@ shift: [{idle: 1 h}, {governed: 1 h}]
     assert_eq!(row.worst_state, "governed");
     let circuits = ampledger::circuit::circuits(&build).unwrap();
     let governed = &circuits[0].accessories[0].states[1];
-    let amps = 54.0 / 12.8 * (governed.heating_highest.0 / 12.8).powf(0.55);
+    let amps = 54.0 / 12.8 * (governed.heating.highest.0 / 12.8).powf(0.55);
     near(row.amps.0, amps, 1e-9);
     assert!(answer.effect.is_none());
 }

@@ -8,7 +8,7 @@ use crate::build::{Accessory, Build, Draw};
 use crate::check::answer::{Finding, Weight};
 use crate::description::accessory::LoadKind;
 use crate::load::filament_life;
-use crate::quantity::{Volts, format};
+use crate::quantity::{Fraction, Volts, format};
 
 /// The findings on every circuit: dim and short-lived lamps, what a burnt-out lamp does to the
 /// others, volts outside an accessory's range, coils that may not pull in when hot, and coils behind
@@ -30,17 +30,20 @@ pub fn findings(build: &Build, circuits: &[Circuit]) -> Vec<Finding> {
 }
 
 fn of_accessory(build: &Build, accessory: &Accessory, on: &OnCircuit) -> Vec<Finding> {
-    let heating = on.by_state(|s| s.heating);
-    let heating_highest = on.by_state(|s| s.heating_highest);
-    let mut all = lamp_findings_between(build, accessory, &heating, &heating_highest);
-    let (lowest, highest) = (on.by_state(|s| s.volts), on.by_state(|s| s.highest));
-    let (all_on, few_on) = if is_coil(accessory) {
-        (
+    let dim = on.by_state(|s| s.heating.lowest);
+    let bright = on.by_state(|s| s.heating.highest);
+    let mut all = lamp_findings_between(build, accessory, &dim, &bright);
+    let lowest = on.by_state(|s| s.between.lowest);
+    let highest = on.by_state(|s| s.between.highest);
+    let usual = on.states.iter().all(|s| s.between.lowest >= s.volts);
+    let (all_on, few_on) = match (usual, is_coil(accessory)) {
+        (true, true) => (
             "with a cold coil and everything on",
             "with a hot coil and the least on",
-        )
-    } else {
-        ("with everything on", "with the least on")
+        ),
+        (true, false) => ("with everything on", "with the least on"),
+        // A coil behind one diode gets less the less is on beside it.
+        (false, _) => ("at worst", "at most"),
     };
     let low = Extreme {
         volts: &lowest,
@@ -103,16 +106,28 @@ fn burnt_out(build: &Build, circuit: &Circuit, worst: &BurntOut) -> Option<Findi
     } else {
         left.name.as_str()
     };
+    let before = filament_life(at, worst.before);
+    let left_over = if worst.life >= Fraction::ONE {
+        format!("still within their {}", format::text(at))
+    } else {
+        format!(
+            "and live {} of their life at {}{}",
+            format::percent(worst.life),
+            format::text(at),
+            if before < Fraction::ONE {
+                format!(" (before: {})", format::percent(before))
+            } else {
+                String::new()
+            }
+        )
+    };
     let text = format!(
-        "if {one}{} burns out at {}, {left_name} on {} go from {} to {} and live {} of their life at {} (before: {})",
+        "if {one}{} burns out at {}, {left_name} on {} go from {} to {} {left_over}",
         lost.name,
         worst.state,
         circuit.name,
         format::text(worst.before),
         format::text(worst.after),
-        format::percent(worst.life),
-        format::text(at),
-        format::percent(filament_life(at, worst.before))
     );
     let weight = if worst.life < SHORT {
         weight(worst.life).min(Weight::Warning)

@@ -17,6 +17,7 @@ mod range;
 mod rows;
 mod select;
 mod state;
+mod three_phase;
 mod verdict;
 
 pub use burnt_out::BurntOut;
@@ -98,6 +99,15 @@ pub struct OnCircuit {
     pub missed: AmpHours,
 }
 
+/// The lowest and the highest of some volts.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Between {
+    /// The lowest.
+    pub lowest: Volts,
+    /// The highest.
+    pub highest: Volts,
+}
+
 /// One accessory in one state. Amps are of all of a kind together, mean on a rectified circuit and
 /// rms on an alternating one.
 #[derive(Clone, Debug)]
@@ -108,14 +118,13 @@ pub struct AtState {
     pub duty: Fraction,
     /// Its amps with everything on, coils at 20 °C.
     pub amps: Amps,
-    /// Volts at it then: the lowest it sees.
+    /// Volts at it then.
     pub volts: Volts,
-    /// Rms volts at it then: what heats a filament.
-    pub heating: Volts,
-    /// Volts with as little else on as can be, coils hot: the highest it sees.
-    pub highest: Volts,
-    /// Rms volts then.
-    pub heating_highest: Volts,
+    /// Lowest and highest volts it sees: with everything or as little as can be on, coils at 20 °C or
+    /// hot.
+    pub between: Between,
+    /// The same in rms volts, which heat a filament.
+    pub heating: Between,
     /// A copper coil's amps and volts when hot, everything on; none for what is no coil.
     pub hot: Option<(Amps, Volts)>,
 }
@@ -248,6 +257,19 @@ fn circuit(
         circuit.add_state(build, state, time)?;
     }
     Ok(circuit)
+}
+
+impl Between {
+    fn of(volts: impl Iterator<Item = Volts>) -> Between {
+        let none = Between {
+            lowest: Volts(f64::INFINITY),
+            highest: Volts::ZERO,
+        };
+        volts.fold(none, |b, v| Between {
+            lowest: b.lowest.min(v),
+            highest: b.highest.max(v),
+        })
+    }
 }
 
 impl OnCircuit {

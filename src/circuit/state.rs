@@ -3,7 +3,7 @@
 use super::loads::{Coils, Loads, amps};
 use super::point::{Feed, Point};
 use super::select::Active;
-use super::{AtState, Circuit, CircuitError, InState, burnt_out, feed, is_coil};
+use super::{AtState, Between, Circuit, CircuitError, InState, burnt_out, feed, is_coil};
 use crate::build::{Build, Draw, State};
 use crate::quantity::{Amps, Hours, Volts};
 use crate::source;
@@ -118,7 +118,10 @@ impl<'a> Solver<'a> {
             }
         };
         let (cold, hot) = (point(Coils::Cold, self.cold)?, point(Coils::Hot, self.hot)?);
-        let fewest = self.solve(&self.active.fewest_on_with(k), Coils::Hot)?;
+        let fewest = self.active.fewest_on_with(k);
+        let few = [Coils::Cold, Coils::Hot].map(|coils| self.solve(&fewest, coils));
+        let [few_cold, few_hot] = few;
+        let all = [cold, hot, few_cold?, few_hot?];
         let low = accessory.works.low.unwrap_or(Volts::ZERO);
         let lets_go = matches!(accessory.draw.value, Draw::Current(_) | Draw::Power(_));
         let at = AtState {
@@ -126,9 +129,8 @@ impl<'a> Solver<'a> {
             duty,
             amps: self.amps(k, Coils::Cold, &cold),
             volts: cold.volts,
-            heating: cold.heating,
-            highest: fewest.volts,
-            heating_highest: fewest.heating,
+            between: Between::of(all.iter().map(|p| p.volts)),
+            heating: Between::of(all.iter().map(|p| p.heating)),
             hot: is_coil(accessory).then(|| (self.amps(k, Coils::Hot, &hot), hot.volts)),
         };
         Ok(Some((at, !(lets_go && cold.volts < low))))

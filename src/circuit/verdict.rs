@@ -48,8 +48,7 @@ pub fn verdict_on_volts(build: &Build, circuits: &[Circuit]) -> VoltsVerdict {
             continue;
         };
         for s in &on.states {
-            let hot = s.hot.map_or(s.volts, |(_, volts)| volts);
-            let (least, most) = (s.volts.min(hot), s.highest.max(hot).max(s.volts));
+            let (least, most) = (s.between.lowest, s.between.highest);
             all.extend(margins(on.accessory, accessory, &s.state, least, most));
         }
         if runs_stopped(build, accessory) {

@@ -70,15 +70,11 @@ impl<'a> Supplies<'a> {
             .flat_map(|hung| &hung.states)
             .filter_map(|at| {
                 let speed = self.build.speeds.iter().position(|s| s.name == at.state)?;
-                let (low, high) = if coil {
-                    (at.volts, at.highest)
-                } else {
-                    (at.heating, at.heating_highest)
-                };
+                let between = if coil { at.between } else { at.heating };
                 Some(Seen {
                     state: State::Running(speed),
-                    low,
-                    high: high.max(low),
+                    low: between.lowest,
+                    high: between.highest,
                 })
             })
             .collect())
