@@ -97,7 +97,7 @@ mod tests {
     #[test]
     fn a_phase_carries_the_coil_for_two_thirds_of_a_cycle() {
         // Without reactance the winding's current is ± I for a third of a cycle each: I √(2/3) rms (textbook).
-        let c = Circuit::new(20.0, 1e-3, 0.0);
+        let c = Circuit::new(20.0, 1e-7, 0.0);
         let driver = Driver {
             c,
             drops: 0.0,
