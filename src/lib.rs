@@ -19,6 +19,7 @@ pub mod quantity;
 pub mod report;
 pub mod resolve;
 pub mod root;
+pub mod schema;
 pub mod size;
 pub mod source;
 pub mod view;

@@ -9,7 +9,7 @@ mod lower;
 mod open;
 pub mod path;
 pub mod places;
-mod raw;
+pub(crate) mod raw;
 mod read;
 mod scan;
 pub mod set;
@@ -23,6 +23,8 @@ pub use read::{
     read_starter,
 };
 pub use set::Assignment;
+
+pub(crate) use lower::words;
 
 use crate::battery::Chemistry;
 use crate::quantity::{

@@ -110,7 +110,7 @@ impl Dimension {
     }
 
     /// Whether a unit of the other dimension will do.
-    fn covers(self, other: Dimension) -> bool {
+    pub(crate) fn covers(self, other: Dimension) -> bool {
         let draw = matches!(
             other,
             Dimension::Power | Dimension::Current | Dimension::Resistance

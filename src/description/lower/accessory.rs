@@ -12,14 +12,14 @@ use crate::quantity::bounds;
 use crate::quantity::parse::{self, Draw, Measured};
 
 /// `law:`.
-const LAWS: &[(&str, LawName)] = &[
+pub(crate) const LAWS: &[(&str, LawName)] = &[
     ("resistance", LawName::Resistance),
     ("current", LawName::Current),
     ("power", LawName::Power),
     ("filament", LawName::Filament),
 ];
 /// `kind:`.
-const KINDS: &[(&str, LoadKind)] = &[
+pub(crate) const KINDS: &[(&str, LoadKind)] = &[
     ("lamp", LoadKind::Lamp),
     ("motor", LoadKind::Motor),
     ("heater", LoadKind::Heater),
@@ -27,7 +27,7 @@ const KINDS: &[(&str, LoadKind)] = &[
     ("electronics", LoadKind::Electronics),
 ];
 /// `returns:`.
-pub(super) const RETURNS: &[(&str, ReturnPath)] =
+pub(crate) const RETURNS: &[(&str, ReturnPath)] =
     &[("frame", ReturnPath::Frame), ("wire", ReturnPath::Wire)];
 
 impl Lower<'_> {

@@ -7,7 +7,7 @@ use crate::problem::{Problem, SenseProblem};
 use crate::quantity::{Volts, bounds};
 
 /// `type:`.
-const CHEMISTRIES: &[(&str, Chemistry)] = &[
+pub(crate) const CHEMISTRIES: &[(&str, Chemistry)] = &[
     ("flooded", Chemistry::Flooded),
     ("agm", Chemistry::Agm),
     ("gel", Chemistry::Gel),

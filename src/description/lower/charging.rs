@@ -14,18 +14,18 @@ use crate::quantity::{Amps, Volts, bounds};
 use crate::source::Magnets;
 
 /// `magnets:`.
-const MAGNETS: &[(&str, Magnets)] = &[
+pub(crate) const MAGNETS: &[(&str, Magnets)] = &[
     ("ferrite", Magnets::Ferrite),
     ("rare-earth", Magnets::RareEarth),
 ];
 /// `rectifier:`.
-const RECTIFIERS: &[(&str, RectifierKind)] = &[
+pub(crate) const RECTIFIERS: &[(&str, RectifierKind)] = &[
     ("half-wave", RectifierKind::HalfWave),
     ("full-wave", RectifierKind::FullWave),
     ("none", RectifierKind::None),
 ];
 /// `regulator.kind:`.
-const REGULATORS: &[(&str, RegulatorKind)] = &[
+pub(crate) const REGULATORS: &[(&str, RegulatorKind)] = &[
     ("series", RegulatorKind::Series),
     ("shunt", RegulatorKind::Shunt),
 ];

@@ -8,6 +8,13 @@ mod fit;
 mod leaf;
 mod rest;
 
+/// The words that each key of words may have, and what each means.
+pub(crate) mod words {
+    pub(crate) use super::accessory::{KINDS, LAWS, RETURNS};
+    pub(crate) use super::battery::CHEMISTRIES;
+    pub(crate) use super::charging::{MAGNETS, RECTIFIERS, REGULATORS};
+}
+
 use super::Description;
 use super::path;
 use super::places::Places;
