@@ -22,5 +22,6 @@ pub mod root;
 pub mod schema;
 pub mod size;
 pub mod source;
+pub mod starter_build;
 pub mod view;
 pub mod wire;

@@ -16,9 +16,11 @@
 mod builtin;
 mod error;
 mod folder;
+mod list;
 mod read;
 
 pub use error::CatalogError;
+pub use list::{KeyRow, Listed};
 pub use read::{Parted, Read, Shared};
 
 use std::fmt;

@@ -1,12 +1,16 @@
 //! The arguments, as clap reads them. Nothing below this file knows clap.
 
+mod examples;
+pub mod support;
+
 use clap::{Args, Parser, Subcommand, ValueEnum};
 use std::io::IsTerminal;
 use std::path::PathBuf;
+use support::{CompletionsArgs, ManArgs, NewArgs, PartsArgs, SchemaArgs};
 
 /// Plans the electrical load budget of engine-driven equipment.
 #[derive(Debug, Parser)]
-#[command(name = "ampledger", version, about, propagate_version = true, after_help = EXIT_CODES)]
+#[command(name = "ampledger", version, about, propagate_version = true, after_help = examples::PROGRAM)]
 pub struct Arguments {
     /// What every command takes.
     #[command(flatten)]
@@ -16,19 +20,9 @@ pub struct Arguments {
     pub command: Command,
 }
 
-const EXIT_CODES: &str = "\
-Exit codes:
-  0  it keeps up (or there was nothing to judge)
-  1  it does not keep up
-  2  the input or the call is wrong; nothing is written
-
-Examples:
-  ampledger check examples/orchard-mower.yaml
-  ampledger check examples/orchard-mower.yaml --set 'engine.speeds.idle=2100 rpm'
-  ampledger curve examples/orchard-mower.yaml --rpm 1800,2400,3600";
-
 /// What every command takes.
 #[derive(Args, Debug)]
+#[command(next_help_heading = "Output and catalogs")]
 pub struct Common {
     /// How the answer is written
     #[arg(long, global = true, value_enum, default_value_t = Format::Table, value_name = "FORMAT")]
@@ -96,9 +90,25 @@ pub enum Colour {
 #[derive(Debug, Subcommand)]
 pub enum Command {
     /// Does the charging system keep up? The verdict, with its working
+    #[command(after_help = examples::CHECK)]
     Check(CheckArgs),
     /// How often do builds within the tolerances keep up, and which tolerance matters most?
     Odds(OddsArgs),
+    /// What the catalogs hold: a list, a search, or one part in full
+    #[command(after_help = examples::PARTS)]
+    Parts(PartsArgs),
+    /// A commented build file to start from
+    #[command(after_help = examples::NEW)]
+    New(NewArgs),
+    /// JSON Schema of the files, for editors
+    #[command(after_help = examples::SCHEMA)]
+    Schema(SchemaArgs),
+    /// Completions for a shell
+    #[command(after_help = examples::COMPLETIONS)]
+    Completions(CompletionsArgs),
+    /// The manual as a page for `man`
+    #[command(after_help = examples::MAN)]
+    Man(ManArgs),
 }
 
 /// Which build, and what is changed in it.
@@ -118,7 +128,7 @@ pub struct BuildArgs {
 /// `check`.
 #[derive(Args, Debug)]
 pub struct CheckArgs {
-    /// Build files; `-` is standard input
+    /// Build files; `-` is standard input, and a pattern such as `*.yaml` names those that it matches
     #[arg(required = true, value_name = "BUILD")]
     pub builds: Vec<String>,
     /// Changes to the build.

@@ -25,11 +25,12 @@ struct Compared<'a> {
 /// # Errors
 /// A build has no answer.
 pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
-    if args.builds.len() > 1 {
-        return several(args, common);
-    }
+    let files = input::files(&args.builds)?;
+    let [file] = files.as_slice() else {
+        return several(&files, args, common);
+    };
     let catalogs = input::catalogs(common)?;
-    let opened = input::build(&args.builds[0], &args.build, &catalogs)?;
+    let opened = input::build(file, &args.build, &catalogs)?;
     if let Some(state) = &args.why {
         return super::why::run(&opened, state, common);
     }
@@ -139,13 +140,13 @@ fn over_season(opened: &Opened, range: &str, common: &Common) -> anyhow::Result<
 }
 
 /// Several builds: each answer after the other; JSON as a list.
-fn several(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
+fn several(files: &[String], args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
     if args.trace.is_some() || args.why.is_some() || args.with.is_some() {
         bail!("--trace, --why and --with take one build at a time");
     }
     let catalogs = input::catalogs(common)?;
     let mut all = Vec::new();
-    for file in &args.builds {
+    for file in files {
         let opened = input::build(file, &args.build, &catalogs)?;
         all.push(answer(
             &opened,

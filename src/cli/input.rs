@@ -97,6 +97,29 @@ fn whole(problem: anyhow::Error, catalogs: &Catalogs) -> anyhow::Error {
     }
 }
 
+/// The files that arguments name: a pattern that no file has as its name is every file it matches, for shells that leave
+/// patterns as they are.
+///
+/// # Errors
+/// A pattern that matches nothing, or is none.
+pub fn files(named: &[String]) -> anyhow::Result<Vec<String>> {
+    let mut files = Vec::new();
+    for name in named {
+        if !name.contains(['*', '?', '[']) || Path::new(name).exists() {
+            files.push(name.clone());
+            continue;
+        }
+        let pattern = glob::glob(name).map_err(|e| anyhow!("`{name}` is no pattern: {}", e.msg))?;
+        let before = files.len();
+        // a folder that cannot be read holds no file to check
+        files.extend(pattern.flatten().map(|path| path.display().to_string()));
+        if files.len() == before {
+            return Err(anyhow!("`{name}` matches no file"));
+        }
+    }
+    Ok(files)
+}
+
 fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Description, Source)> {
     if file != "-" {
         return Ok(read_file(Path::new(file), assignments)?);

@@ -3,11 +3,16 @@
 
 pub mod args;
 mod check;
+mod completions;
 mod input;
+mod man;
+mod new;
 mod odds;
 mod output;
-mod why;
+mod parts;
 mod progress;
+mod schema;
+mod why;
 
 use ampledger::problem::Refusal;
 use args::{Arguments, Command};
@@ -28,6 +33,11 @@ pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
     match &arguments.command {
         Command::Check(check) => check::run(check, common),
         Command::Odds(odds) => odds::run(odds, common),
+        Command::Parts(parts) => parts::run(parts, common),
+        Command::New(new) => new::run(new, common),
+        Command::Schema(schema) => schema::run(schema, common),
+        Command::Completions(completions) => completions::run(completions, common),
+        Command::Man(man) => man::run(man, common),
     }
 }
 

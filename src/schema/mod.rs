@@ -41,8 +41,6 @@ pub fn catalog() -> Value {
         let Some(keys) = entry.get_mut("properties").and_then(Value::as_object_mut) else {
             continue;
         };
-        // a part is no entry of another part's name; what it must have, its own check says
-        keys.remove("part");
         let own: Map<String, Value> = OWN
             .iter()
             .map(|(key, means)| {
@@ -112,5 +110,21 @@ fn of<T: JsonSchema>() -> Map<String, Value> {
         s.inline_subschemas = true;
     });
     let schema = settings.into_generator().into_root_schema_for::<T>();
-    schema.as_object().cloned().unwrap_or_default()
+    let mut keys = schema.as_object().cloned().unwrap_or_default();
+    keys.values_mut().for_each(one_line);
+    keys
+}
+
+/// Descriptions without the line ends of the source they stand in.
+fn one_line(value: &mut Value) {
+    match value {
+        Value::Object(keys) => {
+            if let Some(Value::String(text)) = keys.get_mut("description") {
+                *text = text.replace('\n', " ");
+            }
+            keys.values_mut().for_each(one_line);
+        }
+        Value::Array(entries) => entries.iter_mut().for_each(one_line),
+        _ => {}
+    }
 }

@@ -53,19 +53,19 @@ fn units(dimension: Dimension) -> String {
     let words: Vec<String> = UNITS
         .iter()
         .filter(|u| dimension.covers(u.dimension))
-        .map(|u| u.word.chars().map(alike).collect())
+        .map(|u| alike(u.word))
         .collect();
     format!("({})", words.join("|"))
 }
 
-/// A letter of a unit and those that are read as it.
-fn alike(letter: char) -> String {
-    match letter {
-        'u' => "[u\u{b5}\u{3bc}]".to_owned(),
-        'Ω' => "[Ω\u{2126}]".to_owned(),
-        '°' => "[°\u{ba}]".to_owned(),
-        'x' => "[x×]".to_owned(),
-        '2' => "[2²]".to_owned(),
-        other => other.to_string(),
-    }
+/// A unit and the code points that are read as its own: both micro signs, both ohm signs, `º`, `×`, `²`.
+fn alike(word: &str) -> String {
+    let word = match word.strip_prefix('u') {
+        Some(rest) => format!("[u\u{b5}\u{3bc}]{rest}"),
+        None => word.to_owned(),
+    };
+    let word = if word == "x" { "[x×]" } else { &word };
+    word.replace('Ω', "[Ω\u{2126}]")
+        .replace('°', "[°\u{ba}]")
+        .replace('2', "[2²]")
 }

@@ -10,6 +10,7 @@ pub mod check;
 pub mod compare;
 pub mod curve;
 pub mod odds;
+pub mod parts;
 pub mod quote;
 pub mod season;
 pub mod states;

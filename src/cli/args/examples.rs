@@ -1,0 +1,77 @@
+//! Examples and notes under the help of each command.
+
+/// Of the program.
+pub const PROGRAM: &str = "\
+Exit codes:
+  0  it keeps up, or nothing was to be judged
+  1  it does not keep up
+  2  the input or the call is wrong, and nothing is written
+
+Examples:
+  ampledger new -o mower.yaml
+  ampledger check mower.yaml
+  ampledger check mower.yaml --set 'engine.speeds.idle=2100 rpm'
+  ampledger check mower.yaml --with night-work --format html -o mower.html";
+
+/// Of `check`.
+pub const CHECK: &str = "\
+Exit codes:
+  0  every build keeps up
+  1  one does not
+  2  an input or the call is wrong, and nothing is written
+
+Examples:
+  ampledger check mower.yaml
+  ampledger check mower.yaml --air '-15 °C' --start '80 %'
+  ampledger check mower.yaml --with night-work
+  ampledger check mower.yaml --set 'accessories[PTO clutch].duty.governed=40 %'
+  ampledger check mower.yaml --why governed
+  ampledger check builds/*.yaml --format csv -o builds.csv
+  generate-build | ampledger check -";
+
+/// Of `new`.
+pub const NEW: &str = "\
+Asks nothing. An existing file is kept unless --force is given.
+
+Examples:
+  ampledger new -o mower.yaml
+  ampledger new --kind alternator -o loader.yaml
+  ampledger new --kind three-phase | ampledger check -";
+
+/// Of `schema`.
+pub const SCHEMA: &str = "\
+An editor that knows JSON Schema completes the keys of a YAML file, shows what
+each means and marks wrong units and words: save the schema, and name it in the
+editor's settings for your build files. `ampledger check` checks more.
+
+Examples:
+  ampledger schema -o build.schema.json
+  ampledger schema catalog -o catalog.schema.json";
+
+/// Of `completions`.
+pub const COMPLETIONS: &str = "\
+Examples:
+  ampledger completions bash > ~/.local/share/bash-completion/completions/ampledger
+  ampledger completions zsh > ~/.zfunc/_ampledger
+  ampledger completions fish > ~/.config/fish/completions/ampledger.fish
+  ampledger completions powershell >> $PROFILE";
+
+/// Of `man`.
+pub const MAN: &str = "\
+Examples:
+  ampledger man | man -l -
+  ampledger man check | man -l -
+  ampledger man -o ampledger.1";
+
+/// Of `parts`.
+pub const PARTS: &str = "\
+`part: ID` in a build takes a part, and any key written beside it takes the
+place of its figure. `--with ID` of `check` takes a kit. Entries in a folder of
+your own (--catalogs) come first.
+
+Examples:
+  ampledger parts
+  ampledger parts led work
+  ampledger parts work-light-led-27w
+  ampledger parts --kind batteries --format csv
+  ampledger parts --catalogs ~/parts seat heater";
