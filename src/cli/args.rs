@@ -93,6 +93,7 @@ pub enum Command {
     #[command(after_help = examples::CHECK)]
     Check(CheckArgs),
     /// How often do builds within the tolerances keep up, and which tolerance matters most?
+    #[command(after_help = examples::ODDS)]
     Odds(OddsArgs),
     /// What the catalogs hold: a list, a search, or one part in full
     #[command(after_help = examples::PARTS)]

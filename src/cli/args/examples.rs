@@ -29,6 +29,15 @@ Examples:
   ampledger check builds/*.yaml --format csv -o builds.csv
   generate-build | ampledger check -";
 
+/// Of `odds`.
+pub const ODDS: &str = "\
+Tolerances stand in the build, `55 W ± 8 %`; a figure without one does not vary.
+
+Examples:
+  ampledger odds mower.yaml
+  ampledger odds mower.yaml --runs 20000 --seed 7 --format json
+  ampledger odds mower.yaml --worst worst.yaml";
+
 /// Of `new`.
 pub const NEW: &str = "\
 Asks nothing. An existing file is kept unless --force is given.
