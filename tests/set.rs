@@ -362,3 +362,45 @@ fn names_survive() {
         }
     }
 }
+
+/// Paths and values cut and joined at random are set or refused, and never panic.
+#[test]
+fn any_assignment_is_answered() {
+    let paths = [
+        "accessories[2]",
+        ".duty",
+        ".governed",
+        "[pump]",
+        "shift[0]",
+        "battery",
+        ".\"a.b\"",
+        "",
+        "[",
+        "engine.speeds",
+        "[1]",
+        "may",
+    ];
+    let values = [
+        "40 %", "{a: 1}", "[", "*heat", "&a 3", "# x", "- a", "!!str 5", "\"", "null", "a: b: c",
+        "'x'", "|", "é", "{", "a, b",
+    ];
+    let mut refused = 0;
+    for (i, one) in paths.iter().enumerate() {
+        for (j, other) in paths.iter().enumerate() {
+            for text in [FULL, BLOCK] {
+                let value = values[(i * 7 + j * 3) % values.len()];
+                let Ok(assignment) = Assignment::parse(&format!("{one}{other}={value}")) else {
+                    continue;
+                };
+                if let Err(refusal) = read_set("small.yaml", text.as_bytes(), &[assignment]) {
+                    assert!(
+                        refusal.to_string().contains("error"),
+                        "{one}{other}={value}"
+                    );
+                    refused += 1;
+                }
+            }
+        }
+    }
+    assert!(refused > 50, "{refused}");
+}

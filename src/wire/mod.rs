@@ -153,12 +153,7 @@ fn wire(
         fuse_a: fused.fuse.rating,
         fuse_kind: fused.fuse.kind.clone(),
         fuse_colour: fused.fuse.colour.clone(),
-        surge: fused.held.as_ref().map(|held| SurgeRow {
-            accessory: held.accessory.clone(),
-            peak_a: held.surge.peak(),
-            lasts_s: held.surge.lasts(),
-            opens_s: held.opens,
-        }),
+        surge: fused.held.as_ref().map(size::Held::row),
         relay: switches.iter().any(|s| s.relay),
         binds: reasons::binds(choice, tables, options.gauge),
         reasons: reasons::reasons(build, demand, choice, &switches, loading),

@@ -7,7 +7,10 @@ use super::tables::{Ground, Tables};
 use crate::build::Build;
 use crate::catalog::Certainty;
 use crate::description::accessory::LoadKind;
-use crate::quantity::{Volts, format};
+use crate::quantity::{Fraction, Volts, format};
+
+/// How much more than its stated draw a fuse at four fifths still carries.
+const FUSE_ROOM: Fraction = Fraction(0.25);
 
 /// The grounds that a choice rests on.
 pub(super) fn grounds(tables: &Tables, choice: &Choice) -> Vec<Ground> {
@@ -56,6 +59,7 @@ pub(super) fn notes(build: &Build, demands: &[Demand], grounds: &[Ground]) -> Ve
         notes.push("the frame carries the return and is taken as free of resistance; its joints must be bright and tight".to_owned());
     }
     notes.extend(without_surge(build, demands));
+    notes.extend(far_off(build, demands));
     notes
 }
 
@@ -89,6 +93,26 @@ fn without_surge(build: &Build, demands: &[Demand]) -> Option<String> {
         format!(
             "no `inrush:` is given for {}: the fuse is not checked against the surge at switch-on (filaments 10 to 15 times for 5 to 50 ms, motors 5 to 8 times: common practice)",
             silent.join(", ")
+        )
+    })
+}
+
+/// Draws that may lie further above their stated figure than the fuse leaves room for.
+fn far_off(build: &Build, demands: &[Demand]) -> Option<String> {
+    let far: Vec<&str> = demands
+        .iter()
+        .flat_map(|d| &d.members)
+        .filter(|m| {
+            let draw = build.accessories.get(m.index).map(|a| &a.draw);
+            let tolerance = draw.and_then(|d| d.tolerance);
+            tolerance.is_some_and(|t| t.relative > FUSE_ROOM)
+        })
+        .map(|m| m.name.as_str())
+        .collect();
+    (!far.is_empty()).then(|| {
+        format!(
+            "draws are taken as stated; a fuse at four fifths leaves room for a quarter more, {} may lie further off: measure",
+            far.join(", ")
         )
     })
 }

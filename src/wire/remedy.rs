@@ -11,7 +11,7 @@ use crate::quantity::{Amps, Celsius, Fraction, Metres, format};
 /// Most wires that a load is split over.
 const MOST_WIRES: u32 = 8;
 /// Halvings in the search for the longest run.
-const HALVINGS: u32 = 40;
+const HALVINGS: u32 = 20;
 
 /// A demand without a choice, told.
 pub(super) fn unmet(
@@ -84,65 +84,71 @@ fn would(
     why: &NoChoice,
 ) -> Vec<String> {
     let holds = |demand: &Demand, laid: &Laid| choose(tables, gauge, demand, laid).is_ok();
+    let mut ways = laid_otherwise(tables, &holds, demand, laid);
+    ways.extend(parted(&holds, demand, laid));
+    if let Some(run) = longest_run(&holds, demand, laid) {
+        ways.push(format!("a run of at most {} m", format::fixed(run, 1)));
+    }
+    let NoChoice::Thickest(settled, misses) = why else {
+        return ways;
+    };
+    if matches!(misses.first(), Some(Miss::NoFuse { .. })) {
+        ways.extend(beyond_fuses(tables, gauge, demand, laid));
+    }
+    if matches!(misses.as_slice(), [Miss::Drop { .. }]) {
+        let share = round_up(Fraction(settled.lost / demand.system));
+        ways.push(format!("`max_drop: {}`", format::text(share)));
+    }
+    ways
+}
+
+/// Better insulation, another way, no bundle.
+fn laid_otherwise(
+    tables: &Tables,
+    holds: &impl Fn(&Demand, &Laid) -> bool,
+    demand: &Demand,
+    laid: &Laid,
+) -> Vec<String> {
     let mut ways = Vec::new();
+    let with = |insulation: Celsius| Laid {
+        insulation,
+        ..*laid
+    };
     let better = tables
         .ampacity
         .classes()
         .filter(|class| *class > laid.insulation)
-        .find(|class| {
-            holds(
-                demand,
-                &Laid {
-                    insulation: *class,
-                    ..*laid
-                },
-            )
-        });
+        .find(|class| holds(demand, &with(*class)));
     if let Some(class) = better {
         ways.push(format!("insulation of {}", format::temperature(class)));
     }
-    if laid.engine_space
-        && holds(
-            demand,
-            &Laid {
-                engine_space: false,
-                ..*laid
-            },
-        )
-    {
+    let outside = Laid {
+        engine_space: false,
+        ..*laid
+    };
+    if laid.engine_space && holds(demand, &outside) {
         ways.push("a way outside the engine space".to_owned());
     }
-    if laid.bundle > 2 && holds(demand, &Laid { bundle: 1, ..*laid }) {
+    let single = Laid { bundle: 1, ..*laid };
+    if laid.bundle > 2 && holds(demand, &single) {
         ways.push("the wire by itself, in no bundle".to_owned());
     }
-    let split = (2..=MOST_WIRES).find(|n| {
-        let share = Fraction(1.0 / f64::from(*n));
-        holds(
-            &Demand {
-                share,
-                ..demand.clone()
-            },
-            laid,
-        )
-    });
-    if let Some(wires) = split {
-        ways.push(format!(
-            "the load, where it can be parted, split evenly over {wires} wires, each with its own fuse"
-        ));
-    }
-    if let Some(run) = longest_run(&holds, demand, laid) {
-        ways.push(format!("a run of at most {} m", format::fixed(run, 1)));
-    }
-    if let NoChoice::Thickest(settled, misses) = why {
-        if matches!(misses.first(), Some(Miss::NoFuse { .. })) {
-            ways.extend(beyond_fuses(tables, gauge, demand, laid));
-        }
-        if matches!(misses.as_slice(), [Miss::Drop { .. }]) {
-            let share = Fraction(settled.lost / demand.system);
-            ways.push(format!("`max_drop: {}`", format::text(round_up(share))));
-        }
-    }
     ways
+}
+
+/// The fewest wires over which the load would have to be split.
+fn parted(holds: &impl Fn(&Demand, &Laid) -> bool, demand: &Demand, laid: &Laid) -> Option<String> {
+    let wires = (2..=MOST_WIRES).find(|n| {
+        let share = Fraction(1.0 / f64::from(*n));
+        let part = Demand {
+            share,
+            ..demand.clone()
+        };
+        holds(&part, laid)
+    })?;
+    Some(format!(
+        "the load, where it can be parted, split evenly over {wires} wires, each with its own fuse"
+    ))
 }
 
 /// A fuse or breaker beyond the list, and the thinnest wire that it protects and that loses no more

@@ -5,6 +5,7 @@
 //! 3. The volts lost, hot, are not above those allowed.
 
 use super::ampacity::{Laid, Place};
+use super::answer::SurgeRow;
 use super::conductor::{Conductor, Gauge};
 use super::demand::Demand;
 use super::fuse::Fuse;
@@ -50,6 +51,18 @@ pub(super) struct Held {
     pub(super) surge: Surge,
     /// The shortest time in which the fuse may open at its peak; none where it holds.
     pub(super) opens: Option<Hours>,
+}
+
+impl Held {
+    /// As a row of the answer.
+    pub(super) fn row(&self) -> SurgeRow {
+        SurgeRow {
+            accessory: self.accessory.clone(),
+            peak_a: self.surge.peak(),
+            lasts_s: self.surge.lasts(),
+            opens_s: self.opens,
+        }
+    }
 }
 
 /// A fuse with the surges it holds.

@@ -411,3 +411,30 @@ fn any_text_is_answered() {
         }
     }
 }
+
+proptest::proptest! {
+    /// Whatever is written, an error marks bytes of it, and a value is finite.
+    #[test]
+    fn any_characters_are_answered(text in "[0-9 .,+±%−eEnaihWVArpmΩµ°/x-]{0,24}") {
+        match draw(&text) {
+            Ok(measured) => {
+                let value = match measured.value {
+                    Draw::Current(Amps(x)) | Draw::Resistance(Ohms(x)) | Draw::Power(Watts(x)) => x,
+                };
+                proptest::prop_assert!(value.is_finite());
+            }
+            Err(e) => proptest::prop_assert!(text.get(e.range.clone()).is_some(), "{e:?}"),
+        }
+        for e in [parse::<Hours>(&text).err(), rated(&text).err(), parse::<SquareMm>(&text).err()].into_iter().flatten() {
+            proptest::prop_assert!(text.get(e.range.clone()).is_some(), "{e:?}");
+        }
+    }
+
+    /// A number and a unit come back as written.
+    #[test]
+    fn numbers_come_back(x in -1e9f64..1e9, unit in "(V|mV)") {
+        let read = parse::<Volts>(&format!("{x} {unit}")).map(|m| m.value.0);
+        let wanted = if unit == "V" { x } else { x / 1e3 };
+        proptest::prop_assert_eq!(read, Ok(wanted));
+    }
+}
