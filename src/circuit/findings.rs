@@ -108,10 +108,10 @@ fn burnt_out(build: &Build, circuit: &Circuit, worst: &BurntOut) -> Option<Findi
     };
     let before = filament_life(at, worst.before);
     let left_over = if worst.life >= Fraction::ONE {
-        format!("still within their {}", format::text(at))
+        format!("still within {}", format::text(at))
     } else {
         format!(
-            "and live {} of their life at {}{}",
+            "{} of the life at {}{}",
             format::percent(worst.life),
             format::text(at),
             if before < Fraction::ONE {
@@ -122,7 +122,7 @@ fn burnt_out(build: &Build, circuit: &Circuit, worst: &BurntOut) -> Option<Findi
         )
     };
     let text = format!(
-        "if {one}{} burns out at {}, {left_name} on {} go from {} to {} {left_over}",
+        "if {one}{} burns out at {}, {left_name} on {}: from {} to {}, {left_over}",
         lost.name,
         worst.state,
         circuit.name,
