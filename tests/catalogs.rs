@@ -301,33 +301,55 @@ fn a_users_folder_comes_first() {
 #[test]
 fn a_folder_that_is_no_set_of_catalogs_is_refused() {
     let refused = |files: &[(&str, &str)]| Catalogs::with_folder(folder(files).path()).unwrap_err();
-    let same = "accessories: [{id: a, draw: 1 A}, {id: a, draw: 2 A}]\n";
-    assert!(
-        matches!(refused(&[("a.yaml", same)]), CatalogError::Duplicate { id, .. } if id == "a")
-    );
     let one = "accessories: [{id: a, draw: 1 A}]\n";
     let twice = refused(&[("a.yaml", one), ("b.yml", one)]);
     assert!(matches!(&twice, CatalogError::Duplicate { first, second, .. } if first != second));
-    assert!(
-        matches!(refused(&[("a.yaml", "lamps: []\n")]), CatalogError::UnknownKind { key, .. } if key == "lamps")
+    // what is wrong with one file is told at its place, all at once
+    let says = |text: &str, told: &[(usize, usize, &str)]| {
+        let error = refused(&[("a.yaml", text)]);
+        let CatalogError::Refused(refusal) = &error else {
+            panic!("{error}")
+        };
+        let found: Vec<_> = refusal.problems().iter().collect();
+        assert_eq!(found.len(), told.len(), "{refusal}");
+        for (problem, (line, column, kind)) in found.iter().zip(told) {
+            assert_eq!(
+                refusal.source().place(problem),
+                Some((*line, *column)),
+                "{refusal}"
+            );
+            assert!(problem.kind.to_string().starts_with(kind), "{refusal}");
+        }
+    };
+    says(
+        "accessories: [{id: a, draw: 1 A}, {id: a, draw: 2 A}]\n",
+        &[(1, 40, "the name `a` is given twice")],
     );
-    assert!(matches!(
-        refused(&[("a.yaml", "kits: [{title: x}]\n")]),
-        CatalogError::NoId { index: 0, .. }
-    ));
-    assert!(matches!(
-        refused(&[("a.yaml", "- x\n")]),
-        CatalogError::NotACatalog { .. }
-    ));
-    assert!(matches!(
-        refused(&[("a.yaml", "kits: [x\n")]),
-        CatalogError::NotACatalog { .. }
-    ));
+    says(
+        "lamps: []\nkits:\n  - {title: x}\n  - x\nbatteries: 3\n",
+        &[
+            (1, 1, "unknown key `lamps`"),
+            (3, 5, "missing key `id`"),
+            (4, 5, "a single value where a mapping of keys is needed"),
+            (5, 12, "a single value where a list of parts is needed"),
+        ],
+    );
+    says(
+        "- x\n",
+        &[(
+            1,
+            1,
+            "a list where a list of parts under the name of their kind is needed",
+        )],
+    );
+    says("kits: [x\n", &[(2, 1, "not valid YAML")]);
+    says("kits:\n\t- x\n", &[(2, 1, "tab used for indentation")]);
+    says("a: &a [x]\nb: [*a, *c]\n", &[(2, 9, "")]);
     let big = format!("# {}\n", "x".repeat(1 << 20));
-    assert!(matches!(
-        refused(&[("a.yaml", &big)]),
-        CatalogError::TooLarge { .. }
-    ));
+    let CatalogError::Refused(refusal) = refused(&[("a.yaml", &big)]) else {
+        panic!("too large")
+    };
+    assert!(refusal.to_string().contains("1 MiB"), "{refusal}");
     let absent = Catalogs::with_folder(Path::new("no such folder")).unwrap_err();
     assert!(matches!(absent, CatalogError::Unreadable { .. }));
 }

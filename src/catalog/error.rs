@@ -1,11 +1,11 @@
 //! What can be wrong with a user's folder of catalogs.
 
-use super::Kind;
+use crate::problem::Refusal;
 use std::fmt;
 use std::path::PathBuf;
 
 /// Why a folder of catalogs was refused.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug)]
 pub enum CatalogError {
     /// The folder or a file in it cannot be read.
     Unreadable {
@@ -19,35 +19,9 @@ pub enum CatalogError {
         /// The link.
         path: PathBuf,
     },
-    /// More than a mebibyte.
-    TooLarge {
-        /// The file.
-        path: PathBuf,
-    },
-    /// Not YAML, or not a mapping of lists of mappings.
-    NotACatalog {
-        /// The file.
-        path: PathBuf,
-        /// What is wrong, with its place where there is one.
-        why: String,
-    },
-    /// A top key that is no kind of entry.
-    UnknownKind {
-        /// The file.
-        path: PathBuf,
-        /// The key.
-        key: String,
-    },
-    /// An entry without an id.
-    NoId {
-        /// The file.
-        path: PathBuf,
-        /// The kind of the entry.
-        kind: Kind,
-        /// Its place in the list, from 0.
-        index: usize,
-    },
-    /// Two entries of one kind with one id.
+    /// A file that is no catalog: every problem, at its place; boxed, as it carries the text it is shown on.
+    Refused(Box<Refusal>),
+    /// Two entries of one kind with one id, in two files.
     Duplicate {
         /// The id.
         id: String,
@@ -56,6 +30,12 @@ pub enum CatalogError {
         /// File of the second.
         second: PathBuf,
     },
+}
+
+impl From<Refusal> for CatalogError {
+    fn from(refusal: Refusal) -> CatalogError {
+        CatalogError::Refused(Box::new(refusal))
+    }
 }
 
 impl fmt::Display for CatalogError {
@@ -71,29 +51,7 @@ impl fmt::Display for CatalogError {
                     path.display()
                 )
             }
-            CatalogError::TooLarge { path } => {
-                write!(f, "catalog `{}` is over 1 MiB", path.display())
-            }
-            CatalogError::NotACatalog { path, why } => {
-                write!(f, "catalog `{}`: {why}", path.display())
-            }
-            CatalogError::UnknownKind { path, key } => write!(
-                f,
-                "catalog `{}`: unknown key `{key}`, expected {}",
-                path.display(),
-                Kind::ALL.map(|k| format!("`{}`", k.key())).join(", ")
-            ),
-            CatalogError::NoId { path, kind, index } => {
-                write!(
-                    f,
-                    "catalog `{}`: `{}[{index}]` has no `id`",
-                    path.display(),
-                    kind.key()
-                )
-            }
-            CatalogError::Duplicate { id, first, second } if first == second => {
-                write!(f, "catalog `{}`: id `{id}` is used twice", first.display())
-            }
+            CatalogError::Refused(refusal) => refusal.fmt(f),
             CatalogError::Duplicate { id, first, second } => {
                 write!(
                     f,

@@ -15,6 +15,7 @@
 
 mod builtin;
 mod error;
+mod file;
 mod folder;
 mod list;
 mod read;
@@ -23,6 +24,7 @@ pub use error::CatalogError;
 pub use list::{KeyRow, Listed};
 pub use read::{Parted, Read, Shared};
 
+use crate::problem::Refusal;
 use std::fmt;
 use std::path::{Path, PathBuf};
 use std::sync::Arc;
@@ -113,15 +115,15 @@ impl fmt::Display for Certainty {
 pub enum Origin {
     /// A file that the program carries, by its name.
     Builtin(&'static str),
-    /// A file in the user's folder.
-    File(PathBuf),
+    /// A file in the user's folder, and the line on which the entry stands.
+    File(PathBuf, usize),
 }
 
 impl fmt::Display for Origin {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         match self {
             Origin::Builtin(name) => write!(f, "built-in {name}"),
-            Origin::File(path) => write!(f, "{}", path.display()),
+            Origin::File(path, line) => write!(f, "{}:{line}", path.display()),
         }
     }
 }
@@ -177,6 +179,17 @@ impl Catalogs {
     pub fn with_folder(folder: &Path) -> Result<Catalogs, CatalogError> {
         Ok(Catalogs {
             own: folder::read(folder)?,
+            store: Arc::default(),
+        })
+    }
+
+    /// Those of one file, then those the program carries. `name` is what messages call the file.
+    ///
+    /// # Errors
+    /// [`Refusal`] with every problem found.
+    pub fn with_file(name: &str, bytes: &[u8]) -> Result<Catalogs, Refusal> {
+        Ok(Catalogs {
+            own: file::entries(Path::new(name), bytes)?,
             store: Arc::default(),
         })
     }

@@ -14,7 +14,9 @@ mod progress;
 mod schema;
 mod why;
 
+use ampledger::catalog::CatalogError;
 use ampledger::problem::Refusal;
+use ampledger::resolve::KitError;
 use args::{Arguments, Command};
 
 /// Exit code: it keeps up, or nothing was to be judged.
@@ -47,9 +49,20 @@ pub fn told(problem: &anyhow::Error, arguments: &Arguments) -> u8 {
         return KEEPS_UP;
     }
     let colour = arguments.common.colours(&std::io::stderr());
-    match problem.downcast_ref::<Refusal>() {
+    match refusal(problem) {
         Some(refusal) => output::complain(refusal.render(colour).trim_end()),
         None => output::complain(&format!("error: {problem:#}")),
     }
     WRONG
+}
+
+/// The refusal of an input that a problem is or carries.
+fn refusal(problem: &anyhow::Error) -> Option<&Refusal> {
+    if let Some(CatalogError::Refused(refusal)) = problem.downcast_ref() {
+        return Some(refusal);
+    }
+    if let Some(KitError::Refused(refusal)) = problem.downcast_ref() {
+        return Some(refusal);
+    }
+    problem.downcast_ref()
 }

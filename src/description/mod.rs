@@ -22,6 +22,7 @@ pub use read::{
     bytes_of, read, read_accessory, read_battery, read_charging, read_file, read_kit, read_set,
     read_starter,
 };
+pub(crate) use read::{open_text, second_reader};
 pub use set::Assignment;
 
 pub(crate) use lower::words;

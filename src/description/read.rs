@@ -133,7 +133,7 @@ fn part<R: DeserializeOwned, T>(
 }
 
 /// Bytes to text and places.
-pub(super) fn open_text(name: &str, bytes: &[u8]) -> Result<(Source, Problems), Refusal> {
+pub(crate) fn open_text(name: &str, bytes: &[u8]) -> Result<(Source, Problems), Refusal> {
     let mut source = Source {
         name: name.to_owned(),
         ..Source::default()
@@ -186,7 +186,7 @@ fn lowered<R: DeserializeOwned, T>(
 }
 
 /// What only the second reader refuses: bad indentation within quotes and brackets, for the most part.
-fn second_reader(text: &str, e: &serde_yaml::Error) -> Problem {
+pub(crate) fn second_reader(text: &str, e: &serde_yaml::Error) -> Problem {
     let at = e.location().map_or(0, |l| l.index().min(text.len()));
     let at = (0..=at)
         .rev()

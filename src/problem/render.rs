@@ -119,6 +119,13 @@ impl Source {
         (line, before[start..].chars().count() + 1)
     }
 
+    /// Line of a value, from 1; of one that is not there, the nearest above it.
+    #[must_use]
+    pub fn line_of(&self, path: &str) -> usize {
+        let found = self.places.nearest(path);
+        self.line_column(found.map_or(0, |f| f.value.start)).0
+    }
+
     /// Line and column of a problem, where it has a place.
     #[must_use]
     pub fn place(&self, problem: &Problem) -> Option<(usize, usize)> {
