@@ -1,9 +1,10 @@
 //! When there is no answer.
 
+use crate::circuit::CircuitError;
 use std::fmt;
 
 /// Why a build has no answer.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq)]
 pub enum SolveError {
     /// Asked for the charge of a battery that is not there.
     NoBattery,
@@ -11,18 +12,20 @@ pub enum SolveError {
     NotFinite,
     /// The engine never runs at a named speed and the machine never stands with its key on.
     EmptyShift,
-    /// A circuit without the battery has no operating point.
-    Circuit,
+    /// A circuit without the battery is not solved.
+    Circuit(CircuitError),
 }
 
 impl fmt::Display for SolveError {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        f.write_str(match self {
-            SolveError::NoBattery => "the build has no battery to keep charged",
-            SolveError::NotFinite => "the solver did not converge to a number: no answer is given",
-            SolveError::EmptyShift => "the shift has no time in it",
-            SolveError::Circuit => "a circuit without the battery has no operating point",
-        })
+        match self {
+            SolveError::NoBattery => f.write_str("the build has no battery to keep charged"),
+            SolveError::NotFinite => {
+                f.write_str("the solver did not converge to a number: no answer is given")
+            }
+            SolveError::EmptyShift => f.write_str("the shift has no time in it"),
+            SolveError::Circuit(cause) => cause.fmt(f),
+        }
     }
 }
 

@@ -1,11 +1,12 @@
 //! What the figures show beside the verdict.
 
-use super::answer::{AccessoryRow, Finding, StateRow, Weight};
+use super::answer::{AccessoryRow, ByState, Finding, StateRow, Weight};
 use super::first_shift::FirstShift;
 use super::ruling::Ruling;
 use super::{rundown, storage};
 use crate::battery::{Charge, FREEZING_MARGIN};
 use crate::build::{Build, State};
+use crate::circuit::{Extreme, lamp_findings, range_findings};
 use crate::ledger::{Machine, connect};
 use crate::quantity::format::{duration, percent, temperature, text};
 use crate::quantity::{AmpHours, Amps, Days, Fraction, Hours, Volts};
@@ -52,8 +53,7 @@ pub fn findings(seen: &Seen<'_>) -> Vec<Finding> {
     let mut all = Vec::new();
     all.extend(overcharge(seen));
     all.extend(not_charging(seen));
-    all.extend(drop_outs(seen));
-    all.extend(above_range(seen));
+    all.extend(accessories(seen));
     all.extend(cold_start(seen));
     all.extend(freezing(seen));
     all.extend(never_full(seen));
@@ -130,10 +130,11 @@ fn lightest(seen: &Seen<'_>, state: State) -> Option<(Volts, Amps, String)> {
     let without = |off: &[usize]| {
         let mut build = seen.build.clone();
         for k in off {
-            if let State::Running(speed) = state {
-                if let Some(duty) = build.accessories[*k].duty.running.get_mut(speed) {
-                    duty.value = Fraction::ZERO;
-                }
+            let State::Running(speed) = state else {
+                continue;
+            };
+            if let Some(duty) = build.accessories[*k].duty.running.get_mut(speed) {
+                duty.value = Fraction::ZERO;
             }
         }
         let flow = connect(&build, state, None).flow(
@@ -176,51 +177,36 @@ fn not_charging(seen: &Seen<'_>) -> Vec<Finding> {
         .collect()
 }
 
-fn drop_outs(seen: &Seen<'_>) -> Vec<Finding> {
-    seen.accessories
-        .iter()
-        .filter(|row| row.missed_ah > AmpHours(1e-9))
-        .map(|row| {
-            let text = format!(
-                "{} drops out for want of volts and misses {} a shift",
-                row.name,
-                text(row.missed_ah)
-            );
-            finding("drop-out", Weight::Fault, text, "its lower working limit")
-        })
-        .collect()
-}
-
-fn above_range(seen: &Seen<'_>) -> Vec<Finding> {
+/// Lamps too dim or short-lived, accessories outside their volts. The lowest volts are those with
+/// all on at once that may be.
+fn accessories(seen: &Seen<'_>) -> Vec<Finding> {
     let mut all = Vec::new();
-    for accessory in seen
-        .build
-        .accessories
-        .iter()
-        .filter(|a| a.circuit.is_none())
-    {
-        let Some(high) = accessory.works.high else {
+    for row in seen.accessories {
+        let Some(accessory) = seen.build.accessories.iter().find(|a| a.name == row.name) else {
             continue;
         };
-        let row = seen
-            .accessories
-            .iter()
-            .find(|row| row.name == accessory.name);
-        let over = row.and_then(|row| row.volts.0.iter().find(|(_, volts)| *volts > high));
-        if let Some((state, volts)) = over {
-            let text = format!(
-                "{} sees {} at {state}, above its limit of {}",
-                accessory.name,
-                text(*volts),
-                text(high)
-            );
-            all.push(finding(
-                "over its range",
-                Weight::Warning,
-                text,
-                "its upper working limit",
-            ));
-        }
+        let worst = row.volts.0.iter().map(|(state, volts)| {
+            let at_worst = seen
+                .states
+                .iter()
+                .find(|s| s.state == *state)
+                .map(|s| s.worst_bus_v);
+            (
+                state.clone(),
+                at_worst.map_or(*volts, |worst| worst.min(*volts)),
+            )
+        });
+        let worst = ByState(worst.collect());
+        let lowest = Extreme {
+            volts: &worst,
+            when: "with everything on",
+        };
+        let highest = Extreme {
+            volts: &row.volts,
+            when: "",
+        };
+        all.extend(lamp_findings(seen.build, accessory, &row.volts));
+        all.extend(range_findings(seen.build, accessory, lowest, highest));
     }
     all
 }

@@ -3,6 +3,7 @@
 pub mod answer;
 mod beyond;
 mod cautions;
+mod charged;
 mod course;
 mod error;
 mod findings;
@@ -14,6 +15,7 @@ pub mod season;
 mod sentence;
 mod storage;
 pub mod why;
+mod without_battery;
 
 pub use cautions::cautions;
 pub use course::{Course, Rundown, course, rundown};
@@ -25,12 +27,10 @@ pub use ruling::{Reserve, ReserveFrom, Ruling, reserve, rule, rule_on};
 pub use sentence::ordinal;
 pub use storage::{Storage, storage};
 
-use crate::battery::Charge;
-use crate::build::{Build, State};
-use crate::ledger::Machine;
-use crate::outlook::Spread;
-use crate::quantity::{Amps, Fraction, Hours, Volts};
-use answer::{ByState, Check, TraceRow, Verdict};
+use crate::build::Build;
+use crate::circuit;
+use crate::quantity::{Fraction, Hours};
+use answer::{AccessoryRow, Check, TraceRow};
 
 /// Version of the JSON names.
 pub const FORMAT: u32 = 1;
@@ -63,100 +63,29 @@ pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
     {
         return Err(SolveError::EmptyShift);
     }
-    let machine = Machine::new(build).ok_or(SolveError::NoBattery)?;
-    let ruling = rule_on(build, &machine)?;
-    let shift = first_shift(build, &machine, Charge::rested(build.start), wanted.trace);
-    if !shift.balance.is_finite() {
-        return Err(SolveError::NotFinite);
-    }
-    let states = by_state(build, &machine, &shift);
-    let accessories = by_accessory(build, &machine, &shift);
-    let spare = spare(build, &machine, &ruling);
-    let everywhere = spare
-        .as_ref()
-        .and(machine.edge(ruling.reserve.soc, Spread::Everywhere));
-    let lowest = ruling.settles.map_or(shift.lowest, |(_, lowest)| lowest);
-    let fails = fails(build, &machine, &ruling);
-    let seen = findings::Seen {
-        build,
-        machine: &machine,
-        ruling: &ruling,
-        shift: &shift,
-        states: &states,
-        accessories: &accessories,
+    let circuits = circuit::circuits(build).map_err(SolveError::Circuit)?;
+    let mut checked = match build.battery {
+        Some(_) => charged::check(build, wanted)?,
+        None => Checked {
+            check: without_battery::check(build, &circuits),
+            trace: Vec::new(),
+        },
     };
-    let check = Check {
-        format: FORMAT,
-        build: build.name.clone(),
-        air_c: build.air.value,
-        system_v: Volts(2.0 * f64::from(machine.cells)),
-        verdict: ruling.verdict,
-        sentence: sentence::sentence(
-            &ruling,
-            everywhere.map(|a| (-a).max(Amps::ZERO)),
-            shift.lowest,
-            fails.as_deref(),
-        ),
-        shifts_carried: ruling.shifts_carried,
-        lacks_ah: ruling.lacks,
-        lacks_a: ruling.lacks_current,
-        beyond_charging: beyond::battery_that_would_do(build, &ruling),
-        fails,
-        storage: Some(storage(build, &machine, &ruling)),
-        rundown: rundown(&machine, Charge::rested(build.start), ruling.reserve.soc),
-        balance_ah: Some(shift.balance),
-        settles_soc: ruling.settles.map(|(charge, _)| charge.soc),
-        lowest_soc: Some(lowest),
-        reserve_soc: Some(ruling.reserve.soc.min(Fraction::ONE)),
-        reserve_from: Some(ruling.reserve.from.words().to_owned()),
-        findings: findings::findings(&seen),
-        steps: shift.steps(build, &machine),
-        states,
-        accessories,
-        circuits: Vec::new(),
-        spare_a: spare,
-        changes: crate::size::nearest(build, &ruling),
-        assumed: build.assumed.clone(),
-        cautions: cautions(build),
-        notes: build.notes.clone(),
-    };
-    Ok(Checked {
-        check,
-        trace: shift.trace,
-    })
+    let check = &mut checked.check;
+    check.circuits = circuit::circuit_rows(&circuits);
+    check
+        .accessories
+        .extend(circuit::accessory_rows(build, &circuits));
+    check.findings.extend(circuit::findings(build, &circuits));
+    shares(&mut check.accessories);
+    Ok(checked)
 }
 
-/// What fails first when a build that does not keep up is worked all the same.
-fn fails(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<String> {
-    if ruling.verdict == Verdict::KeepsUp {
-        return None;
+/// Each accessory's share of the charge of all, largest first.
+fn shares(rows: &mut [AccessoryRow]) {
+    let all: f64 = rows.iter().map(|row| row.ah.0).sum();
+    for row in rows.iter_mut() {
+        row.share = Fraction(if all > 0.0 { row.ah.0 / all } else { 0.0 });
     }
-    let course = course(
-        build,
-        machine,
-        Charge::rested(build.start),
-        ruling.reserve.soc,
-    );
-    course
-        .clause(build)
-        .or_else(|| course.reserve_clause(build))
-}
-
-/// What may still be drawn at each running speed alone, for a build that keeps up.
-fn spare(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<ByState<Amps>> {
-    if ruling.verdict != Verdict::KeepsUp {
-        return None;
-    }
-    let running = machine
-        .connected
-        .iter()
-        .filter(|w| w.runs && matches!(w.state, State::Running(_)));
-    let amps = running.filter_map(|w| {
-        let edge = machine.edge(ruling.reserve.soc, Spread::In(w.state))?;
-        Some((
-            build.state_name(w.state).to_owned(),
-            (-edge).max(Amps::ZERO),
-        ))
-    });
-    Some(ByState(amps.collect()))
+    rows.sort_by(|a, b| b.ah.0.total_cmp(&a.ah.0));
 }

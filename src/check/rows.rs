@@ -119,21 +119,12 @@ fn winding_heat(build: &Build, state: State, bus: Volts) -> Watts {
 #[must_use]
 pub fn by_accessory(build: &Build, machine: &Machine, shift: &FirstShift) -> Vec<AccessoryRow> {
     let states = states(machine, shift);
-    let mut rows: Vec<AccessoryRow> = build
+    let rows: Vec<AccessoryRow> = build
         .accessories
         .iter()
         .filter(|a| a.circuit.is_none())
         .map(|accessory| accessory_row(build, machine, &states, accessory))
         .collect();
-    let all: AmpHours = rows.iter().map(|r| r.ah).sum();
-    for row in &mut rows {
-        row.share = if all > AmpHours::ZERO {
-            Fraction(row.ah / all)
-        } else {
-            Fraction::ZERO
-        };
-    }
-    rows.sort_by(|a, b| b.ah.0.total_cmp(&a.ah.0));
     rows
 }
 

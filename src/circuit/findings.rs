@@ -8,7 +8,7 @@ use crate::build::{Accessory, Build, Draw};
 use crate::check::answer::{Finding, Weight};
 use crate::description::accessory::LoadKind;
 use crate::load::filament_life;
-use crate::quantity::{Fraction, Volts, format};
+use crate::quantity::{Amps, Fraction, Volts, format};
 
 /// The findings on every circuit: dim and short-lived lamps, what a burnt-out lamp does to the
 /// others, volts outside an accessory's range, coils that may not pull in when hot, and coils behind
@@ -183,6 +183,17 @@ impl Circuit {
         use crate::source::Rectifier;
         let source = build.sources.get(self.source).map(|s| &s.kind);
         matches!(source, Some(SourceKind::Winding(w)) if matches!(w.rectifier, Some(Rectifier::HalfWave { .. })))
+    }
+
+    /// What the accessories draw in a state with everything on.
+    #[must_use]
+    pub fn drawn(&self, state: &str) -> Amps {
+        self.accessories
+            .iter()
+            .flat_map(|on| &on.states)
+            .filter(|s| s.state == state)
+            .map(|s| s.amps)
+            .sum()
     }
 
     /// Volts by state with everything on.

@@ -1,0 +1,116 @@
+//! The check of a build with a battery.
+
+use super::answer::{ByState, Check, Verdict};
+use super::ruling::{Ruling, rule_on};
+use super::{
+    Checked, FORMAT, SolveError, Wanted, beyond, by_accessory, by_state, cautions, course,
+    findings, first_shift, rundown, sentence, storage,
+};
+use crate::battery::Charge;
+use crate::build::{Build, State};
+use crate::ledger::Machine;
+use crate::outlook::Spread;
+use crate::quantity::{Amps, Fraction, Volts};
+
+/// Checks a build with a battery; circuits of their own are left to the caller.
+///
+/// # Errors
+/// [`SolveError`]: there is no answer.
+pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
+    let machine = Machine::new(build).ok_or(SolveError::NoBattery)?;
+    let ruling = rule_on(build, &machine)?;
+    let shift = first_shift(build, &machine, Charge::rested(build.start), wanted.trace);
+    if !shift.balance.is_finite() {
+        return Err(SolveError::NotFinite);
+    }
+    let states = by_state(build, &machine, &shift);
+    let accessories = by_accessory(build, &machine, &shift);
+    let spare = spare(build, &machine, &ruling);
+    let everywhere = spare
+        .as_ref()
+        .and(machine.edge(ruling.reserve.soc, Spread::Everywhere));
+    let lowest = ruling.settles.map_or(shift.lowest, |(_, lowest)| lowest);
+    let fails = fails(build, &machine, &ruling);
+    let seen = findings::Seen {
+        build,
+        machine: &machine,
+        ruling: &ruling,
+        shift: &shift,
+        states: &states,
+        accessories: &accessories,
+    };
+    let check = Check {
+        format: FORMAT,
+        build: build.name.clone(),
+        air_c: build.air.value,
+        system_v: Volts(2.0 * f64::from(machine.cells)),
+        verdict: ruling.verdict,
+        sentence: sentence::sentence(
+            &ruling,
+            everywhere.map(|a| (-a).max(Amps::ZERO)),
+            shift.lowest,
+            fails.as_deref(),
+        ),
+        shifts_carried: ruling.shifts_carried,
+        lacks_ah: ruling.lacks,
+        lacks_a: ruling.lacks_current,
+        beyond_charging: beyond::battery_that_would_do(build, &ruling),
+        fails,
+        storage: Some(storage(build, &machine, &ruling)),
+        rundown: rundown(&machine, Charge::rested(build.start), ruling.reserve.soc),
+        balance_ah: Some(shift.balance),
+        settles_soc: ruling.settles.map(|(charge, _)| charge.soc),
+        lowest_soc: Some(lowest),
+        reserve_soc: Some(ruling.reserve.soc.min(Fraction::ONE)),
+        reserve_from: Some(ruling.reserve.from.words().to_owned()),
+        findings: findings::findings(&seen),
+        steps: shift.steps(build, &machine),
+        states,
+        accessories,
+        circuits: Vec::new(),
+        spare_a: spare,
+        changes: crate::size::nearest(build, &ruling),
+        assumed: build.assumed.clone(),
+        cautions: cautions(build),
+        notes: build.notes.clone(),
+    };
+    Ok(Checked {
+        check,
+        trace: shift.trace,
+    })
+}
+
+/// What fails first when a build that does not keep up is worked all the same.
+fn fails(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<String> {
+    if ruling.verdict == Verdict::KeepsUp {
+        return None;
+    }
+    let course = course(
+        build,
+        machine,
+        Charge::rested(build.start),
+        ruling.reserve.soc,
+    );
+    course
+        .clause(build)
+        .or_else(|| course.reserve_clause(build))
+}
+
+/// What may still be drawn at each running speed alone, for a build that keeps up.
+fn spare(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<ByState<Amps>> {
+    if ruling.verdict != Verdict::KeepsUp {
+        return None;
+    }
+    let running = machine
+        .connected
+        .iter()
+        .filter(|w| w.runs && matches!(w.state, State::Running(_)));
+    let amps = running.filter_map(|w| {
+        let edge = machine.edge(ruling.reserve.soc, Spread::In(w.state))?;
+        Some((
+            build.state_name(w.state).to_owned(),
+            (-edge).max(Amps::ZERO),
+        ))
+    });
+    Some(ByState(amps.collect()))
+}
