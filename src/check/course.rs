@@ -22,7 +22,7 @@ pub struct Course {
     pub drop_out: Option<(u32, State, String)>,
 }
 
-/// Follows a build from a charge until the engine will not crank, or for [`MOST_SHIFTS`] shifts.
+/// Follows a build from a charge until the engine will not crank, or for a month of shifts.
 #[must_use]
 pub fn course(build: &Build, machine: &Machine, start: Charge, reserve: Fraction) -> Course {
     let mut course = Course::default();

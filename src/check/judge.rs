@@ -62,7 +62,7 @@ pub fn judge(build: &Build) -> Result<Judged, SolveError> {
         let ruling = rule_on(build, &machine)?;
         return Ok(Judged::OnCharge(Box::new(machine), ruling));
     }
-    let circuits = circuits(build).map_err(|_| SolveError::Circuit)?;
+    let circuits = circuits(build).map_err(SolveError::Circuit)?;
     let on_volts = verdict_on_volts(build, &circuits);
     let room = on_volts.tightest.map(|t| t.margin);
     Ok(Judged::OnVolts(on_volts.verdict, room))

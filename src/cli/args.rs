@@ -92,6 +92,12 @@ pub enum Command {
     /// Does the charging system keep up? The verdict, with its working
     #[command(after_help = examples::CHECK)]
     Check(CheckArgs),
+    /// Winding output against rpm: amps, heat, cut-in and break-even speeds
+    Curve(CurveArgs),
+    /// Wire, fuse and relay for each accessory with a `run:`
+    Wire(WireArgs),
+    /// Winding constants from bench readings (YAML, or CSV by its ending)
+    Identify(IdentifyArgs),
     /// How often do builds within the tolerances keep up, and which tolerance matters most?
     #[command(after_help = examples::ODDS)]
     Odds(OddsArgs),
@@ -173,4 +179,60 @@ pub struct OddsArgs {
     /// Write the worst draw as a build file
     #[arg(long, value_name = "FILE.yaml")]
     pub worst: Option<PathBuf>,
+}
+
+/// `curve`.
+#[derive(Args, Debug)]
+#[command(
+    after_help = "Examples:\n  ampledger curve examples/rebuilder-stator.yaml\n  ampledger curve examples/rebuilder-stator.yaml --rpm 1800,2400,3600 --volts 12.6,14.4"
+)]
+pub struct CurveArgs {
+    /// Build file; `-` is standard input
+    #[arg(value_name = "BUILD")]
+    pub file: String,
+    /// Changes to the build.
+    #[command(flatten)]
+    pub build: BuildArgs,
+    /// Engine speeds, `1800,2400,3600`
+    #[arg(long, value_name = "LIST", value_delimiter = ',')]
+    pub rpm: Vec<String>,
+    /// Bus volts, `12.6,14.4`
+    #[arg(long, value_name = "LIST", value_delimiter = ',')]
+    pub volts: Vec<String>,
+    /// Write the chart as an SVG picture
+    #[arg(long, value_name = "FILE.svg")]
+    pub svg: Option<PathBuf>,
+}
+
+/// `wire`.
+#[derive(Args, Debug)]
+#[command(after_help = "Example:\n  ampledger wire examples/dealer-mower-quote.yaml --gauge awg")]
+pub struct WireArgs {
+    /// Build file; `-` is standard input
+    #[arg(value_name = "BUILD")]
+    pub file: String,
+    /// Changes to the build.
+    #[command(flatten)]
+    pub build: BuildArgs,
+    /// Sizes in which the wire is bought
+    #[arg(long, value_enum, default_value_t = GaugeArg::Metric, value_name = "GAUGE")]
+    pub gauge: GaugeArg,
+}
+
+/// Wire sizes.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+pub enum GaugeArg {
+    /// Square millimetres
+    Metric,
+    /// American wire gauge
+    Awg,
+}
+
+/// `identify`.
+#[derive(Args, Debug)]
+#[command(after_help = "Example:\n  ampledger identify examples/bench/burnt-winding.csv")]
+pub struct IdentifyArgs {
+    /// Readings: YAML as a `charging` entry, or CSV; `-` is YAML on standard input
+    #[arg(value_name = "READINGS")]
+    pub file: String,
 }

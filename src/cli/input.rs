@@ -4,7 +4,7 @@ use super::args::{BuildArgs, Common};
 use ampledger::build::Build;
 use ampledger::catalog::Catalogs;
 use ampledger::description::set::Assignment;
-use ampledger::description::{Description, read_file, read_set};
+use ampledger::description::{Description, bytes_of, read_file, read_set};
 use ampledger::problem::{Problem, Refusal, Source};
 use ampledger::quantity::parse::parse;
 use ampledger::quantity::{Celsius, Fraction};
@@ -132,6 +132,35 @@ fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Descripti
         .read_to_end(&mut bytes)
         .context("standard input cannot be read")?;
     Ok(read_set("standard input", &bytes, assignments)?)
+}
+
+/// A file's name in messages and its text; `-` is standard input.
+///
+/// # Errors
+/// [`Refusal`]: it is missing, too large, not UTF-8.
+pub fn text(file: &str) -> anyhow::Result<(String, String)> {
+    let (name, bytes) = if file == "-" {
+        let mut bytes = Vec::new();
+        let most = ampledger::problem::text::MOST_BYTES + 1;
+        std::io::stdin()
+            .lock()
+            .take(most)
+            .read_to_end(&mut bytes)
+            .context("standard input cannot be read")?;
+        ("standard input".to_owned(), bytes)
+    } else {
+        (file.to_owned(), bytes_of(Path::new(file), file)?)
+    };
+    match String::from_utf8(bytes) {
+        Ok(text) => Ok((
+            name,
+            text.trim_start_matches('\u{feff}').replace("\r\n", "\n"),
+        )),
+        Err(problem) => Err(anyhow!(
+            "`{name}` is not UTF-8 text (byte {})",
+            problem.utf8_error().valid_up_to() + 1
+        )),
+    }
 }
 
 /// A quantity given as an argument.

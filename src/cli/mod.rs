@@ -4,6 +4,8 @@
 pub mod args;
 mod check;
 mod completions;
+mod curve;
+mod identify;
 mod input;
 mod man;
 mod new;
@@ -13,6 +15,9 @@ mod parts;
 mod progress;
 mod schema;
 mod why;
+mod progress;
+mod why;
+mod wire;
 
 use ampledger::catalog::CatalogError;
 use ampledger::problem::Refusal;
@@ -34,6 +39,9 @@ pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
     let common = &arguments.common;
     match &arguments.command {
         Command::Check(check) => check::run(check, common),
+        Command::Curve(args) => curve::run(args, common),
+        Command::Wire(args) => wire::run(args, common),
+        Command::Identify(args) => identify::run(args, common),
         Command::Odds(odds) => odds::run(odds, common),
         Command::Parts(parts) => parts::run(parts, common),
         Command::New(new) => new::run(new, common),

@@ -118,7 +118,7 @@ pub fn style(common: &Common) -> text::Style {
         width: usize::from(common.width.unwrap_or(fallback)),
         colour: common.output.is_none() && common.colours(&stdout),
         ascii: common.ascii || (to_terminal && !speaks_utf8()),
-        ..text::Style::default()
+        charts: true,
     }
 }
 

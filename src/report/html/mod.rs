@@ -247,3 +247,15 @@ fn item(item: &Item) -> Markup {
         }
     }
 }
+
+/// One chart as an SVG picture of its own, with the page's colours.
+#[must_use]
+pub fn picture(chart: &crate::chart::Chart) -> String {
+    let drawn = svg::draw(chart, svg::WIDE, "chart").into_string();
+    let style = format!("<style>{}</style>", style::sheet());
+    // The style goes inside the picture, after its opening tag.
+    match drawn.find('>') {
+        Some(end) => format!("{}{style}{}\n", &drawn[..=end], &drawn[end + 1..]),
+        None => drawn,
+    }
+}

@@ -1,0 +1,62 @@
+//! `ampledger curve`.
+
+use super::args::{Common, CurveArgs};
+use super::{KEEPS_UP, input, output};
+use ampledger::chart::Chart;
+use ampledger::curve;
+use ampledger::quantity::unit::Unit;
+use ampledger::quantity::{Rpm, Volts};
+use ampledger::report::{Block, Report, html};
+use ampledger::view;
+use anyhow::{anyhow, bail};
+
+/// Shows the output of every winding and alternator of a build.
+///
+/// # Errors
+/// The build cannot be read; a list that holds no speeds or volts.
+pub fn run(args: &CurveArgs, common: &Common) -> anyhow::Result<u8> {
+    let catalogs = input::catalogs(common)?;
+    let opened = input::build(&args.file, &args.build, &catalogs)?;
+    let build = &opened.build;
+    let mut rpms = list::<Rpm>("--rpm", &args.rpm, Rpm)?;
+    let mut volts = list::<Volts>("--volts", &args.volts, Volts)?;
+    if volts.is_empty() {
+        volts = curve::default_volts(build);
+    }
+    if rpms.is_empty() {
+        rpms = curve::default_rpms(build, &volts);
+    }
+    let answer = curve::curve(build, &rpms, &volts);
+    if let Some(path) = &args.svg {
+        let report = view::curve(&answer);
+        let Some(chart) = first_chart(&report) else {
+            bail!("--svg: there is nothing to draw");
+        };
+        output::whole(path, html::picture(chart).as_bytes(), common.force)?;
+    }
+    output::write(common, || view::curve(&answer), &answer)?;
+    Ok(KEEPS_UP)
+}
+
+fn first_chart(report: &Report) -> Option<&Chart> {
+    report.blocks.iter().find_map(|block| match block {
+        Block::Chart(chart) => Some(chart),
+        _ => None,
+    })
+}
+
+/// Numbers with or without their unit.
+fn list<Q: Unit>(name: &str, texts: &[String], bare: impl Fn(f64) -> Q) -> anyhow::Result<Vec<Q>> {
+    let one = |text: &String| -> anyhow::Result<Q> {
+        match text.trim().parse::<f64>() {
+            Ok(number) if number.is_finite() && number > 0.0 => Ok(bare(number)),
+            Ok(_) => Err(anyhow!("{name} `{text}`: must be above 0")),
+            Err(_) => input::value::<Q>(name, text),
+        }
+    };
+    texts
+        .iter()
+        .filter(|text| !text.trim().is_empty())
+        .map(one)
+        .collect()
+}

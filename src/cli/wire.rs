@@ -1,0 +1,26 @@
+//! `ampledger wire`.
+
+use super::args::{Common, GaugeArg, WireArgs};
+use super::{DOES_NOT, KEEPS_UP, input, output};
+use ampledger::view;
+use ampledger::wire::{Gauge, Options, wires};
+
+/// Chooses wire, fuse and relay for what has a `run:`; exit code 1 where no standard pair does.
+///
+/// # Errors
+/// The build cannot be read.
+pub fn run(args: &WireArgs, common: &Common) -> anyhow::Result<u8> {
+    let catalogs = input::catalogs(common)?;
+    let opened = input::build(&args.file, &args.build, &catalogs)?;
+    let gauge = match args.gauge {
+        GaugeArg::Metric => Gauge::Metric,
+        GaugeArg::Awg => Gauge::Awg,
+    };
+    let answer = wires(&opened.build, &Options { gauge });
+    output::write(common, || view::wire(&answer), &answer)?;
+    Ok(if answer.unmet.is_empty() {
+        KEEPS_UP
+    } else {
+        DOES_NOT
+    })
+}
