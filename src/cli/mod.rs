@@ -15,8 +15,6 @@ mod parts;
 mod progress;
 mod schema;
 mod why;
-mod progress;
-mod why;
 mod wire;
 
 use ampledger::catalog::CatalogError;
