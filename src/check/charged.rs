@@ -4,7 +4,7 @@ use super::answer::{ByState, Check, Verdict};
 use super::ruling::{Ruling, rule_on};
 use super::{
     Checked, FORMAT, SolveError, Wanted, beyond, by_accessory, by_state, cautions, course,
-    findings, first_shift, rundown, sentence, storage,
+    findings, first_shift, history, rundown, sentence, storage,
 };
 use crate::battery::Charge;
 use crate::build::{Build, State};
@@ -39,6 +39,16 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
         states: &states,
         accessories: &accessories,
     };
+    let mut trace = shift.trace.clone();
+    if let Some(last) = shift.legs.last().filter(|_| wanted.trace) {
+        trace.extend(history::history(
+            build,
+            &machine,
+            last.after,
+            last.begins + last.time,
+            wanted.shifts,
+        ));
+    }
     let check = Check {
         format: FORMAT,
         build: build.name.clone(),
@@ -74,10 +84,7 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
         cautions: cautions(build),
         notes: build.notes.clone(),
     };
-    Ok(Checked {
-        check,
-        trace: shift.trace,
-    })
+    Ok(Checked { check, trace })
 }
 
 /// What fails first when a build that does not keep up is worked all the same.

@@ -205,7 +205,8 @@ impl FirstShift {
     }
 }
 
-fn trace_row(
+/// The row of a trace at a charge.
+pub(super) fn trace_row(
     build: &Build,
     machine: &Machine,
     (state, wired): (State, usize),

@@ -8,6 +8,7 @@ mod course;
 mod error;
 mod findings;
 mod first_shift;
+mod history;
 mod judge;
 mod rows;
 mod ruling;
@@ -40,6 +41,8 @@ pub const FORMAT: u32 = 1;
 pub struct Wanted {
     /// A trace of the first shift.
     pub trace: bool,
+    /// Shifts that the trace goes on for; 0 and 1 are the first alone.
+    pub shifts: u32,
 }
 
 /// The answer, and the trace where one was asked for.

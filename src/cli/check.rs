@@ -1,6 +1,6 @@
 //! `ampledger check`.
 
-use super::args::{CheckArgs, Common, Format};
+use super::args::{BuildArgs, CheckArgs, Common, Format};
 use super::input::{self, Opened};
 use super::{DOES_NOT, KEEPS_UP, output};
 use ampledger::catalog::Catalogs;
@@ -39,6 +39,7 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
     }
     let wanted = Wanted {
         trace: args.trace.is_some() || common.format == Format::Html,
+        shifts: days(common),
     };
     let before = answer(&opened, wanted)?;
     let options = |trace| view::Options {
@@ -58,7 +59,7 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
             (before, verdict)
         }
         Some(kit) => {
-            let after = answer(&with_kit(&opened, kit, args, &catalogs)?, wanted)?;
+            let after = answer(&with_kit(&opened, kit, &args.build, &catalogs)?, wanted)?;
             let both = Compared {
                 before: &before.check,
                 after: &after.check,
@@ -75,6 +76,17 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
     Ok(code(verdict))
 }
 
+/// Shifts whose charge a page draws.
+pub const PAGE_SHIFTS: u32 = 7;
+
+fn days(common: &Common) -> u32 {
+    if common.format == Format::Html {
+        PAGE_SHIFTS
+    } else {
+        1
+    }
+}
+
 /// The exit code of a verdict.
 pub fn code(verdict: Verdict) -> u8 {
     if verdict == Verdict::KeepsUp {
@@ -84,7 +96,7 @@ pub fn code(verdict: Verdict) -> u8 {
     }
 }
 
-fn answer(opened: &Opened, wanted: Wanted) -> anyhow::Result<Checked> {
+pub fn answer(opened: &Opened, wanted: Wanted) -> anyhow::Result<Checked> {
     check(&opened.build, wanted).with_context(|| opened.source.name.clone())
 }
 
@@ -92,15 +104,15 @@ fn answer(opened: &Opened, wanted: Wanted) -> anyhow::Result<Checked> {
 ///
 /// # Errors
 /// No such kit; the kit does not fit the build.
-fn with_kit(
+pub fn with_kit(
     opened: &Opened,
     kit: &str,
-    args: &CheckArgs,
+    args: &BuildArgs,
     catalogs: &Catalogs,
 ) -> anyhow::Result<Opened> {
     let kit = resolve::find_kit(catalogs, kit)?;
     let description = resolve::with_kit(&opened.description, &kit);
-    let build = input::resolved(&description, &opened.source, &args.build, catalogs)?;
+    let build = input::resolved(&description, &opened.source, args, catalogs)?;
     Ok(Opened {
         description,
         source: opened.source.clone(),
@@ -152,6 +164,7 @@ fn several(files: &[String], args: &CheckArgs, common: &Common) -> anyhow::Resul
             &opened,
             Wanted {
                 trace: common.format == Format::Html,
+                shifts: days(common),
             },
         )?);
     }
