@@ -96,6 +96,8 @@ pub enum Command {
     Curve(CurveArgs),
     /// Wire, fuse and relay for each accessory with a `run:`
     Wire(WireArgs),
+    /// All of it as one page to hand over (HTML unless another format is asked for)
+    Sheet(SheetArgs),
     /// Winding constants from bench readings (YAML, or CSV by its ending)
     Identify(IdentifyArgs),
     /// How often do builds within the tolerances keep up, and which tolerance matters most?
@@ -235,4 +237,30 @@ pub struct IdentifyArgs {
     /// Readings: YAML as a `charging` entry, or CSV; `-` is YAML on standard input
     #[arg(value_name = "READINGS")]
     pub file: String,
+}
+
+/// `sheet`.
+#[derive(Args, Debug)]
+#[command(
+    after_help = "Example:\n  ampledger sheet examples/dealer-mower-quote.yaml --for 'the orchard' -o quote.html"
+)]
+pub struct SheetArgs {
+    /// Build file; `-` is standard input
+    #[arg(value_name = "BUILD")]
+    pub file: String,
+    /// Changes to the build.
+    #[command(flatten)]
+    pub build: BuildArgs,
+    /// A kit to add, by its id or file: both verdicts side by side
+    #[arg(long, value_name = "KIT")]
+    pub with: Option<String>,
+    /// Sizes in which the wire is bought
+    #[arg(long, value_enum, default_value_t = GaugeArg::Metric, value_name = "GAUGE")]
+    pub gauge: GaugeArg,
+    /// For whom the page is made
+    #[arg(long = "for", value_name = "NAME")]
+    pub made_for: Option<String>,
+    /// Date to print on the page, as you write it
+    #[arg(long, value_name = "DATE")]
+    pub date: Option<String>,
 }

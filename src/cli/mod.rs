@@ -14,6 +14,7 @@ mod output;
 mod parts;
 mod progress;
 mod schema;
+mod sheet;
 mod why;
 mod wire;
 
@@ -39,6 +40,7 @@ pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
         Command::Check(check) => check::run(check, common),
         Command::Curve(args) => curve::run(args, common),
         Command::Wire(args) => wire::run(args, common),
+        Command::Sheet(args) => sheet::run(args, common),
         Command::Identify(args) => identify::run(args, common),
         Command::Odds(odds) => odds::run(odds, common),
         Command::Parts(parts) => parts::run(parts, common),

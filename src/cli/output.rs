@@ -21,7 +21,20 @@ pub fn write(
     report: impl FnOnce() -> Report,
     answer: &impl serde::Serialize,
 ) -> anyhow::Result<()> {
-    let bytes = match common.format {
+    write_as(common, common.format, report, answer)
+}
+
+/// The same in a format of the command's own.
+///
+/// # Errors
+/// The file exists, or cannot be written.
+pub fn write_as(
+    common: &Common,
+    format: Format,
+    report: impl FnOnce() -> Report,
+    answer: &impl serde::Serialize,
+) -> anyhow::Result<()> {
+    let bytes = match format {
         Format::Json => json(answer)?,
         Format::Table => text::render(&report(), &style(common)),
         Format::Csv => csv::render(&report()),

@@ -12,15 +12,24 @@ use ampledger::wire::{Gauge, Options, wires};
 pub fn run(args: &WireArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
     let opened = input::build(&args.file, &args.build, &catalogs)?;
-    let gauge = match args.gauge {
-        GaugeArg::Metric => Gauge::Metric,
-        GaugeArg::Awg => Gauge::Awg,
-    };
-    let answer = wires(&opened.build, &Options { gauge });
+    let answer = wires(
+        &opened.build,
+        &Options {
+            gauge: gauge(args.gauge),
+        },
+    );
     output::write(common, || view::wire(&answer), &answer)?;
     Ok(if answer.unmet.is_empty() {
         KEEPS_UP
     } else {
         DOES_NOT
     })
+}
+
+/// The gauge asked for.
+pub fn gauge(asked: GaugeArg) -> Gauge {
+    match asked {
+        GaugeArg::Metric => Gauge::Metric,
+        GaugeArg::Awg => Gauge::Awg,
+    }
 }

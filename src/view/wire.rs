@@ -46,6 +46,16 @@ pub fn wire(answer: &Wires) -> Report {
     closing(report, answer)
 }
 
+/// The same in short, for a page that holds more: the list of wires, what to buy, what no standard
+/// pair can do.
+#[must_use]
+pub fn short(answer: &Wires) -> Report {
+    Report::new("Wire, fuse and relay")
+        .table(wires(answer))
+        .table(to_buy(&answer.buy, answer.gauge))
+        .list("No standard pair", answer.unmet.iter().flat_map(unmet))
+}
+
 fn verdict(answer: &Wires) -> (Tone, String, String) {
     let count = |n: usize| format::count(u32::try_from(n).unwrap_or(u32::MAX), "wire", "wires");
     let (sized, open) = (answer.wires.len(), answer.unmet.len());
