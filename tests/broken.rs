@@ -98,6 +98,7 @@ fn fault(fault: &Fault) -> Option<usize> {
         Fault::UnknownName { .. } => 4,
         Fault::CannotCrank { .. } => 5,
         Fault::Winding(_) => 7,
+        Fault::Readings(_) => 19,
         Fault::AcIntoBattery => 9,
         Fault::RegulatorOnAc => 10,
         Fault::ThreePhaseNeedsBridge => 11,
@@ -112,7 +113,7 @@ fn fault(fault: &Fault) -> Option<usize> {
         Fault::ApartOverfull { .. } => 18,
     })
 }
-const FAULTS: std::ops::Range<usize> = 0..19;
+const FAULTS: std::ops::Range<usize> = 0..20;
 
 /// The same for the kinds of a quantity's error.
 fn quantity(kind: &ParseErrorKind) -> usize {

@@ -2,6 +2,7 @@
 //! connections that must not be.
 
 use crate::catalog::Kind;
+use crate::identify::IdentifyError;
 use crate::problem::{Problem, ProblemKind, words};
 use crate::quantity::{Fraction, format};
 use crate::source::{ConstantsError, CurveError};
@@ -71,6 +72,8 @@ pub enum Fault {
     },
     /// Figures of a winding that do not go together.
     Winding(ConstantsError),
+    /// Bench readings that lead to no winding.
+    Readings(IdentifyError),
     /// Points that make no output curve.
     Curve(CurveError),
     /// Alternating current into the battery.
@@ -155,6 +158,7 @@ impl fmt::Display for Fault {
                 write!(f, "neither `winding`, `alternator` nor `part`")
             }
             Fault::Winding(error) => write!(f, "{error}"),
+            Fault::Readings(error) => write!(f, "{error}"),
             Fault::Curve(error) => write!(f, "{error}"),
             other => other.connection(f),
         }
@@ -272,7 +276,7 @@ impl Fault {
         match self {
             Fault::Missing { .. } | Fault::WindingOrAlternator { both: false } => "incomplete",
             Fault::UnknownPart { .. } | Fault::UnknownName { .. } => "not there",
-            Fault::Winding(_) => "these figures",
+            Fault::Winding(_) | Fault::Readings(_) => "these figures",
             Fault::EmptyShift | Fault::NoTime { .. } => "no time",
             Fault::NameTwice { .. } => "here again",
             Fault::OnBrakingWinding { .. } | Fault::BrakingFeedsBattery => "refused for safety",

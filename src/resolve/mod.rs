@@ -16,8 +16,8 @@ mod engine;
 mod fault;
 mod groups;
 mod kit;
-
 mod parts;
+mod readings;
 mod shift;
 mod winding;
 mod wiring;

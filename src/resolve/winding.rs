@@ -3,6 +3,7 @@
 use super::Fault;
 use super::charging::Place;
 use super::context::{Context, Layers, PRACTICE, by_rule, of_system};
+use super::readings::{Bench, bench};
 use crate::build::{Figure, Origin, WindingSource};
 use crate::description::{ChargingText, RatedText, ReadingText, WindingText, Written};
 use crate::quantity::{Amps, Celsius, Fraction, Henries, Ohms, Rpm, Tolerance, Volts, format};
@@ -29,6 +30,8 @@ struct Way {
     rated: Option<Figure<(Amps, Rpm, Volts)>>,
     /// The rating; beside a measured inductance it only checks it.
     rating: Option<Rating>,
+    /// Constants from bench readings; what was measured of them beside is in them.
+    bench: Option<Bench>,
 }
 
 /// The winding of an entry; none where a fault leaves nothing to go by.
@@ -46,16 +49,15 @@ pub(super) fn winding(
     let magnets = magnets(context, layers, place, working.value);
     let scale = layers.figure(&path("scale"), |t| key(t, |w| w.scale.as_ref()));
     let scale = scale.unwrap_or_else(|| by_rule(Fraction::ONE, path("scale")));
-    let way = way(context, layers, place)?;
-    let volts = layers.figure(&path("open_circuit"), |t| {
+    let mut volts = layers.figure(&path("open_circuit"), |t| {
         key(t, |w| w.open_circuit.as_ref())
     });
-    let ohms = layers.figure(&path("resistance"), |t| key(t, |w| w.resistance.as_ref()));
-    let known = Known {
+    let mut ohms = layers.figure(&path("resistance"), |t| key(t, |w| w.resistance.as_ref()));
+    let mut known = Known {
         open_circuit: volts.as_ref().map(|f| f.value.0 / f.value.1),
         resistance: ohms.as_ref().map(|f| f.value),
-        inductance: way.inductance.as_ref().map(|f| f.value),
-        rated: way.rating,
+        inductance: None,
+        rated: None,
         poles,
         phases,
         rectifier,
@@ -64,6 +66,17 @@ pub(super) fn winding(
             magnets,
         },
     };
+    let stated_at = volts.as_ref().map(|f| f.value.1);
+    let mut way = way(context, layers, place, (&known, stated_at))?;
+    if let Some(bench) = way.bench.take() {
+        known.open_circuit = Some(bench.open_circuit.value.0 / bench.open_circuit.value.1);
+        known.resistance = Some(bench.resistance.value);
+        way.inductance = Some(bench.inductance);
+        volts = Some(bench.open_circuit);
+        ohms = Some(bench.resistance);
+    }
+    known.inductance = way.inductance.as_ref().map(|f| f.value);
+    known.rated = way.rating;
     let complete = told(context, &at, known.complete())?;
     let constants = told(
         context,
@@ -151,23 +164,58 @@ fn magnets(
         })
 }
 
+/// What is known beside the way, and the speed at which open-circuit volts are stated.
+type Beside<'a> = (&'a Known, Option<Rpm>);
+
 /// Inductance, bench readings or rating: of one layer, so that those written beside `part:` displace those of the part.
-fn way(context: &mut Context, layers: &Layers<ChargingText>, place: Place) -> Option<Way> {
+fn way(
+    context: &mut Context,
+    layers: &Layers<ChargingText>,
+    place: Place,
+    beside: Beside,
+) -> Option<Way> {
     let at = format!("{}.winding", place.path);
+    let setpoint = layers.value(|t| t.regulator.as_ref().and_then(|r| r.holds.as_ref()));
     let texts = std::iter::once((layers.own, &Origin::Stated))
         .chain(layers.parts.iter().map(|p| (&p.read.text, &p.origin)));
     for (text, origin) in texts {
-        let winding = text.winding.as_ref();
-        if let Some(way) = winding.and_then(|w| way_of(context, w, origin, place)) {
-            return Some(way);
-        }
+        let Some(winding) = text.winding.as_ref() else {
+            continue;
+        };
+        let through = beside
+            .0
+            .rectifier
+            .filter(|_| winding.inductance.is_none() && !winding.readings.is_empty());
+        let Some(rectifier) = through else {
+            match way_of(context, winding, origin, place) {
+                Some(way) => return Some(way),
+                None => continue,
+            }
+        };
+        let (known, stated_at) = beside;
+        let found = bench(
+            context,
+            place,
+            &winding.readings,
+            (known, rectifier),
+            (setpoint, stated_at),
+        );
+        return found
+            .map_err(|(path, fault)| context.fault(path, fault))
+            .ok()
+            .map(|bench| Way {
+                inductance: None,
+                rated: None,
+                rating: None,
+                bench: Some(bench.of(origin)),
+            });
     }
     let keys = "`rated`, `inductance` or `readings`";
     context.fault(at, Fault::Missing { keys });
     None
 }
 
-/// The way of one layer: a measured inductance before bench readings, and those before a rating.
+/// The way of one layer: a measured inductance before readings on alternating current, and those before a rating.
 fn way_of(context: &mut Context, text: &WindingText, origin: &Origin, place: Place) -> Option<Way> {
     let at = format!("{}.winding", place.path);
     if let Some(found) = &text.inductance {
@@ -178,6 +226,7 @@ fn way_of(context: &mut Context, text: &WindingText, origin: &Origin, place: Pla
             inductance: Some(super::context::figure(found, origin.clone(), &path)),
             rated: None,
             rating: rating.map(|r| rating_of(&r.value, r.value.volts.unwrap_or(usual))),
+            bench: None,
         });
     }
     let (rating, tolerance, path) = match (strongest(&text.readings), &text.rated) {
@@ -219,6 +268,7 @@ fn way_of(context: &mut Context, text: &WindingText, origin: &Origin, place: Pla
             path,
         }),
         rating: Some(rating),
+        bench: None,
     })
 }
 
