@@ -25,7 +25,7 @@ pub fn sentence(
             });
             let (begins, least) = (percent(charge.soc), percent(least));
             format!(
-                "Keeps up: settles at {begins} at the start of each shift and stays above {least}, over {reserve}{spare}."
+                "Keeps up: each shift begins at {begins} of charge and never goes under {least}, with {reserve} kept{spare}."
             )
         }
         (Verdict::Carries, _) => {
