@@ -27,6 +27,14 @@ const CLOSED: f64 = 1e-9;
 /// Width, as a share of the current, to which it is found.
 const FOUND_TO: f64 = 2e-5;
 
+/// Searches for the current of the touching cycle, each from where the last ended.
+const MOST_SEARCHES: u32 = 4;
+
+/// Width to which a current of about this size is found.
+fn tolerance(current: f64) -> f64 {
+    CLOSE.max(FOUND_TO * current.abs())
+}
+
 /// What is lacking.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Lacking {
@@ -105,9 +113,7 @@ impl Machine {
             reserve,
             turn: Turn::default(),
         };
-        let touching = search.current_for(0.0, |search| {
-            search.turn.gain(&search.machine, search.reserve).0
-        })?;
+        let touching = search.touching()?;
         if !self.has_constant_powers() {
             return Some(Amps(touching));
         }
@@ -131,23 +137,49 @@ impl Search {
         }
     }
 
+    /// Gain over the touching cycle with a current.
+    fn gain_touching(&mut self, current: f64) -> f64 {
+        self.add(current);
+        self.turn.gain(&self.machine, self.reserve).0
+    }
+
+    /// The current at which the touching cycle closes. A cycle is begun with the depletion that the
+    /// one before it ended with, which a search from afar leaves behind its current: so the search
+    /// is repeated from where it ended until the cycle there, its depletion its own, closes.
+    fn touching(&mut self) -> Option<f64> {
+        let gain = |search: &mut Search, current: f64| search.gain_touching(current);
+        let mut current = self.current_for(0.0, gain)?;
+        for _ in 0..MOST_SEARCHES {
+            self.gain_touching(current);
+            let off = self.gain_touching(current).abs() * self.amps_a_cycle();
+            if off <= 2.0 * tolerance(current) {
+                break;
+            }
+            current = self.current_for(current, gain)?;
+        }
+        Some(current)
+    }
+
+    /// Current that over one cycle's running time fills the battery.
+    fn amps_a_cycle(&self) -> f64 {
+        self.machine.battery.cmax().0 / self.machine.running.0.max(1e-6)
+    }
+
     /// The current at which a gain of charge over the cycle is nought, looked for from `start`.
-    fn current_for(&mut self, start: f64, gain_of: impl Fn(&mut Search) -> f64) -> Option<f64> {
-        let capacity = self.machine.battery.cmax().0 / self.machine.running.0.max(1e-6);
-        let mut gain = |current: f64| {
-            self.add(current);
-            gain_of(self)
-        };
-        let here = gain(start);
-        let mut reach = (1.2 * here.abs() * capacity).max(0.01);
+    fn current_for(&mut self, start: f64, gain: impl Fn(&mut Search, f64) -> f64) -> Option<f64> {
+        let here = gain(self, start);
+        let mut reach = (1.2 * here.abs() * self.amps_a_cycle()).max(0.01);
         let (mut low, mut high) = ((start, here), (start, here));
         if here < 0.0 {
-            if gain(BEYOND) < 0.0 {
+            // The depletion of a cycle with no end of current is no beginning for the next.
+            let turn = self.turn;
+            if gain(self, BEYOND) < 0.0 {
                 return None;
             }
+            self.turn = turn;
             while high.1 < 0.0 {
                 low = high;
-                high = (start + reach, gain(start + reach));
+                high = (start + reach, gain(self, start + reach));
                 reach *= 2.0;
             }
         } else {
@@ -156,18 +188,18 @@ impl Search {
                     return None;
                 }
                 high = low;
-                low = (start - reach, gain(start - reach));
+                low = (start - reach, gain(self, start - reach));
                 reach *= 2.0;
             }
         }
         let known = [low, high];
-        let tolerance = CLOSE.max(FOUND_TO * high.0.abs());
+        let tolerance = tolerance(high.0);
         let root = bracketed(
             |x| {
                 known
                     .iter()
                     .find(|(at, _)| *at == x)
-                    .map_or_else(|| gain(x), |(_, gain)| *gain)
+                    .map_or_else(|| gain(self, x), |(_, gain)| *gain)
             },
             low.0,
             high.0,
@@ -215,7 +247,11 @@ impl Search {
         if self.gain_from(soc) <= CLOSED {
             return false;
         }
-        match self.current_for(*least, |search| search.gain_from(soc)) {
+        let gain = |search: &mut Search, current: f64| {
+            search.add(current);
+            search.gain_from(soc)
+        };
+        match self.current_for(*least, gain) {
             Some(current) if current < *least => {
                 *least = current;
                 true

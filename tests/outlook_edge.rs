@@ -1,0 +1,71 @@
+//! The current lacking against its definition, plain repetition: with a little more the build keeps up, with a
+//! little less it does not.
+
+use ampledger::battery::Charge;
+use ampledger::catalog::Catalogs;
+use ampledger::check::reserve;
+use ampledger::description::read;
+use ampledger::ledger::Machine;
+use ampledger::outlook::Spread;
+use ampledger::quantity::Amps;
+use ampledger::resolve::resolve;
+
+/// An invented cart; constant power makes it draw more the lower its bus.
+const CART: &str = "\
+build: cart
+air: 15 °C
+engine: {speeds: {idle: 1800 rpm, governed: 3400 rpm}, starter: {draw: 140 A, time: 2.5 s}}
+charging:
+  - {winding: {open_circuit: 28 V at 3600 rpm, resistance: 0.15 ohm, inductance: 0.35 mH, poles: 18}, rectifier: full-wave, regulator: {holds: 14.4 V}}
+battery: {capacity: 30 Ah, cold_cranking: 300 A, type: flooded}
+accessories: [{name: lamps, draw: 100 W}]
+shift: [crank, {idle: 30 min}, {governed: 150 min}, {stopped: 18 min}, {governed: 60 min}]
+parked: 14 h
+";
+
+#[test]
+fn the_edge_divides_whatever_the_load() {
+    let mut wrong = Vec::new();
+    for draw in ["W", "A", "ohm"] {
+        for k in 0..25 {
+            let amount = match draw {
+                "W" => format!("{} W", 120.0 + 6.9 * f64::from(k)),
+                "A" => format!("{:.2} A", 8.0 + 0.4 * f64::from(k)),
+                _ => format!("{:.3} ohm", 1.5 - 0.03 * f64::from(k)),
+            };
+            let mut text = CART.replace("100 W", &amount);
+            if draw == "W" {
+                // Lower down the lamps of constant power drop out on the way, which saves the battery.
+                text = text.replace("flooded}", "flooded, reserve: 60 %}");
+            }
+            let (description, _) = read("cart", text.as_bytes()).expect("a build");
+            let build = resolve(&description, &Catalogs::builtin()).expect("complete");
+            let mut machine = Machine::new(&build).expect("a battery");
+            let reserve = reserve(&build, &machine).soc;
+            let edge = machine
+                .edge(reserve, Spread::Everywhere)
+                .expect("an edge")
+                .0;
+            let mut keeps = |current: f64| {
+                machine.set_extra(Amps(current));
+                machine
+                    .repeat(Charge::rested(build.start), reserve, 3000)
+                    .keeps_up()
+            };
+            // Where a battery holds itself up from full only, the edge is looked for at a few depths.
+            let width = 1e-3 + 5e-3 * edge.abs();
+            let (over, under) = (keeps(edge + width), keeps(edge - width));
+            if !over || under {
+                wrong.push(format!(
+                    "{amount}: edge {edge}, keeps up over {over}, under {under}"
+                ));
+            }
+        }
+    }
+    assert!(
+        wrong.is_empty(),
+        "{} of 75:\n{}",
+        wrong.len(),
+        wrong.join("\n")
+    );
+}
