@@ -9,6 +9,7 @@ pub mod check;
 pub mod circuit;
 pub mod curve;
 pub mod description;
+pub mod fleet;
 pub mod identify;
 pub mod ledger;
 pub mod load;

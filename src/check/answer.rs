@@ -22,6 +22,18 @@ pub enum Verdict {
     FallsShort,
 }
 
+impl Verdict {
+    /// As the answers write it.
+    #[must_use]
+    pub fn words(self) -> &'static str {
+        match self {
+            Verdict::KeepsUp => "keeps up",
+            Verdict::Carries => "carries",
+            Verdict::FallsShort => "falls short",
+        }
+    }
+}
+
 /// Values by state, written as a JSON object in the order of the states.
 #[derive(Clone, Debug, PartialEq)]
 pub struct ByState<T>(pub Vec<(String, T)>);

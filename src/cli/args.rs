@@ -100,6 +100,9 @@ pub enum Command {
     Sheet(SheetArgs),
     /// Winding constants from bench readings (YAML, or CSV by its ending)
     Identify(IdentifyArgs),
+    /// Which machine of a fleet takes which kit, and what must change on the others?
+    #[command(after_help = examples::FLEET)]
+    Fleet(FleetArgs),
     /// How often do builds within the tolerances keep up, and which tolerance matters most?
     #[command(after_help = examples::ODDS)]
     Odds(OddsArgs),
@@ -161,6 +164,20 @@ pub struct CheckArgs {
     /// Date to print on the page, as you write it
     #[arg(long, value_name = "DATE")]
     pub date: Option<String>,
+}
+
+/// `fleet`.
+#[derive(Args, Debug)]
+pub struct FleetArgs {
+    /// Fleet file: YAML, or CSV with the header `machine,build,count,kit`; `-` is standard input
+    #[arg(value_name = "FLEET")]
+    pub fleet: String,
+    /// A kit to try on every machine that has none, by its id or file; `none` is the machine as it is; may be repeated
+    #[arg(long, value_name = "KIT")]
+    pub kit: Vec<String>,
+    /// Verdicts only: look for no remedy
+    #[arg(long)]
+    pub no_remedy: bool,
 }
 
 /// `odds`.

@@ -5,6 +5,7 @@ pub mod args;
 mod check;
 mod completions;
 mod curve;
+mod fleet;
 mod identify;
 mod input;
 mod man;
@@ -42,6 +43,7 @@ pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
         Command::Wire(args) => wire::run(args, common),
         Command::Sheet(args) => sheet::run(args, common),
         Command::Identify(args) => identify::run(args, common),
+        Command::Fleet(fleet) => fleet::run(fleet, common),
         Command::Odds(odds) => odds::run(odds, common),
         Command::Parts(parts) => parts::run(parts, common),
         Command::New(new) => new::run(new, common),

@@ -41,9 +41,9 @@ pub fn run(args: &OddsArgs, common: &Common) -> anyhow::Result<u8> {
         start,
     };
     let progress = Progress::new(args.runs, "Drawing builds");
-    let answer = odds(&opened.description, &catalogs, wanted, &|| progress.step())
+    let answer = odds(&opened.description, &catalogs, wanted, &|| progress.step(1))
         .map_err(|problem| failed(problem, &opened))?;
-    drop(progress);
+    progress.done();
     if let Some(path) = &args.worst {
         write_worst(path, &opened, air, &answer, common.force)?;
     }

@@ -31,15 +31,25 @@ impl Progress {
         }
     }
 
-    /// One step more; from any thread.
-    pub fn step(&self) {
-        self.bar.inc(1);
+    /// Some steps more; from any thread.
+    pub fn step(&self, steps: u64) {
+        self.bar.inc(steps);
         if self.waits.load(Ordering::Relaxed)
             && self.began.elapsed() > PATIENCE
             && self.waits.swap(false, Ordering::Relaxed)
         {
             self.bar.set_draw_target(ProgressDrawTarget::stderr());
         }
+    }
+
+    /// Takes the bar away while something else is written.
+    pub fn aside<T>(&self, write: impl FnOnce() -> T) -> T {
+        self.bar.suspend(write)
+    }
+
+    /// Takes the bar away.
+    pub fn done(&self) {
+        self.bar.finish_and_clear();
     }
 }
 

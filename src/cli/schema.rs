@@ -13,6 +13,7 @@ pub fn run(args: &SchemaArgs, common: &Common) -> anyhow::Result<u8> {
     let schema = match args.of {
         SchemaOf::Build => schema::build(),
         SchemaOf::Catalog => schema::catalog(),
+        SchemaOf::Fleet => schema::fleet(),
     };
     output::put(common, &output::json(&schema)?)?;
     Ok(KEEPS_UP)

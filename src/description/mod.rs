@@ -5,6 +5,7 @@
 
 pub mod accessory;
 pub mod charging;
+pub mod fleet;
 mod lower;
 mod open;
 pub mod path;
@@ -19,8 +20,8 @@ pub use charging::{
     AlternatorText, ChargingText, RatedText, ReadingText, RectifierText, RegulatorText, WindingText,
 };
 pub use read::{
-    bytes_of, read, read_accessory, read_battery, read_charging, read_file, read_kit, read_set,
-    read_starter,
+    bytes_of, bytes_within, read, read_accessory, read_battery, read_charging, read_file,
+    read_fleet, read_kit, read_set, read_starter,
 };
 pub(crate) use read::{open_text, second_reader};
 pub use set::Assignment;

@@ -1,5 +1,6 @@
 //! Entry points: bytes or a file to a [`Description`], with every problem of the file at once.
 
+use super::fleet::FleetText;
 use super::lower::Lower;
 use super::raw::{self, Map};
 use super::set::{self, Assignment};
@@ -58,11 +59,28 @@ pub fn read_file(
     read_set(&name, &bytes, assignments)
 }
 
+/// Reads a fleet file from its bytes.
+///
+/// # Errors
+/// [`Refusal`] with every problem found, in the order of the file.
+pub fn read_fleet(name: &str, bytes: &[u8]) -> Result<(FleetText, Source), Refusal> {
+    let (source, problems) = open_text(name, bytes)?;
+    lowered(source, problems, |low, root| low.fleet(root)).whole()
+}
+
 /// The bytes of a file that is not too large.
 ///
 /// # Errors
 /// [`Refusal`]: missing, a folder, unreadable, over the limit.
 pub fn bytes_of(path: &Path, name: &str) -> Result<Vec<u8>, Refusal> {
+    bytes_within(path, name, crate::problem::text::MOST_BYTES)
+}
+
+/// The bytes of a file, up to one beyond the most that are read.
+///
+/// # Errors
+/// [`Refusal`]: missing, a folder, unreadable.
+pub fn bytes_within(path: &Path, name: &str, most: u64) -> Result<Vec<u8>, Refusal> {
     use std::io::{ErrorKind, Read};
     let refuse = |kind: FileProblem| {
         let source = Source {
@@ -82,7 +100,7 @@ pub fn bytes_of(path: &Path, name: &str) -> Result<Vec<u8>, Refusal> {
     let file = std::fs::File::open(path).map_err(|e| refuse(told(&e)))?;
     let mut bytes = Vec::new();
     // one byte past the limit is enough to refuse it
-    let limit = crate::problem::text::MOST_BYTES + 1;
+    let limit = most + 1;
     file.take(limit)
         .read_to_end(&mut bytes)
         .map_err(|e| refuse(told(&e)))?;
@@ -121,15 +139,9 @@ fn part<R: DeserializeOwned, T>(
 ) -> Result<T, Refusal> {
     let (source, problems) = open_text(name, text.as_bytes())?;
     let lower = |low: &mut Lower<'_>, root: &Map<R>| low.map(root, "").map(|raw| lower(low, raw));
-    let Outcome {
-        value,
-        source,
-        problems,
-    } = lowered(source, problems, lower);
-    match value {
-        Some(part) if problems.is_empty() => Ok(part),
-        _ => Err(Refusal::new(source, problems)),
-    }
+    lowered(source, problems, lower)
+        .whole()
+        .map(|(part, _)| part)
 }
 
 /// Bytes to text and places.
@@ -159,6 +171,16 @@ struct Outcome<T> {
     value: Option<T>,
     source: Source,
     problems: Problems,
+}
+
+impl<T> Outcome<T> {
+    /// The value, where nothing is wrong.
+    fn whole(self) -> Result<(T, Source), Refusal> {
+        match self.value {
+            Some(value) if self.problems.is_empty() => Ok((value, self.source)),
+            _ => Err(Refusal::new(self.source, self.problems)),
+        }
+    }
 }
 
 /// Text and places to typed values, by serde's reading of the same text.

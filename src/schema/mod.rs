@@ -26,6 +26,12 @@ pub fn build() -> Value {
     whole::<raw::File>("Build file of ampledger")
 }
 
+/// The schema of a fleet file.
+#[must_use]
+pub fn fleet() -> Value {
+    whole::<raw::Fleet>("Fleet file of ampledger")
+}
+
 /// The schema of a file of a catalog: the entries of a build file, each with its id, title, source and certainty.
 #[must_use]
 pub fn catalog() -> Value {

@@ -29,6 +29,22 @@ Examples:
   ampledger check builds/*.yaml --format csv -o builds.csv
   generate-build | ampledger check -";
 
+/// Of `fleet`.
+pub const FLEET: &str = "\
+Build files, kits and patterns are looked for beside the fleet file. A row that
+cannot be judged says why and hides no other. CSV leaves row by row.
+
+Exit codes:
+  0  every machine keeps up
+  1  one does not
+  2  a row could not be judged (all others are told), or the call is wrong
+
+Examples:
+  ampledger fleet fleet.yaml
+  ampledger fleet fleet.csv --kit none --kit night-work
+  ampledger fleet fleet.csv --no-remedy --format csv -o verdicts.csv
+  printf 'machine,build,count,kit\\nmower,mower.yaml,12,night-work\\n' | ampledger fleet -";
+
 /// Of `odds`.
 pub const ODDS: &str = "\
 Tolerances stand in the build, `55 W ± 8 %`; a figure without one does not vary.

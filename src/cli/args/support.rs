@@ -39,6 +39,8 @@ pub enum SchemaOf {
     Build,
     /// A file in a folder of catalogs
     Catalog,
+    /// A fleet file
+    Fleet,
 }
 
 /// `completions`.

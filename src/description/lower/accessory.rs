@@ -173,7 +173,7 @@ impl Lower<'_> {
     }
 
     /// A name, or a list of names.
-    fn names(&mut self, node: &List<Leaf>, at: &str, key: &str) -> Vec<Written<String>> {
+    pub(super) fn names(&mut self, node: &List<Leaf>, at: &str, key: &str) -> Vec<Written<String>> {
         let path = path::key(at, key);
         match node {
             Node::Absent => Vec::new(),

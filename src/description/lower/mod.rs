@@ -5,6 +5,7 @@ mod battery;
 mod charging;
 mod engine;
 mod fit;
+mod fleet;
 mod leaf;
 mod rest;
 

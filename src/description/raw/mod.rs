@@ -6,11 +6,13 @@
 mod accessory;
 mod battery;
 mod charging;
+mod fleet;
 pub(crate) mod node;
 
 pub(crate) use accessory::{Accessory, Kit};
 pub(crate) use battery::Battery;
 pub(crate) use charging::{Alternator, Charging, Reading, Rectifier, Regulator, Winding};
+pub(crate) use fleet::{Fleet, Machine};
 pub(crate) use node::{Keys, Leaf, List, Map, Named, Node};
 
 use crate::quantity::{Amps, Celsius, Fraction, Hours, Ohms, Rpm, Volts};
