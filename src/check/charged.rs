@@ -26,11 +26,10 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
     let states = by_state(build, &machine, &shift);
     let accessories = by_accessory(build, &machine, &shift);
     let spare = spare(build, &machine, &ruling);
-    let everywhere = spare
-        .as_ref()
-        .and(machine.edge(ruling.reserve.soc, Spread::Everywhere));
     let lowest = ruling.settles.map_or(shift.lowest, |(_, lowest)| lowest);
     let fails = fails(build, &machine, &ruling);
+    let everywhere = spare.as_ref().and_then(|_| everywhere(&machine, &ruling));
+    let sentence = sentence::sentence(&ruling, everywhere, shift.lowest, fails.as_deref());
     let seen = findings::Seen {
         build,
         machine: &machine,
@@ -55,12 +54,7 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
         air_c: build.air.value,
         system_v: Volts(2.0 * f64::from(machine.cells)),
         verdict: ruling.verdict,
-        sentence: sentence::sentence(
-            &ruling,
-            everywhere.map(|a| (-a).max(Amps::ZERO)),
-            shift.lowest,
-            fails.as_deref(),
-        ),
+        sentence,
         shifts_carried: ruling.shifts_carried,
         lacks_ah: ruling.lacks,
         lacks_a: ruling.lacks_current,
@@ -101,6 +95,12 @@ fn fails(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<String> {
     course
         .clause(build)
         .or_else(|| course.reserve_clause(build))
+}
+
+/// What may still be drawn at every running speed at once.
+fn everywhere(machine: &Machine, ruling: &Ruling) -> Option<Amps> {
+    let edge = machine.edge(ruling.reserve.soc, Spread::Everywhere)?;
+    Some((-edge).max(Amps::ZERO))
 }
 
 /// What may still be drawn at each running speed alone, for a build that keeps up.

@@ -3,7 +3,7 @@
 use super::answer::{StepRow, TraceRow};
 use crate::battery::Charge;
 use crate::build::{Build, State};
-use crate::ledger::{Machine, Stride};
+use crate::ledger::{Leg, Machine, Stride};
 use crate::quantity::{AmpHours, Amps, Fraction, Hours, Ohms, Volts};
 
 /// Longest time between two rows of a trace.
@@ -41,6 +41,21 @@ pub struct Passage {
     pub after: Charge,
     /// Means over its time.
     pub mean: Mean,
+}
+
+impl Passage {
+    /// Its first step, nothing summed yet.
+    fn begun(leg: &Leg, clock: Hours, stride: &Stride) -> Passage {
+        Passage {
+            state: leg.state,
+            wired: leg.wired,
+            begins: clock,
+            time: leg.time,
+            before: stride.before,
+            after: stride.after,
+            mean: Mean::default(),
+        }
+    }
 }
 
 /// Means over a time.
@@ -132,16 +147,7 @@ pub fn first_shift(build: &Build, machine: &Machine, start: Charge, traced: bool
         |index, clock, stride| {
             let leg = &machine.cycle[index];
             if legs.last().is_none_or(|(last, _)| *last != index) {
-                let passage = Passage {
-                    state: leg.state,
-                    wired: leg.wired,
-                    begins: clock,
-                    time: leg.time,
-                    before: stride.before,
-                    after: stride.after,
-                    mean: Mean::default(),
-                };
-                legs.push((index, passage));
+                legs.push((index, Passage::begun(leg, clock, stride)));
             }
             if let Some((_, passage)) = legs.last_mut() {
                 passage.after = stride.after;

@@ -9,7 +9,7 @@ use crate::ledger::Machine;
 use crate::load::LoadSum;
 use crate::quantity::format::{duration, fixed_unit, percent, temperature, text};
 use crate::quantity::{Amps, Fraction, Rpm, Volts};
-use crate::source::{Conduction, Phases, Rectifier, rectified};
+use crate::source::{Conduction, Phases, Rectifier, Winding, rectified};
 use serde::Serialize;
 use std::f64::consts::SQRT_2;
 
@@ -171,6 +171,16 @@ fn winding_lines(
         ),
         "textbook; L as measured, or found from the rating",
     ));
+    rectified_lines(name, constants, rectifier, (rpm, bus), lines);
+}
+
+fn rectified_lines(
+    name: &str,
+    constants: &Winding,
+    rectifier: &Rectifier,
+    (rpm, bus): (Rpm, Volts),
+    lines: &mut Vec<Line>,
+) {
     let (drops, drop) = match rectifier {
         Rectifier::HalfWave { drop } => (1, *drop),
         Rectifier::FullWave { drop } => (2, *drop),

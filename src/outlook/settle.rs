@@ -6,7 +6,7 @@
 //! root search, which gives the same answer in a dozen cycles.
 
 use crate::battery::Charge;
-use crate::ledger::Machine;
+use crate::ledger::{Machine, Passed};
 use crate::quantity::Fraction;
 use crate::root::bracketed;
 
@@ -133,16 +133,7 @@ impl Machine {
         reserve: Fraction,
         limit: Option<f64>,
     ) -> Option<(Charge, Fraction)> {
-        let at = |soc: f64| {
-            let passed = self.pass_around(
-                0,
-                Charge {
-                    soc: Fraction(soc),
-                    depletion: charge.depletion,
-                },
-            );
-            (passed.end.soc.0 - soc, passed)
-        };
+        let at = |soc: f64| self.gain(soc, charge);
         let (here, passed) = at(charge.soc.0);
         let (low, high) = if here >= 0.0 {
             if passed.lowest < reserve {
@@ -158,23 +149,7 @@ impl Machine {
             }
             ((near.0, near.1.0), (charge.soc.0, here))
         } else {
-            let touching = self.touching(charge, lowest, reserve)?;
-            let span = charge.soc.0 - touching;
-            let mut high = (charge.soc.0, here);
-            let probes = if self.has_constant_powers() {
-                &PROBES[..]
-            } else {
-                &PROBES[PROBES.len() - 1..]
-            };
-            let held = probes.iter().find_map(|share| {
-                let soc = touching + share * span;
-                let gain = at(soc).0;
-                if gain < 0.0 {
-                    high = (soc, gain);
-                }
-                (gain >= 0.0).then_some((soc, gain))
-            });
-            (held?, high)
+            self.bracket_below((charge, here), lowest, reserve)?
         };
         let soc = if high.1 >= 0.0 {
             high.0
@@ -197,6 +172,43 @@ impl Machine {
         ))
     }
 
+    /// What a cycle begun at a charge gains, and how it passed; the depletion is that of `like`.
+    fn gain(&self, soc: f64, like: Charge) -> (f64, Passed) {
+        let begun = Charge {
+            soc: Fraction(soc),
+            ..like
+        };
+        let passed = self.pass_around(0, begun);
+        (passed.end.soc.0 - soc, passed)
+    }
+
+    /// From a charge that falls by a cycle: a lower one from which a cycle gains, and the lowest found above it from
+    /// which it does not, each with its gain.
+    fn bracket_below(
+        &self,
+        (charge, here): (Charge, f64),
+        lowest: Fraction,
+        reserve: Fraction,
+    ) -> Option<((f64, f64), (f64, f64))> {
+        let touching = self.touching(charge, lowest, reserve)?;
+        let span = charge.soc.0 - touching;
+        let mut high = (charge.soc.0, here);
+        let probes = if self.has_constant_powers() {
+            &PROBES[..]
+        } else {
+            &PROBES[PROBES.len() - 1..]
+        };
+        let held = probes.iter().find_map(|share| {
+            let soc = touching + share * span;
+            let gain = self.gain(soc, charge).0;
+            if gain < 0.0 {
+                high = (soc, gain);
+            }
+            (gain >= 0.0).then_some((soc, gain))
+        });
+        Some((held?, high))
+    }
+
     /// The charge at the beginning of the cycle whose lowest charge is the reserve; none if that
     /// is not below the charge reached.
     fn touching(&self, charge: Charge, lowest: Fraction, reserve: Fraction) -> Option<f64> {
@@ -205,14 +217,7 @@ impl Machine {
             if soc >= charge.soc.0 || soc < 0.0 {
                 return None;
             }
-            let passed = self.pass_around(
-                0,
-                Charge {
-                    soc: Fraction(soc),
-                    depletion: charge.depletion,
-                },
-            );
-            let over = passed.lowest.0 - reserve.0;
+            let over = self.gain(soc, charge).1.lowest.0 - reserve.0;
             if over.abs() < 1e-10 {
                 break;
             }

@@ -37,6 +37,27 @@ macro_rules! pieces {
     ($($name:literal),*) => { concat!($(include_str!(concat!($name, ".yaml"))),*) };
 }
 
+/// A build with a battery and a starter: what charges it, what it feeds.
+macro_rules! with_battery {
+    ($charging:literal, $accessories:literal) => {
+        pieces![
+            "head",
+            "engine",
+            $charging,
+            "battery",
+            $accessories,
+            "shift"
+        ]
+    };
+}
+
+/// A build without a battery, started by hand; what it feeds stands beside the winding.
+macro_rules! by_hand {
+    ($charging:literal) => {
+        pieces!["head", "engine-by-hand", $charging, "shift-by-hand"]
+    };
+}
+
 impl Kind {
     /// Every kind, the simplest first.
     pub const ALL: [Kind; 10] = [
@@ -90,80 +111,18 @@ impl Kind {
     #[must_use]
     pub const fn text(self) -> &'static str {
         match self {
-            Kind::HalfWave => {
-                pieces![
-                    "head",
-                    "engine",
-                    "half-wave",
-                    "battery",
-                    "accessories-few",
-                    "shift"
-                ]
+            Kind::HalfWave => with_battery!("half-wave", "accessories-few"),
+            Kind::FullWave => with_battery!("full-wave", "accessories-few"),
+            Kind::SeriesRegulated => with_battery!("series-regulated", "accessories"),
+            Kind::ShuntRegulated => with_battery!("shunt-regulated", "accessories"),
+            Kind::Lighting => by_hand!("lighting"),
+            Kind::ChargingAndLighting => {
+                with_battery!("charging-and-lighting", "charging-and-lighting-accessories")
             }
-            Kind::FullWave => pieces![
-                "head",
-                "engine",
-                "full-wave",
-                "battery",
-                "accessories-few",
-                "shift"
-            ],
-            Kind::SeriesRegulated => {
-                pieces![
-                    "head",
-                    "engine",
-                    "series-regulated",
-                    "battery",
-                    "accessories",
-                    "shift"
-                ]
-            }
-            Kind::ShuntRegulated => {
-                pieces![
-                    "head",
-                    "engine",
-                    "shunt-regulated",
-                    "battery",
-                    "accessories",
-                    "shift"
-                ]
-            }
-            Kind::Lighting => pieces!["head", "engine-by-hand", "lighting", "shift-by-hand"],
-            Kind::ChargingAndLighting => pieces![
-                "head",
-                "engine",
-                "charging-and-lighting",
-                "battery",
-                "charging-and-lighting-accessories",
-                "shift"
-            ],
-            Kind::ClutchOnly => pieces!["head", "engine-by-hand", "clutch-only", "shift-by-hand"],
-            Kind::ThreePhase => {
-                pieces![
-                    "head",
-                    "engine",
-                    "three-phase",
-                    "battery",
-                    "accessories",
-                    "shift"
-                ]
-            }
-            Kind::Alternator => pieces![
-                "head",
-                "engine",
-                "alternator",
-                "battery",
-                "accessories",
-                "shift"
-            ],
-            Kind::Braking => pieces![
-                "head",
-                "engine",
-                "braking",
-                "battery",
-                "accessories",
-                "shift"
-            ],
+            Kind::ClutchOnly => by_hand!("clutch-only"),
+            Kind::ThreePhase => with_battery!("three-phase", "accessories"),
+            Kind::Alternator => with_battery!("alternator", "accessories"),
+            Kind::Braking => with_battery!("braking", "accessories"),
         }
     }
 }
