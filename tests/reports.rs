@@ -196,6 +196,17 @@ fn a_main_table_stands_alone_in_csv() {
     assert_eq!(csv::render(&report), "Machine,Draw (A)\na,-1.25\n");
 }
 
+/// Columns of the table by state, and the names of the same figures in JSON.
+const STATE_COLUMNS: [(&str, &str); 7] = [
+    ("Time (min)", "minutes"),
+    ("Can give (A)", "available_a"),
+    ("Draw (A)", "loads_a"),
+    ("Battery (A)", "battery_a"),
+    ("At worst (A)", "worst_battery_a"),
+    ("Bus (V)", "bus_v"),
+    ("Charge (Ah)", "ah"),
+];
+
 #[test]
 fn json_csv_and_page_hold_the_same_figures() {
     let answer = sample::falls_short("Orchard mower");
@@ -215,25 +226,7 @@ fn json_csv_and_page_hold_the_same_figures() {
     {
         let record = &written[header + 1 + index];
         assert_eq!(state["state"], record[0].as_str());
-        let columns = [
-            "Time (min)",
-            "Can give (A)",
-            "Draw (A)",
-            "Battery (A)",
-            "At worst (A)",
-            "Bus (V)",
-            "Charge (Ah)",
-        ];
-        let keys = [
-            "minutes",
-            "available_a",
-            "loads_a",
-            "battery_a",
-            "worst_battery_a",
-            "bus_v",
-            "ah",
-        ];
-        for (column, key) in columns.iter().zip(keys) {
+        for (column, key) in STATE_COLUMNS {
             let at = written[header]
                 .iter()
                 .position(|h| h == column)

@@ -89,40 +89,7 @@ pub fn falls_short(name: &str) -> Check {
         lowest_soc: Some(Fraction(0.5189)),
         reserve_soc: Some(Fraction(0.6)),
         reserve_from: Some("cold start".to_owned()),
-        states: vec![
-            state(
-                "crank",
-                0.0,
-                0.083_333,
-                [0.0, 151.2, -151.2, -151.2],
-                [10.1, 10.1],
-                -0.21,
-            ),
-            state(
-                "idle",
-                1800.0,
-                30.0,
-                [6.21, 11.43, -5.22, -14.9],
-                [12.43, 12.05],
-                -2.61,
-            ),
-            state(
-                "governed",
-                3400.0,
-                205.0,
-                [15.84, 16.62, -0.78, -6.31],
-                [13.12, 12.5],
-                -2.665,
-            ),
-            state(
-                "stopped",
-                0.0,
-                20.0,
-                [0.0, 10.91, -10.91, -10.91],
-                [12.21, 12.21],
-                -3.6367,
-            ),
-        ],
+        states: states(),
         steps: steps(),
         accessories: accessories(),
         circuits: Vec::new(),
@@ -135,6 +102,43 @@ pub fn falls_short(name: &str) -> Check {
         ],
         notes: vec!["Parts marked invented are for the example only.".to_owned()],
     }
+}
+
+fn states() -> Vec<StateRow> {
+    vec![
+        state(
+            "crank",
+            0.0,
+            0.083_333,
+            [0.0, 151.2, -151.2, -151.2],
+            [10.1, 10.1],
+            -0.21,
+        ),
+        state(
+            "idle",
+            1800.0,
+            30.0,
+            [6.21, 11.43, -5.22, -14.9],
+            [12.43, 12.05],
+            -2.61,
+        ),
+        state(
+            "governed",
+            3400.0,
+            205.0,
+            [15.84, 16.62, -0.78, -6.31],
+            [13.12, 12.5],
+            -2.665,
+        ),
+        state(
+            "stopped",
+            0.0,
+            20.0,
+            [0.0, 10.91, -10.91, -10.91],
+            [12.21, 12.21],
+            -3.6367,
+        ),
+    ]
 }
 
 fn steps() -> Vec<StepRow> {
