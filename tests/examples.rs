@@ -9,7 +9,12 @@ fn examples() -> Vec<PathBuf> {
         .expect("examples")
         .map(|entry| entry.expect("an entry").path())
         .filter(|path| path.extension().is_some_and(|e| e == "yaml"))
-        .filter(|path| std::fs::read_to_string(path).expect("text").lines().any(|l| l.starts_with("build:")))
+        .filter(|path| {
+            std::fs::read_to_string(path)
+                .expect("text")
+                .lines()
+                .any(|l| l.starts_with("build:"))
+        })
         .collect();
     all.sort();
     all
@@ -24,7 +29,10 @@ fn run(arguments: &[&str]) -> Output {
 }
 
 fn relative(path: &Path) -> String {
-    format!("examples/{}", path.file_name().expect("a name").to_string_lossy())
+    format!(
+        "examples/{}",
+        path.file_name().expect("a name").to_string_lossy()
+    )
 }
 
 #[test]
@@ -37,12 +45,19 @@ fn answers_are_the_snapshots() {
     for path in examples() {
         let output = run(&["check", &relative(&path)]);
         let printed = String::from_utf8(output.stdout).expect("UTF-8");
-        let stored = folder.join(path.file_name().expect("a name")).with_extension("txt");
+        let stored = folder
+            .join(path.file_name().expect("a name"))
+            .with_extension("txt");
         if renew {
             std::fs::write(&stored, &printed).expect("written");
         }
         let want = std::fs::read_to_string(&stored).unwrap_or_default();
-        assert_eq!(printed, want, "{}: renew with SNAPSHOTS=overwrite if meant", path.display());
+        assert_eq!(
+            printed,
+            want,
+            "{}: renew with SNAPSHOTS=overwrite if meant",
+            path.display()
+        );
     }
 }
 
@@ -53,7 +68,12 @@ fn every_verdict_occurs_and_sets_the_exit_code() {
         let output = run(&["check", &relative(&path), "--format", "json"]);
         let answer: serde_json::Value = serde_json::from_slice(&output.stdout).expect("JSON");
         let verdict = answer["verdict"].as_str().expect("a verdict").to_owned();
-        assert_eq!(output.status.code(), Some(i32::from(verdict != "keeps up")), "{}", path.display());
+        assert_eq!(
+            output.status.code(),
+            Some(i32::from(verdict != "keeps up")),
+            "{}",
+            path.display()
+        );
         assert_eq!(answer["format"], 1);
         seen.push(verdict);
     }
@@ -68,14 +88,24 @@ fn every_kind_of_output_is_written_and_tables_keep_to_80_columns() {
         let file = relative(&path);
         for format in ["csv", "markdown", "html"] {
             let output = run(&["check", &file, "--format", format]);
-            assert!(output.stderr.is_empty() && output.stdout.len() > 400, "{file} as {format}");
+            assert!(
+                output.stderr.is_empty() && output.stdout.len() > 400,
+                "{file} as {format}"
+            );
         }
         for command in ["check", "curve", "wire"] {
             let output = run(&[command, &file]);
             let text = String::from_utf8(output.stdout).expect("UTF-8");
-            let widest = text.lines().map(|line| line.chars().count()).max().unwrap_or(0);
+            let widest = text
+                .lines()
+                .map(|line| line.chars().count())
+                .max()
+                .unwrap_or(0);
             assert!(widest <= 80, "{command} {file}: {widest} columns");
-            assert!(!text.contains('\u{1b}'), "{command} {file}: colour in a pipe");
+            assert!(
+                !text.contains('\u{1b}'),
+                "{command} {file}: colour in a pipe"
+            );
         }
     }
 }

@@ -11,8 +11,15 @@ fn blocks(text: &str) -> Vec<(Vec<String>, Vec<String>, bool)> {
         if line != "```console" {
             continue;
         }
-        let command = lines.next().and_then(|l| l.strip_prefix("$ ampledger ")).expect("a command");
-        let mut shown: Vec<String> = lines.by_ref().take_while(|l| *l != "```").map(str::to_owned).collect();
+        let command = lines
+            .next()
+            .and_then(|l| l.strip_prefix("$ ampledger "))
+            .expect("a command");
+        let mut shown: Vec<String> = lines
+            .by_ref()
+            .take_while(|l| *l != "```")
+            .map(str::to_owned)
+            .collect();
         let whole = shown.last().is_none_or(|last| last != "[...]");
         if !whole {
             shown.pop();
@@ -55,7 +62,11 @@ fn every_block_prints_what_it_shows() {
         let printed = String::from_utf8(output.stdout).expect("UTF-8");
         let printed: Vec<&str> = printed.lines().collect();
         let compared = if whole { printed.len() } else { shown.len() };
-        assert_eq!(printed.get(..compared).unwrap_or(&printed), shown, "{arguments:?}");
+        assert_eq!(
+            printed.get(..compared).unwrap_or(&printed),
+            shown,
+            "{arguments:?}"
+        );
     }
 }
 

@@ -1,6 +1,7 @@
 //! Tables as text: number columns keep their width, words wrap, and a table that is too wide for
 //! the page is cut into tables one above the other, each with the names of its rows.
 
+use super::flow::{TIE, flowing};
 use super::table::{Align, Cell, Column, ColumnKind, Row, Table, Tone};
 use super::text::{Style, clean};
 use crate::chart::terminal;
@@ -340,13 +341,18 @@ pub(super) fn wrap(text: &str, width: usize) -> Vec<String> {
         width,
         ..Style::default()
     };
-    draw(
+    let tied = flowing(&words);
+    let lines = draw(
         &[Align::Left],
         &[width],
         None,
-        vec![vec![(words, Tone::Plain)]],
+        vec![vec![(tied, Tone::Plain)]],
         &style,
-    )
+    );
+    lines
+        .into_iter()
+        .map(|line| line.replace(TIE, " "))
+        .collect()
 }
 
 /// Hands a table with settled widths to the painter.

@@ -2,6 +2,7 @@
 
 pub mod style;
 
+use super::flow::flowing;
 use super::model::{Block, Fact, Item, Report, Verdict};
 use super::table::{Align, Cell, Column, ColumnKind, Row, Table, Tone};
 use super::text::clean;
@@ -87,30 +88,9 @@ fn block(block: &Block, number: usize) -> Markup {
     }
 }
 
-/// Units that stay on the line of their number.
-const UNITS: [&str; 19] = [
-    "%", "A", "mA", "Ah", "V", "mV", "W", "Wh", "Ω", "h", "min", "s", "rpm", "°C", "K", "m", "mm",
-    "mm²", "points",
-];
-
 /// Running text: a number and its unit are not parted at a line's end.
 fn flow(text: &str) -> String {
-    let text = clean(text, false);
-    let mut flowing = String::with_capacity(text.len());
-    let mut words = text.split(' ').peekable();
-    while let Some(word) = words.next() {
-        flowing.push_str(word);
-        if let Some(next) = words.peek() {
-            let unit = next.trim_end_matches([',', ';', '.', ':', ')']);
-            let number = word.ends_with(|c: char| c.is_ascii_digit());
-            flowing.push(if number && UNITS.contains(&unit) {
-                '\u{a0}'
-            } else {
-                ' '
-            });
-        }
-    }
-    flowing
+    flowing(&clean(text, false))
 }
 
 fn heading(level: u8, text: &str) -> Markup {
