@@ -225,7 +225,7 @@ pub struct CurveArgs {
 
 /// `wire`.
 #[derive(Args, Debug)]
-#[command(after_help = "Example:\n  ampledger wire examples/dealer-mower-quote.yaml --gauge awg")]
+#[command(after_help = "Examples:\n  ampledger wire examples/dealer-mower-quote.yaml --gauge awg")]
 pub struct WireArgs {
     /// Build file; `-` is standard input
     #[arg(value_name = "BUILD")]
@@ -249,7 +249,7 @@ pub enum GaugeArg {
 
 /// `identify`.
 #[derive(Args, Debug)]
-#[command(after_help = "Example:\n  ampledger identify examples/bench/burnt-winding.csv")]
+#[command(after_help = "Examples:\n  ampledger identify examples/bench/burnt-winding.csv")]
 pub struct IdentifyArgs {
     /// Readings: YAML as a `charging` entry, or CSV; `-` is YAML on standard input
     #[arg(value_name = "READINGS")]
@@ -259,7 +259,7 @@ pub struct IdentifyArgs {
 /// `sheet`.
 #[derive(Args, Debug)]
 #[command(
-    after_help = "Example:\n  ampledger sheet examples/dealer-mower-quote.yaml --for 'the orchard' -o quote.html"
+    after_help = "Examples:\n  ampledger sheet examples/dealer-mower-quote.yaml --for 'the orchard' -o quote.html"
 )]
 pub struct SheetArgs {
     /// Build file; `-` is standard input
