@@ -187,15 +187,17 @@ pub fn rundown(machine: &Machine, start: Charge, reserve: Fraction) -> Option<Ru
             found.hours_to_reserve =
                 Some(clock + share(charge.soc.0, stride.after.soc.0, reserve.0));
         }
-        if stride.second.bus < end {
-            found.hours_to_empty =
-                Some(clock + share(stride.first.bus.0, stride.second.bus.0, end.0));
-            break;
-        }
         if stride.first.battery >= crate::quantity::Amps::ZERO {
             break;
         }
-        found.taken_ah -= 0.5 * (stride.first.battery + stride.second.battery) * step;
+        let drawn = -0.5 * (stride.first.battery + stride.second.battery);
+        if stride.second.bus < end {
+            let last = share(stride.first.bus.0, stride.second.bus.0, end.0);
+            found.hours_to_empty = Some(clock + last);
+            found.taken_ah += drawn * last;
+            break;
+        }
+        found.taken_ah += drawn * step;
         charge = stride.after;
         clock += step;
     }
