@@ -207,8 +207,23 @@ impl Feed {
                 (amps[c] - amps[a]) / (2.0 * self.step)
             }
         };
+        // Fritsch and Carlson 1980: no steeper than three times either neighbour's chord, or the cubic
+        // swings past the points, below zero where the current ends.
+        let chord = |k: usize| (amps[k + 1] - amps[k]) / self.step;
+        let limit = |k: usize| {
+            let left = chord(k.saturating_sub(1));
+            let right = chord(k.min(count - 2));
+            if left * right <= 0.0 {
+                0.0
+            } else {
+                3.0 * left.abs().min(right.abs())
+            }
+        };
         self.points = (0..count)
-            .map(|k| (amps[k], if count < 3 { 0.0 } else { slope(k) }))
+            .map(|k| match count {
+                ..3 => (amps[k], 0.0),
+                _ => (amps[k], slope(k).min(limit(k)).max(-limit(k))),
+            })
             .collect();
     }
 
