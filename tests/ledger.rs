@@ -290,7 +290,6 @@ fn a_shift_of_cycling_loads_equals_full_enumeration() {
             (balance - into).abs() < 1e-3 * drawn,
             "{balance} for {into} Ah of {drawn} from {start}"
         );
-        // And it is no mere average: the current at the mean load is another.
         let end = shift
             .legs
             .iter()
@@ -329,7 +328,6 @@ fn more_load_never_raises_the_settled_charge() {
                     power: power * factor,
                     at,
                 },
-                other => other,
             };
             let after = settled(&more).unwrap_or(Fraction::ZERO);
             assert!(
