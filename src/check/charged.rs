@@ -1,10 +1,10 @@
 //! The check of a build with a battery.
 
-use super::answer::{ByState, Check, Verdict};
+use super::answer::{ByState, Check, TraceRow, Verdict};
 use super::ruling::{Ruling, rule_on};
 use super::{
-    Checked, FORMAT, SolveError, Wanted, beyond, by_accessory, by_state, cautions, course,
-    findings, first_shift, history, rundown, sentence, storage,
+    Checked, FORMAT, FirstShift, SolveError, Wanted, beyond, by_accessory, by_state, cautions,
+    course, findings, first_shift, history, rundown, sentence, storage,
 };
 use crate::battery::Charge;
 use crate::build::{Build, State};
@@ -38,16 +38,7 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
         states: &states,
         accessories: &accessories,
     };
-    let mut trace = shift.trace.clone();
-    if let Some(last) = shift.legs.last().filter(|_| wanted.trace) {
-        trace.extend(history::history(
-            build,
-            &machine,
-            last.after,
-            last.begins + last.time,
-            wanted.shifts,
-        ));
-    }
+    let trace = trace(build, &machine, &shift, wanted);
     let check = Check {
         format: FORMAT,
         build: build.name.clone(),
@@ -79,6 +70,22 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
         notes: build.notes.clone(),
     };
     Ok(Checked { check, trace })
+}
+
+/// The trace of the first shift and of those after it, where one is wanted.
+fn trace(build: &Build, machine: &Machine, shift: &FirstShift, wanted: Wanted) -> Vec<TraceRow> {
+    let mut trace = shift.trace.clone();
+    if let Some(last) = shift.legs.last().filter(|_| wanted.trace) {
+        let ends = last.begins + last.time;
+        trace.extend(history::history(
+            build,
+            machine,
+            last.after,
+            ends,
+            wanted.shifts,
+        ));
+    }
+    trace
 }
 
 /// What fails first when a build that does not keep up is worked all the same.

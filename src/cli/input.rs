@@ -124,6 +124,11 @@ fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Descripti
     if file != "-" {
         return Ok(read_file(Path::new(file), assignments)?);
     }
+    Ok(read_set("standard input", &standard_input()?, assignments)?)
+}
+
+/// The bytes of standard input, no more than tell that they are too many.
+fn standard_input() -> anyhow::Result<Vec<u8>> {
     let mut bytes = Vec::new();
     let most = ampledger::problem::text::MOST_BYTES + 1;
     std::io::stdin()
@@ -131,7 +136,7 @@ fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Descripti
         .take(most)
         .read_to_end(&mut bytes)
         .context("standard input cannot be read")?;
-    Ok(read_set("standard input", &bytes, assignments)?)
+    Ok(bytes)
 }
 
 /// A file's name in messages and its text; `-` is standard input.
@@ -140,14 +145,7 @@ fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Descripti
 /// [`Refusal`]: it is missing, too large, not UTF-8.
 pub fn text(file: &str) -> anyhow::Result<(String, String)> {
     let (name, bytes) = if file == "-" {
-        let mut bytes = Vec::new();
-        let most = ampledger::problem::text::MOST_BYTES + 1;
-        std::io::stdin()
-            .lock()
-            .take(most)
-            .read_to_end(&mut bytes)
-            .context("standard input cannot be read")?;
-        ("standard input".to_owned(), bytes)
+        ("standard input".to_owned(), standard_input()?)
     } else {
         (file.to_owned(), bytes_of(Path::new(file), file)?)
     };

@@ -79,13 +79,16 @@ pub fn run(args: &SheetArgs, common: &Common) -> anyhow::Result<u8> {
         };
         view::sheet(&sheet, &options)
     };
-    let format = if common.format == Format::Table {
-        Format::Html
-    } else {
-        common.format
-    };
-    output::write_as(common, format, report, &answers)?;
+    output::write_as(common, format(common), report, &answers)?;
     Ok(code(shown.check.verdict))
+}
+
+/// A page where no other format is asked for.
+fn format(common: &Common) -> Format {
+    match common.format {
+        Format::Table => Format::Html,
+        other => other,
+    }
 }
 
 /// What is quoted: the accessories with a price that a kit adds, or all with a price without one.

@@ -159,34 +159,14 @@ fn row(header: &Header, record: &StringRecord, at: &str) -> Entry {
     if field("build").is_empty() {
         wrong("no `build`".to_owned());
     }
-    let count = match field("count") {
-        "" => 1,
-        text => match text.parse::<u32>() {
-            Ok(count) if (1..=100_000).contains(&count) => count,
-            _ => {
-                wrong(format!(
-                    "`count` is `{text}`, a whole number from 1 to 100000 is needed"
-                ));
-                0
-            }
-        },
-    };
-    let air = match field("air") {
-        "" => None,
-        text => match parse::parse::<Celsius>(text).map(|m| m.value) {
-            Ok(air) => match bounds::AIR.check(air) {
-                Ok(()) => Some(air),
-                Err(problem) => {
-                    wrong(format!("`air` is `{text}`: {problem}"));
-                    None
-                }
-            },
-            Err(problem) => {
-                wrong(format!("`air` is `{text}`: {problem}"));
-                None
-            }
-        },
-    };
+    let count = count(field("count")).unwrap_or_else(|why| {
+        wrong(why);
+        0
+    });
+    let air = air(field("air")).unwrap_or_else(|why| {
+        wrong(why);
+        None
+    });
     let set = field("set")
         .split(';')
         .filter(|text| !text.trim().is_empty());
@@ -209,6 +189,29 @@ fn row(header: &Header, record: &StringRecord, at: &str) -> Entry {
         set: set.into(),
         fault: fault.map(Arc::from),
     }
+}
+
+/// How many machines a row is for: one where it does not say.
+fn count(text: &str) -> Result<u32, String> {
+    match text.parse::<u32>() {
+        _ if text.is_empty() => Ok(1),
+        Ok(count) if (1..=100_000).contains(&count) => Ok(count),
+        _ => Err(format!(
+            "`count` is `{text}`, a whole number from 1 to 100000 is needed"
+        )),
+    }
+}
+
+/// The air temperature of a row, where it says one.
+fn air(text: &str) -> Result<Option<Celsius>, String> {
+    if text.is_empty() {
+        return Ok(None);
+    }
+    let told = |problem: &dyn std::fmt::Display| format!("`air` is `{text}`: {problem}");
+    let air = parse::parse::<Celsius>(text).map_err(|problem| told(&problem))?;
+    let checked = bounds::AIR.check(air.value);
+    checked.map_err(|problem| told(&problem))?;
+    Ok(Some(air.value))
 }
 
 /// A row that is no CSV.

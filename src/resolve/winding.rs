@@ -6,10 +6,12 @@ use super::context::{Context, Layers, PRACTICE, by_rule, of_system};
 use super::readings::{Bench, bench};
 use crate::build::{Figure, Origin, WindingSource};
 use crate::description::{ChargingText, RatedText, ReadingText, WindingText, Written};
-use crate::quantity::{Amps, Celsius, Fraction, Henries, Ohms, Rpm, Tolerance, Volts, format};
+use crate::quantity::{
+    Amps, Celsius, Fraction, Henries, Ohms, Rpm, Tolerance, Volts, VoltsPerRpm, format,
+};
 use crate::source::{
-    Constants, ConstantsError, Known, Magnets, Phases, Rating, Rectifier, Working, rectified_dc,
-    typical_open_circuit,
+    Constants, ConstantsError, Known, Magnets, Phases, Rating, Rectifier, Winding, Working,
+    rectified_dc, typical_open_circuit,
 };
 
 /// A winding's temperature at work. Common practice, no source (80 to 120 °C).
@@ -47,29 +49,21 @@ pub(super) fn winding(
     let phases = phases(context, layers, place);
     let working = working(context, layers, place);
     let magnets = magnets(context, layers, place, working.value);
-    let scale = layers.figure(&path("scale"), |t| key(t, |w| w.scale.as_ref()));
-    let scale = scale.unwrap_or_else(|| by_rule(Fraction::ONE, path("scale")));
+    let scale = scale(layers, path("scale"));
     let mut volts = layers.figure(&path("open_circuit"), |t| {
         key(t, |w| w.open_circuit.as_ref())
     });
     let mut ohms = layers.figure(&path("resistance"), |t| key(t, |w| w.resistance.as_ref()));
-    let mut known = Known {
-        open_circuit: volts.as_ref().map(|f| f.value.0 / f.value.1),
-        resistance: ohms.as_ref().map(|f| f.value),
-        inductance: None,
-        rated: None,
-        poles,
-        phases,
-        rectifier,
-        working: Working {
-            winding: working.value,
-            magnets,
-        },
+    let temperatures = Working {
+        winding: working.value,
+        magnets,
     };
+    let measured = (volts.as_ref().map(per_rpm), ohms.as_ref().map(|f| f.value));
+    let mut known = stated(measured, (poles, phases), rectifier, temperatures);
     let stated_at = volts.as_ref().map(|f| f.value.1);
     let mut way = way(context, layers, place, (&known, stated_at))?;
     if let Some(bench) = way.bench.take() {
-        known.open_circuit = Some(bench.open_circuit.value.0 / bench.open_circuit.value.1);
+        known.open_circuit = Some(per_rpm(&bench.open_circuit));
         known.resistance = Some(bench.resistance.value);
         way.inductance = Some(bench.inductance);
         volts = Some(bench.open_circuit);
@@ -78,11 +72,7 @@ pub(super) fn winding(
     known.inductance = way.inductance.as_ref().map(|f| f.value);
     known.rated = way.rating;
     let complete = told(context, &at, known.complete())?;
-    let constants = told(
-        context,
-        &at,
-        complete.winding.scaled(scale.value).map_err(Into::into),
-    )?;
+    let constants = told(context, &at, scaled(&complete.winding, scale.value))?;
     if way.inductance.is_some() {
         tell_rating(context, place, &complete, rectifier, way.rating);
     }
@@ -103,6 +93,39 @@ pub(super) fn winding(
         rectifier,
         constants,
     })
+}
+
+fn scale(layers: &Layers<ChargingText>, path: String) -> Figure<Fraction> {
+    let found = layers.figure(&path, |t| key(t, |w| w.scale.as_ref()));
+    found.unwrap_or_else(|| by_rule(Fraction::ONE, path))
+}
+
+/// What is stated or measured of a winding, its inductance and its rating left to be added.
+fn stated(
+    (open_circuit, resistance): (Option<VoltsPerRpm>, Option<Ohms>),
+    (poles, phases): (u32, Phases),
+    rectifier: Option<Rectifier>,
+    working: Working,
+) -> Known {
+    Known {
+        open_circuit,
+        resistance,
+        inductance: None,
+        rated: None,
+        poles,
+        phases,
+        rectifier,
+        working,
+    }
+}
+
+fn scaled(winding: &Winding, scale: Fraction) -> Result<Winding, ConstantsError> {
+    winding.scaled(scale).map_err(Into::into)
+}
+
+/// Volts at a speed as volts for each rpm.
+fn per_rpm(stated: &Figure<(Volts, Rpm)>) -> VoltsPerRpm {
+    stated.value.0 / stated.value.1
 }
 
 fn poles(context: &mut Context, layers: &Layers<ChargingText>, at: &str) -> Option<u32> {
