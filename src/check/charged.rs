@@ -1,6 +1,6 @@
 //! The check of a build with a battery.
 
-use super::answer::{ByState, Check, TraceRow, Verdict};
+use super::answer::{ByState, Check, StateRow, TraceRow, Verdict};
 use super::ruling::{Ruling, rule_on};
 use super::{
     Checked, FORMAT, FirstShift, SolveError, Wanted, beyond, by_accessory, by_state, cautions,
@@ -25,7 +25,7 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
     }
     let states = by_state(build, &machine, &shift);
     let accessories = by_accessory(build, &machine, &shift);
-    let spare = spare(build, &machine, &ruling);
+    let spare = spare(build, &machine, &ruling, &states);
     let lowest = ruling.settles.map_or(shift.lowest, |(_, lowest)| lowest);
     let fails = fails(build, &machine, &ruling);
     let everywhere = spare.as_ref().and_then(|_| everywhere(&machine, &ruling));
@@ -110,8 +110,14 @@ fn everywhere(machine: &Machine, ruling: &Ruling) -> Option<Amps> {
     Some((-edge).max(Amps::ZERO))
 }
 
-/// What may still be drawn at each running speed alone, for a build that keeps up.
-fn spare(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<ByState<Amps>> {
+/// What may still be drawn at each running speed alone, for a build that keeps up; no more than
+/// its sources can give there, whatever the battery could add for a while.
+fn spare(
+    build: &Build,
+    machine: &Machine,
+    ruling: &Ruling,
+    states: &[StateRow],
+) -> Option<ByState<Amps>> {
     if ruling.verdict != Verdict::KeepsUp {
         return None;
     }
@@ -121,10 +127,12 @@ fn spare(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<ByState<Am
         .filter(|w| w.runs && matches!(w.state, State::Running(_)));
     let amps = running.filter_map(|w| {
         let edge = machine.edge(ruling.reserve.soc, Spread::In(w.state))?;
-        Some((
-            build.state_name(w.state).to_owned(),
-            (-edge).max(Amps::ZERO),
-        ))
+        let name = build.state_name(w.state).to_owned();
+        let most = states
+            .iter()
+            .find(|s| s.state == name)
+            .map_or(Amps::ZERO, |s| s.available_a);
+        Some((name, (-edge).min(most).max(Amps::ZERO)))
     });
     Some(ByState(amps.collect()))
 }

@@ -146,8 +146,7 @@ fn facts(answer: &Check) -> Vec<(&'static str, Cell)> {
 }
 
 /// What the spare amps mean.
-const SPARE: &str =
-    "What more could be drawn at that speed alone, shift after shift; part of it may come from the battery.";
+const SPARE: &str = "What more could be drawn at that speed alone, shift after shift; no more than its sources can give there.";
 
 /// Changes, assumed values, findings, notes and cautions.
 pub(super) fn closing(report: Report, answer: &Check) -> Report {
