@@ -1,0 +1,17 @@
+//! Any text as a bench table; a table that reads is solved.
+#![no_main]
+
+use ampledger::identify::{identify, read_csv};
+use libfuzzer_sys::fuzz_target;
+
+fuzz_target!(|text: &str| {
+    let Ok(readings) = read_csv("fuzz.csv", text) else {
+        return;
+    };
+    if let Ok(found) = identify(&readings) {
+        let text = serde_yaml::to_string(&found).expect("an answer can be written");
+        for none in [".nan", ".inf"] {
+            assert!(!text.contains(none), "{text}");
+        }
+    }
+});
