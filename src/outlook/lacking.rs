@@ -75,9 +75,10 @@ impl Machine {
     }
 
     /// A current that keeps up from a full battery, raised where the first shifts from a lower
-    /// charge need more; none where no current is enough.
+    /// charge need more; none where no current is enough. (A build that holds itself up at a low
+    /// charge alone, because loads drop out there, has its edge at nought and breaks the reserve.)
     fn enough_from(&self, start: Charge, reserve: Fraction, edge: Amps) -> Option<Amps> {
-        if start.soc >= Fraction::ONE {
+        if start.soc >= Fraction::ONE && edge > Amps::ZERO {
             return Some(edge);
         }
         let mut machine = self.clone();

@@ -13,13 +13,26 @@ pub fn examples() -> Vec<String> {
     let mut paths: Vec<_> = entries.map(|e| e.expect("an example").path()).collect();
     paths.retain(|p| p.extension().is_some_and(|e| e == "yaml"));
     paths.sort();
-    let texts = paths.iter().map(|p| std::fs::read_to_string(p).expect("its text"));
+    let texts = paths
+        .iter()
+        .map(|p| std::fs::read_to_string(p).expect("its text"));
     texts.collect()
 }
 
 /// What a number may become: as written, times a factor, or another text.
-const FACTORS: [f64; 12] = [0.0, 1e-9, 0.001, 0.1, 0.5, 0.9, 1.1, 2.0, 10.0, 1000.0, 1e9, -1.0];
-const TEXTS: [&str; 8] = ["1e308", "1e-308", ".nan", ".inf", "-0", "99999999999999999999", "", "1e400"];
+const FACTORS: [f64; 12] = [
+    0.0, 1e-9, 0.001, 0.1, 0.5, 0.9, 1.1, 2.0, 10.0, 1000.0, 1e9, -1.0,
+];
+const TEXTS: [&str; 8] = [
+    "1e308",
+    "1e-308",
+    ".nan",
+    ".inf",
+    "-0",
+    "99999999999999999999",
+    "",
+    "1e400",
+];
 
 /// A text with edits, four bytes each: which, where (two bytes), how.
 pub fn edited(text: &str, recipe: &[u8]) -> String {
