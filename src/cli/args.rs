@@ -93,12 +93,16 @@ pub enum Command {
     #[command(after_help = examples::CHECK)]
     Check(CheckArgs),
     /// Winding output against rpm: amps, heat, cut-in and break-even speeds
+    #[command(after_help = examples::CURVE)]
     Curve(CurveArgs),
     /// Wire, fuse and relay for each accessory with a `run:`
+    #[command(after_help = examples::WIRE)]
     Wire(WireArgs),
     /// All of it as one page to hand over (HTML unless another format is asked for)
+    #[command(after_help = examples::SHEET)]
     Sheet(SheetArgs),
     /// Winding constants from bench readings (YAML, or CSV by its ending)
+    #[command(after_help = examples::IDENTIFY)]
     Identify(IdentifyArgs),
     /// Which machine of a fleet takes which kit, and what must change on the others?
     #[command(after_help = examples::FLEET)]
@@ -202,9 +206,6 @@ pub struct OddsArgs {
 
 /// `curve`.
 #[derive(Args, Debug)]
-#[command(
-    after_help = "Examples:\n  ampledger curve examples/rebuilder-stator.yaml\n  ampledger curve examples/rebuilder-stator.yaml --rpm 1800,2400,3600 --volts 12.6,14.4"
-)]
 pub struct CurveArgs {
     /// Build file; `-` is standard input
     #[arg(value_name = "BUILD")]
@@ -225,7 +226,6 @@ pub struct CurveArgs {
 
 /// `wire`.
 #[derive(Args, Debug)]
-#[command(after_help = "Examples:\n  ampledger wire examples/dealer-mower-quote.yaml --gauge awg")]
 pub struct WireArgs {
     /// Build file; `-` is standard input
     #[arg(value_name = "BUILD")]
@@ -249,7 +249,6 @@ pub enum GaugeArg {
 
 /// `identify`.
 #[derive(Args, Debug)]
-#[command(after_help = "Examples:\n  ampledger identify examples/bench/burnt-winding.csv")]
 pub struct IdentifyArgs {
     /// Readings: YAML as a `charging` entry, or CSV; `-` is YAML on standard input
     #[arg(value_name = "READINGS")]
@@ -258,9 +257,6 @@ pub struct IdentifyArgs {
 
 /// `sheet`.
 #[derive(Args, Debug)]
-#[command(
-    after_help = "Examples:\n  ampledger sheet examples/dealer-mower-quote.yaml --for 'the orchard' -o quote.html"
-)]
 pub struct SheetArgs {
     /// Build file; `-` is standard input
     #[arg(value_name = "BUILD")]

@@ -157,16 +157,21 @@ fn several(files: &[String], args: &CheckArgs, common: &Common) -> anyhow::Resul
         bail!("--trace, --why and --with take one build at a time");
     }
     let catalogs = input::catalogs(common)?;
-    let mut all = Vec::new();
+    let wanted = Wanted {
+        trace: common.format == Format::Html,
+        shifts: days(common),
+    };
+    let one = |file: &String| answer(&input::build(file, &args.build, &catalogs)?, wanted);
+    let (mut all, mut wrong) = (Vec::new(), Vec::new());
     for file in files {
-        let opened = input::build(file, &args.build, &catalogs)?;
-        all.push(answer(
-            &opened,
-            Wanted {
-                trace: common.format == Format::Html,
-                shifts: days(common),
-            },
-        )?);
+        match one(file) {
+            Ok(checked) => all.push(checked),
+            Err(problem) => wrong.push(problem),
+        }
+    }
+    // one file's problems hide no other's
+    if !wrong.is_empty() {
+        return Err(super::Several(wrong).into());
     }
     let checks: Vec<&Check> = all.iter().map(|one| &one.check).collect();
     let report = || {

@@ -37,6 +37,16 @@ pub const WRONG: u8 = 2;
 /// Anything that leaves no answer: [`Refusal`] of an input file, a file that cannot be written.
 pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
     let common = &arguments.common;
+    let beside = match &arguments.command {
+        Command::Check(check) => check.trace.as_deref(),
+        Command::Curve(curve) => curve.svg.as_deref(),
+        Command::Odds(odds) => odds.worst.as_deref(),
+        _ => None,
+    };
+    // what may not be written is told before anything is worked out, and before anything is written
+    for path in common.output.as_deref().into_iter().chain(beside) {
+        output::ready(path, common.force)?;
+    }
     match &arguments.command {
         Command::Check(check) => check::run(check, common),
         Command::Curve(args) => curve::run(args, common),
@@ -59,11 +69,33 @@ pub fn told(problem: &anyhow::Error, arguments: &Arguments) -> u8 {
         return KEEPS_UP;
     }
     let colour = arguments.common.colours(&std::io::stderr());
-    match refusal(problem) {
-        Some(refusal) => output::complain(refusal.render(colour).trim_end()),
-        None => output::complain(&format!("error: {problem:#}")),
+    for problem in each(problem) {
+        match refusal(problem) {
+            Some(refusal) => output::complain(refusal.render(colour).trim_end()),
+            None => output::complain(&format!("error: {problem:#}")),
+        }
     }
     WRONG
+}
+
+/// What is wrong with each of several inputs.
+#[derive(Debug)]
+pub struct Several(pub Vec<anyhow::Error>);
+
+impl std::fmt::Display for Several {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        write!(f, "{} inputs are wrong", self.0.len())
+    }
+}
+
+impl std::error::Error for Several {}
+
+/// A problem, or each of several.
+fn each(problem: &anyhow::Error) -> Vec<&anyhow::Error> {
+    match problem.downcast_ref() {
+        Some(Several(problems)) => problems.iter().collect(),
+        None => vec![problem],
+    }
 }
 
 /// The refusal of an input that a problem is or carries.

@@ -71,48 +71,94 @@ pub fn put(common: &Common, text: &str) -> anyhow::Result<()> {
     }
 }
 
-/// Writes a file beside its target and renames it: the old file is there until the new one is whole.
+/// Writes a file beside its target and renames it: the old file is there until the new one is whole. What is no file on a
+/// disk, such as a device, is written to as it stands.
 ///
 /// # Errors
 /// The file exists and is not to be replaced, or cannot be written.
 pub fn whole(path: &Path, bytes: &[u8], force: bool) -> anyhow::Result<()> {
+    ready(path, force)?;
+    let failed = || format!("`{}` cannot be written", path.display());
+    if is_device(path) {
+        return std::fs::write(path, bytes).with_context(failed);
+    }
+    // a link stays, and what it leads to is replaced
+    let target = path.canonicalize().unwrap_or_else(|_| path.to_path_buf());
+    let folder = match target.parent() {
+        Some(folder) if !folder.as_os_str().is_empty() => folder,
+        _ => Path::new("."),
+    };
+    let place = || -> std::io::Result<()> {
+        let mut beside = new_file().tempfile_in(folder)?;
+        beside.write_all(bytes)?;
+        if let Ok(old) = std::fs::metadata(&target) {
+            beside.as_file().set_permissions(old.permissions())?;
+        }
+        beside.as_file().sync_all()?;
+        if force {
+            beside.persist(&target)?;
+        } else {
+            beside.persist_noclobber(&target)?;
+        }
+        Ok(())
+    };
+    place().map_err(plain).with_context(failed)
+}
+
+/// Whether a file may be written, told before anything is worked out for it.
+///
+/// # Errors
+/// A folder stands there; the file exists and is not to be replaced; its folder is not there.
+pub fn ready(path: &Path, force: bool) -> anyhow::Result<()> {
     let shown = path.display();
     if path.is_dir() {
         anyhow::bail!("`{shown}` is a folder: name a file to write");
     }
-    if !force && path.symlink_metadata().is_ok() {
+    if !force && !is_device(path) && path.symlink_metadata().is_ok() {
         anyhow::bail!(
             "`{shown}` exists and is kept: write elsewhere, or give --force to replace it"
         );
     }
-    let folder = match path.parent() {
-        Some(folder) if !folder.as_os_str().is_empty() => folder,
-        _ => Path::new("."),
-    };
-    let failed = || format!("`{shown}` cannot be written");
-    let mut beside = tempfile::NamedTempFile::new_in(folder).with_context(failed)?;
-    beside.write_all(bytes).with_context(failed)?;
-    beside.as_file().sync_all().with_context(failed)?;
-    plain_permissions(&beside).with_context(failed)?;
-    let placed = if force {
-        beside.persist(path).map(drop)
-    } else {
-        beside.persist_noclobber(path).map(drop)
-    };
-    placed.map_err(|e| e.error).with_context(failed)
+    match path.parent() {
+        Some(folder) if !folder.as_os_str().is_empty() && !folder.is_dir() => {
+            anyhow::bail!(
+                "`{shown}` cannot be written: there is no folder `{}`",
+                folder.display()
+            )
+        }
+        _ => Ok(()),
+    }
 }
 
-/// A temporary file is private; an answer is as readable as any other file.
+/// Whether something other than a file or a folder stands there.
+fn is_device(path: &Path) -> bool {
+    std::fs::metadata(path).is_ok_and(|there| !there.is_file() && !there.is_dir())
+}
+
+/// A file as readable as the user's settings let any new file be; a temporary one is private otherwise.
 #[cfg(unix)]
-fn plain_permissions(file: &tempfile::NamedTempFile) -> std::io::Result<()> {
+fn new_file() -> tempfile::Builder<'static, 'static> {
     use std::os::unix::fs::PermissionsExt;
-    file.as_file()
-        .set_permissions(std::fs::Permissions::from_mode(0o644))
+    let mut builder = tempfile::Builder::new();
+    builder
+        .prefix(".ampledger-")
+        .permissions(std::fs::Permissions::from_mode(0o666));
+    builder
 }
 
 #[cfg(not(unix))]
-fn plain_permissions(_: &tempfile::NamedTempFile) -> std::io::Result<()> {
-    Ok(())
+fn new_file() -> tempfile::Builder<'static, 'static> {
+    let mut builder = tempfile::Builder::new();
+    builder.prefix(".ampledger-");
+    builder
+}
+
+/// What went wrong with a file, without the name of the temporary one.
+fn plain(error: std::io::Error) -> std::io::Error {
+    match error.raw_os_error() {
+        Some(code) => std::io::Error::from_raw_os_error(code),
+        None => error.kind().into(),
+    }
 }
 
 /// How text is laid out for where it goes.

@@ -29,6 +29,31 @@ Examples:
   ampledger check builds/*.yaml --format csv -o builds.csv
   generate-build | ampledger check -";
 
+/// Of `curve`.
+pub const CURVE: &str = "\
+Examples:
+  ampledger curve mower.yaml
+  ampledger curve mower.yaml --rpm 1800,2400,3600 --volts 12.6,14.4
+  ampledger curve mower.yaml --format csv -o curve.csv --svg curve.svg";
+
+/// Of `wire`.
+pub const WIRE: &str = "\
+Examples:
+  ampledger wire mower.yaml
+  ampledger wire mower.yaml --gauge awg";
+
+/// Of `sheet`.
+pub const SHEET: &str = "\
+Examples:
+  ampledger sheet mower.yaml -o mower.html
+  ampledger sheet mower.yaml --for 'the orchard' --date '12 March' -o quote.html";
+
+/// Of `identify`.
+pub const IDENTIFY: &str = "\
+Examples:
+  ampledger identify bench.csv
+  ampledger identify bench.yaml --format json";
+
 /// Of `fleet`.
 pub const FLEET: &str = "\
 Build files, kits and patterns are looked for beside the fleet file. A row that
