@@ -30,8 +30,14 @@ fn built(text: &str) -> Build {
 }
 
 fn answered(text: &str) -> Check {
-    let checked =
-        check(&built(text), Wanted { trace: true }).unwrap_or_else(|e| panic!("{e}\n{text}"));
+    let checked = check(
+        &built(text),
+        Wanted {
+            trace: true,
+            ..Wanted::default()
+        },
+    )
+    .unwrap_or_else(|e| panic!("{e}\n{text}"));
     finite(&checked.check, text);
     checked.check
 }
@@ -184,7 +190,7 @@ fn changed_examples_are_refused_or_answered() {
                         );
                         refused += 1;
                     }
-                    Ok(build) => match check(&build, Wanted { trace: false }) {
+                    Ok(build) => match check(&build, Wanted::default()) {
                         Ok(checked) => {
                             finite(&checked.check, &text);
                             read_well += 1;
@@ -251,7 +257,13 @@ fn figures_that_are_none_get_no_answer() {
         for x in [f64::NAN, f64::INFINITY, f64::NEG_INFINITY] {
             let mut build = good.clone();
             spoil(&mut build, x);
-            match check(&build, Wanted { trace: true }) {
+            match check(
+                &build,
+                Wanted {
+                    trace: true,
+                    ..Wanted::default()
+                },
+            ) {
                 Err(SolveError::NotFinite | SolveError::EmptyShift) => {}
                 Err(other) => panic!("{what} {x}: {other}"),
                 Ok(checked) => finite(&checked.check, &format!("{what} {x}")),

@@ -25,7 +25,7 @@ fuzz_target!(|bytes: &[u8]| {
     let Ok(build) = resolve(&description, &CATALOGS) else {
         return;
     };
-    if let Ok(checked) = check(&build, Wanted { trace: false }) {
+    if let Ok(checked) = check(&build, Wanted::default()) {
         let answer = serde_yaml::to_string(&checked.check).expect("an answer can be written");
         for none in [".nan", ".inf"] {
             assert!(!answer.contains(none), "{text}\n{answer}");
