@@ -72,6 +72,8 @@ impl<'a> Lower<'a> {
     fn wrong_shape<L, M>(&mut self, node: &Node<L, M>, path: &str, wanted: &'static str) {
         let found = match node {
             Node::Absent => return,
+            // a file that is nothing but `~`
+            Node::Null if path.is_empty() => Shape::Single,
             Node::Null => {
                 // `~` and `null` leave a key out on purpose
                 if self.is_empty(path) {
