@@ -131,6 +131,7 @@ pub mod odds;
 pub mod outlook;
 pub mod problem;
 pub mod quantity;
+pub mod remedy;
 pub mod report;
 pub mod resolve;
 pub mod root;

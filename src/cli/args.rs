@@ -1,9 +1,11 @@
 //! The arguments, as clap reads them. Nothing below this file knows clap.
 
 mod examples;
+pub mod mend;
 pub mod support;
 
 use clap::{Args, Parser, Subcommand, ValueEnum};
+use mend::SizeArgs;
 use std::io::IsTerminal;
 use std::path::PathBuf;
 use support::{CompletionsArgs, ManArgs, NewArgs, PartsArgs, SchemaArgs};
@@ -95,6 +97,9 @@ pub enum Command {
     /// Winding output against rpm: amps, heat, cut-in and break-even speeds
     #[command(after_help = examples::CURVE)]
     Curve(CurveArgs),
+    /// What size would do: least winding, battery, speed; most duty, time, load; each alone
+    #[command(after_help = examples::SIZE)]
+    Size(SizeArgs),
     /// Wire, fuse and relay for each accessory with a `run:`
     #[command(after_help = examples::WIRE)]
     Wire(WireArgs),

@@ -16,6 +16,7 @@ mod parts;
 mod progress;
 mod schema;
 mod sheet;
+mod size;
 mod why;
 mod wire;
 
@@ -50,6 +51,7 @@ pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
     match &arguments.command {
         Command::Check(check) => check::run(check, common),
         Command::Curve(args) => curve::run(args, common),
+        Command::Size(size) => size::run(size, common),
         Command::Wire(args) => wire::run(args, common),
         Command::Sheet(args) => sheet::run(args, common),
         Command::Identify(args) => identify::run(args, common),

@@ -34,6 +34,18 @@ impl Progress {
     /// Some steps more; from any thread.
     pub fn step(&self, steps: u64) {
         self.bar.inc(steps);
+        self.show();
+    }
+
+    /// So many steps of so many are done: for a search that learns on the way how many it takes.
+    pub fn reached(&self, done: usize, steps: usize) {
+        let count = |steps: usize| u64::try_from(steps).unwrap_or(u64::MAX);
+        self.bar.set_length(count(steps));
+        self.bar.set_position(count(done));
+        self.show();
+    }
+
+    fn show(&self) {
         if self.waits.load(Ordering::Relaxed)
             && self.began.elapsed() > PATIENCE
             && self.waits.swap(false, Ordering::Relaxed)

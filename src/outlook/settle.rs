@@ -41,6 +41,14 @@ pub enum Outlook {
     },
 }
 
+/// What a few cycles and a search for their limit tell.
+enum Approach {
+    /// The outlook.
+    Decided(Outlook),
+    /// No charge was found at which it settles: from here it falls through the reserve.
+    Falls(Charge),
+}
+
 impl Outlook {
     /// Whether it keeps up without end.
     #[must_use]
@@ -53,11 +61,29 @@ impl Machine {
     /// What repeating the cycle from a charge comes to.
     #[must_use]
     pub fn outlook(&self, start: Charge, reserve: Fraction) -> Outlook {
+        match self.approach(start, reserve) {
+            Approach::Decided(outlook) => outlook,
+            Approach::Falls(charge) => self.count(charge, reserve, PLAIN),
+        }
+    }
+
+    /// Whether it keeps up from a charge, without counting the shifts it carries: what a search
+    /// asks, many times over. A charge that falls past every cycle looked at counts as lost.
+    #[must_use]
+    pub fn keeps_up(&self, start: Charge, reserve: Fraction) -> bool {
+        match self.approach(start, reserve) {
+            Approach::Decided(outlook) => outlook.keeps_up(),
+            Approach::Falls(_) => false,
+        }
+    }
+
+    /// A few cycles run, then the charge they tend to looked for.
+    fn approach(&self, start: Charge, reserve: Fraction) -> Approach {
         if start.soc < reserve {
-            return Outlook::Breaks {
+            return Approach::Decided(Outlook::Breaks {
                 shifts: 0,
                 begins: start,
-            };
+            });
         }
         let mut charge = start;
         let mut lowest = start.soc;
@@ -65,24 +91,24 @@ impl Machine {
         for cycle in 0..PLAIN {
             let passed = self.pass(charge, reserve);
             if let Some(shift) = passed.broke {
-                return Outlook::Breaks {
+                return Approach::Decided(Outlook::Breaks {
                     shifts: cycle * self.shifts + shift,
                     begins: charge,
-                };
+                });
             }
             changes = [changes[1], passed.end.soc.0 - charge.soc.0];
             lowest = passed.lowest;
             if changes[1].abs() < STILL {
-                return Outlook::Settles {
+                return Approach::Decided(Outlook::Settles {
                     charge: passed.end,
                     lowest,
-                };
+                });
             }
             charge = passed.end;
         }
         match self.fixed_point(charge, lowest, reserve, limit(charge, changes)) {
-            Some((charge, lowest)) => Outlook::Settles { charge, lowest },
-            None => self.count(charge, reserve, PLAIN),
+            Some((charge, lowest)) => Approach::Decided(Outlook::Settles { charge, lowest }),
+            None => Approach::Falls(charge),
         }
     }
 

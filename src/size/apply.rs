@@ -34,6 +34,21 @@ impl Knob {
                     set_cranking(battery, Amps(x));
                 }
             }
+            Knob::Reserve => {
+                if let Some(battery) = &mut build.battery {
+                    battery.reserve = Some(Figure {
+                        path: "battery.reserve".to_owned(),
+                        ..figure(Fraction::from_percent(x))
+                    });
+                }
+            }
+            Knob::Parked => set(&mut build.parked, Hours(x)),
+            Knob::Draw(index) => {
+                if let Some(accessory) = build.accessories.get_mut(*index) {
+                    let draw = drawing(accessory.draw.value, x);
+                    set(&mut accessory.draw, draw);
+                }
+            }
             Knob::Speed(index) => {
                 if let Some(speed) = build.speeds.get_mut(*index) {
                     set(&mut speed.rpm, Rpm(x));
@@ -119,6 +134,19 @@ fn figure<T>(value: T) -> Figure<T> {
         origin: Origin::Stated,
         tolerance: None,
         path: String::new(),
+    }
+}
+
+/// A draw of the same law and another amount, in its own unit.
+fn drawing(draw: Draw, x: f64) -> Draw {
+    match draw {
+        Draw::Current(_) => Draw::Current(Amps(x)),
+        Draw::Power(_) => Draw::Power(Watts(x)),
+        Draw::Filament { at, .. } => Draw::Filament {
+            power: Watts(x),
+            at,
+        },
+        Draw::Resistance(ohms) => Draw::Resistance(ohms),
     }
 }
 

@@ -5,7 +5,7 @@
 //! which `--set` takes it: `1.27` times, 2140 rpm, 35.2 %, 18.5 min.
 
 use super::value::Rated;
-use crate::build::{Build, Figure, Source, SourceKind, State, WindingSource};
+use crate::build::{Build, Draw, Figure, Source, SourceKind, State, WindingSource};
 use crate::description::path;
 use crate::quantity::{Amps, Fraction, Volts};
 
@@ -18,10 +18,16 @@ pub enum Knob {
     Capacity,
     /// Cold cranking amps of the battery.
     ColdCranking,
+    /// Charge never to go below.
+    Reserve,
     /// A named speed: index into the speeds.
     Speed(usize),
     /// Time of one step of the shift: index into the steps.
     Time(usize),
+    /// Time parked between shifts.
+    Parked,
+    /// What one accessory draws, by the law it follows: index into the accessories.
+    Draw(usize),
     /// Share of the time an accessory is on.
     Duty {
         /// Index into the accessories.
@@ -41,6 +47,8 @@ const FASTEST: f64 = 1.5;
 const SLOWEST: f64 = 100.0;
 /// Longest time of a step looked at, min: a day.
 const LONGEST: f64 = 1440.0;
+/// Longest time parked looked at, h: sixty days.
+const LONGEST_PARKED: f64 = 1440.0;
 /// How far a winding or a battery is varied, times and over what it is.
 const WIDEST: f64 = 30.0;
 /// Cold cranking amps for each Ah beyond which a label contradicts itself.
@@ -64,7 +72,7 @@ pub(super) fn windings(build: &Build) -> impl Iterator<Item = (usize, &Source, &
 pub fn knobs(build: &Build) -> Vec<Knob> {
     let mut all: Vec<Knob> = windings(build).map(|(i, _, _)| Knob::Winding(i)).collect();
     if build.battery.is_some() {
-        all.extend([Knob::Capacity, Knob::ColdCranking]);
+        all.extend([Knob::Capacity, Knob::ColdCranking, Knob::Reserve]);
     }
     let runs = |speed: &usize| occurs(build, State::Running(*speed));
     all.extend((0..build.speeds.len()).filter(runs).map(Knob::Speed));
@@ -74,9 +82,15 @@ pub fn knobs(build: &Build) -> Vec<Knob> {
         .enumerate()
         .filter(|(_, step)| step.state != State::Crank);
     all.extend(timed.map(|(index, _)| Knob::Time(index)));
+    all.push(Knob::Parked);
     for accessory in 0..build.accessories.len() {
         all.extend(duties(build, accessory));
     }
+    all.extend(
+        (0..build.accessories.len())
+            .filter(|i| drawn(build, *i).is_some())
+            .map(Knob::Draw),
+    );
     all.extend([Knob::AddedPower, Knob::AddedCurrent]);
     all
 }
@@ -104,7 +118,47 @@ pub(super) fn duties(build: &Build, index: usize) -> Vec<Knob> {
             knobs.push(knob);
         }
     }
+    let everywhere = Knob::Duty {
+        accessory: index,
+        state: None,
+    };
+    if alike(build, index) && !knobs.contains(&everywhere) {
+        knobs.push(everywhere);
+    }
     knobs
+}
+
+/// Whether an accessory is on for the same share in every running state of the shift, and in no
+/// other: then one figure may stand for all of them.
+fn alike(build: &Build, index: usize) -> bool {
+    let Some(duty) = build.accessories.get(index).map(|a| &a.duty) else {
+        return false;
+    };
+    let running = (0..build.speeds.len()).map(State::Running);
+    let mut shares = running.filter(|s| occurs(build, *s)).map(|s| duty.share(s));
+    let Some(first) = shares.next().filter(|s| *s > Fraction::ZERO) else {
+        return false;
+    };
+    let others = [State::Stopped, State::Crank];
+    shares.all(|s| s == first) && others.iter().all(|s| duty.share(*s) == Fraction::ZERO)
+}
+
+/// What one accessory on the bus draws, as a number and its unit; none for a resistance, where more
+/// ohms are less load.
+fn drawn(build: &Build, index: usize) -> Option<(f64, &'static str)> {
+    let accessory = build.accessories.get(index)?;
+    let states = [State::Stopped, State::Crank].into_iter();
+    let mut states = (0..build.speeds.len()).map(State::Running).chain(states);
+    let on = |s: State| occurs(build, s) && accessory.duty.share(s) > Fraction::ZERO;
+    if accessory.circuit.is_some() || !states.any(on) {
+        return None;
+    }
+    let (x, unit) = match accessory.draw.value {
+        Draw::Current(amps) => (amps.0, "A"),
+        Draw::Power(power) | Draw::Filament { power, .. } => (power.0, "W"),
+        Draw::Resistance(_) => return None,
+    };
+    (x > 0.0).then_some((x, unit))
 }
 
 /// Whether the shift has any time in a state.
@@ -145,6 +199,15 @@ impl Knob {
             }
             Knob::Capacity => "battery capacity".to_owned(),
             Knob::ColdCranking => "cold cranking amps".to_owned(),
+            Knob::Reserve => "reserve".to_owned(),
+            Knob::Parked => "time parked".to_owned(),
+            Knob::Draw(index) => {
+                let name = build
+                    .accessories
+                    .get(*index)
+                    .map_or("accessory", |a| &a.name);
+                format!("draw of {name}")
+            }
             Knob::Speed(index) => {
                 format!("{} speed", build.state_name(State::Running(*index)))
             }
@@ -186,6 +249,9 @@ impl Knob {
                 .battery
                 .as_ref()
                 .map(|_| "battery.cold_cranking".to_owned()),
+            Knob::Reserve => build.battery.as_ref().map(|_| "battery.reserve".to_owned()),
+            Knob::Parked => Some(build.parked.path.clone()),
+            Knob::Draw(index) => build.accessories.get(*index).map(|a| a.draw.path.clone()),
             Knob::Speed(index) => build.speeds.get(*index).map(|s| s.rpm.path.clone()),
             Knob::Time(index) => build.shift.get(*index).map(|s| s.time.path.clone()),
             Knob::Duty { accessory, state } => match state {
@@ -201,14 +267,16 @@ impl Knob {
 
     /// The unit in which `--set` takes it; none for a plain number.
     #[must_use]
-    pub fn unit(&self) -> &'static str {
+    pub fn unit(&self, build: &Build) -> &'static str {
         match self {
             Knob::Winding(_) => "",
             Knob::Capacity => "Ah",
             Knob::ColdCranking | Knob::AddedCurrent => "A",
             Knob::Speed(_) => "rpm",
             Knob::Time(_) => "min",
-            Knob::Duty { .. } => "%",
+            Knob::Duty { .. } | Knob::Reserve => "%",
+            Knob::Parked => "h",
+            Knob::Draw(index) => drawn(build, *index).map_or("W", |(_, unit)| unit),
             Knob::AddedPower => "W",
         }
     }
@@ -223,6 +291,12 @@ impl Knob {
                 let usual = || label.chemistry.cranking_from_capacity(label.capacity);
                 label.cold_cranking.unwrap_or_else(usual).0
             }
+            Knob::Reserve => {
+                let reserve = build.battery.as_ref()?.reserve.as_ref();
+                reserve.map_or(0.0, |r| r.value.percent())
+            }
+            Knob::Parked => build.parked.value.0,
+            Knob::Draw(index) => drawn(build, *index)?.0,
             Knob::Speed(index) => build.speeds.get(*index)?.rpm.value.0,
             Knob::Time(index) => build.shift.get(*index)?.time.value.minutes(),
             Knob::Duty { accessory, state } => match state {
@@ -252,6 +326,9 @@ impl Knob {
             }
             Knob::Speed(_) => (SLOWEST.min(now), (FASTEST * top_speed(build)).min(12_000.0)),
             Knob::Time(_) => (0.0, LONGEST.max(now)),
+            Knob::Reserve => (0.0, 100.0),
+            Knob::Parked => (0.0, LONGEST_PARKED.max(now)),
+            Knob::Draw(_) => (0.0, now * WIDEST),
             Knob::Duty { accessory, state } => (0.0, room(build, *accessory, *state)),
             Knob::AddedPower => (0.0, 16.0 * most_output(build).0 + 50.0),
             Knob::AddedCurrent => (0.0, most_output(build).0 + 5.0),
@@ -266,6 +343,12 @@ impl Knob {
             Knob::ColdCranking => 10_000.0,
             Knob::Speed(_) => 12_000.0,
             Knob::Time(_) => 336.0 * 60.0,
+            Knob::Reserve => 100.0,
+            Knob::Parked => 8760.0,
+            Knob::Draw(index) => match drawn(build, *index) {
+                Some((_, "A")) => 2000.0,
+                _ => 50_000.0,
+            },
             Knob::Duty { accessory, state } => room(build, *accessory, *state),
             Knob::AddedPower | Knob::AddedCurrent => f64::INFINITY,
         }
@@ -278,7 +361,7 @@ impl Knob {
                 let amps = winding(build, *index).map(|w| Rated::of(build, w).at(Fraction(x)));
                 (amps.map_or(f64::NAN, |a| a.0), "A")
             }
-            _ => (x, self.unit()),
+            _ => (x, self.unit(build)),
         }
     }
 }

@@ -87,13 +87,16 @@ impl<'b> Margin<'b> {
                 },
                 _,
             ) => *on == state,
+            (Knob::Draw(_), _) => state != State::Parked,
             (_, State::Running(_)) => true,
             _ => false,
         };
         let supply_alone = match knob {
             Knob::Winding(_) | Knob::Speed(_) => true,
-            Knob::Duty { .. } | Knob::AddedPower | Knob::AddedCurrent => false,
-            Knob::Capacity | Knob::ColdCranking | Knob::Time(_) => return None,
+            Knob::Duty { .. } | Knob::Draw(_) | Knob::AddedPower | Knob::AddedCurrent => false,
+            Knob::Capacity | Knob::ColdCranking | Knob::Reserve | Knob::Time(_) | Knob::Parked => {
+                return None;
+            }
         };
         let mut machine = self.machine.clone();
         for wired in machine.connected.iter_mut().filter(|w| touched(w.state)) {

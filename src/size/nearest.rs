@@ -339,7 +339,7 @@ pub(super) fn largest(build: &Build) -> Vec<(usize, AmpHours)> {
 fn change(build: &Build, knob: &Knob, x: f64, words: &str) -> Change {
     let set = knob
         .path(build)
-        .map(|path| format!("{path}={}", written(x, knob.unit())));
+        .map(|path| format!("{path}={}", written(x, knob.unit(build))));
     Change {
         text: capital(words),
         set,

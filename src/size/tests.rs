@@ -59,7 +59,7 @@ fn a_knob_is_what_set_makes_of_the_file() {
             };
             let now = knob.now(&build).expect("it is there");
             let x = 0.8125 * now;
-            let set = format!("{path}={}", written(x, knob.unit()));
+            let set = format!("{path}={}", written(x, knob.unit(&build)));
             let again = build_of(&text, &[set.clone()]);
             let (a, b) = (rule(&knob.apply(&build, x)), rule(&again));
             let (a, b) = (a.expect("an answer"), b.expect("an answer"));
@@ -78,7 +78,7 @@ fn a_knob_is_what_set_makes_of_the_file() {
             tried += 1;
         }
     }
-    assert!(tried >= 36, "{tried}");
+    assert!(tried >= 45, "{tried}");
 }
 
 /// Every nearest change, set in the file, keeps up by the full verdict; and none of them is idle.

@@ -67,7 +67,12 @@ impl<'b> Worth<'b> {
             }
             Knob::AddedPower => self.over_running(|v| -(Watts(x) / v)),
             Knob::AddedCurrent => self.over_running(|_| Amps(-x)),
-            Knob::Capacity | Knob::ColdCranking | Knob::Time(_) => AmpHours::ZERO,
+            Knob::Capacity
+            | Knob::ColdCranking
+            | Knob::Reserve
+            | Knob::Time(_)
+            | Knob::Parked
+            | Knob::Draw(_) => AmpHours::ZERO,
         }
     }
 

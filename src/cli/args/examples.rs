@@ -69,6 +69,14 @@ Examples:
   ampledger fleet fleet.csv --kit none --kit night-work
   ampledger fleet fleet.csv --no-remedy --format csv -o verdicts.csv
   printf 'machine,build,count,kit\\nmower,mower.yaml,12,night-work\\n' | ampledger fleet -";
+/// Of `size`.
+pub const SIZE: &str = "\
+Each amount is on the side that keeps up, and just beyond it does not.
+
+Examples:
+  ampledger size mower.yaml
+  ampledger size mower.yaml --set 'accessories[0].count=4'
+  ampledger size mower.yaml --format json";
 
 /// Of `odds`.
 pub const ODDS: &str = "\
