@@ -5,7 +5,7 @@ pub mod mend;
 pub mod support;
 
 use clap::{Args, Parser, Subcommand, ValueEnum};
-use mend::SizeArgs;
+use mend::{RemedyArgs, SizeArgs};
 use std::io::IsTerminal;
 use std::path::PathBuf;
 use support::{CompletionsArgs, ManArgs, NewArgs, PartsArgs, SchemaArgs};
@@ -100,6 +100,9 @@ pub enum Command {
     /// What size would do: least winding, battery, speed; most duty, time, load; each alone
     #[command(after_help = examples::SIZE)]
     Size(SizeArgs),
+    /// What mends it: combinations of changes that make it keep up, cheapest first
+    #[command(after_help = examples::REMEDY)]
+    Remedy(RemedyArgs),
     /// Wire, fuse and relay for each accessory with a `run:`
     #[command(after_help = examples::WIRE)]
     Wire(WireArgs),

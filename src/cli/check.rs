@@ -1,14 +1,12 @@
 //! `ampledger check`.
 
-use super::args::{BuildArgs, CheckArgs, Common, Format};
+use super::args::{CheckArgs, Common, Format};
 use super::input::{self, Opened};
 use super::{DOES_NOT, KEEPS_UP, output};
-use ampledger::catalog::Catalogs;
 use ampledger::check::answer::{Check, Verdict};
 use ampledger::check::{Checked, Wanted, check, season};
 use ampledger::quantity::Celsius;
 use ampledger::report::Report;
-use ampledger::resolve;
 use ampledger::view;
 use anyhow::{Context, bail};
 use serde::Serialize;
@@ -59,7 +57,10 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
             (before, verdict)
         }
         Some(kit) => {
-            let after = answer(&with_kit(&opened, kit, &args.build, &catalogs)?, wanted)?;
+            let after = answer(
+                &input::with_kit(&opened, kit, &args.build, &catalogs)?,
+                wanted,
+            )?;
             let both = Compared {
                 before: &before.check,
                 after: &after.check,
@@ -98,26 +99,6 @@ pub fn code(verdict: Verdict) -> u8 {
 
 pub fn answer(opened: &Opened, wanted: Wanted) -> anyhow::Result<Checked> {
     check(&opened.build, wanted).with_context(|| opened.source.name.clone())
-}
-
-/// The build with a kit's accessories added.
-///
-/// # Errors
-/// No such kit; the kit does not fit the build.
-pub fn with_kit(
-    opened: &Opened,
-    kit: &str,
-    args: &BuildArgs,
-    catalogs: &Catalogs,
-) -> anyhow::Result<Opened> {
-    let kit = resolve::find_kit(catalogs, kit)?;
-    let description = resolve::with_kit(&opened.description, &kit);
-    let build = input::resolved(&description, &opened.source, args, catalogs)?;
-    Ok(Opened {
-        description,
-        source: opened.source.clone(),
-        build,
-    })
 }
 
 /// The verdicts over a range of air temperatures.

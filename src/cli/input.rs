@@ -120,6 +120,26 @@ pub fn files(named: &[String]) -> anyhow::Result<Vec<String>> {
     Ok(files)
 }
 
+/// The build with a kit's accessories added.
+///
+/// # Errors
+/// No such kit; the kit does not fit the build.
+pub fn with_kit(
+    opened: &Opened,
+    kit: &str,
+    args: &BuildArgs,
+    catalogs: &Catalogs,
+) -> anyhow::Result<Opened> {
+    let kit = resolve::find_kit(catalogs, kit)?;
+    let description = resolve::with_kit(&opened.description, &kit);
+    let build = resolved(&description, &opened.source, args, catalogs)?;
+    Ok(Opened {
+        description,
+        source: opened.source.clone(),
+        build,
+    })
+}
+
 fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Description, Source)> {
     if file != "-" {
         return Ok(read_file(Path::new(file), assignments)?);

@@ -14,6 +14,7 @@ mod odds;
 mod output;
 mod parts;
 mod progress;
+mod remedy;
 mod schema;
 mod sheet;
 mod size;
@@ -52,6 +53,7 @@ pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
         Command::Check(check) => check::run(check, common),
         Command::Curve(args) => curve::run(args, common),
         Command::Size(size) => size::run(size, common),
+        Command::Remedy(remedy) => remedy::run(remedy, common),
         Command::Wire(args) => wire::run(args, common),
         Command::Sheet(args) => sheet::run(args, common),
         Command::Identify(args) => identify::run(args, common),

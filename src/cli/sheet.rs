@@ -1,7 +1,7 @@
 //! `ampledger sheet`.
 
 use super::args::{Common, Format, SheetArgs};
-use super::check::{PAGE_SHIFTS, answer, code, with_kit};
+use super::check::{PAGE_SHIFTS, answer, code};
 use super::{input, output, wire};
 use ampledger::build::Build;
 use ampledger::check::Wanted;
@@ -36,7 +36,7 @@ pub fn run(args: &SheetArgs, common: &Common) -> anyhow::Result<u8> {
     let kitted = args
         .with
         .as_ref()
-        .map(|kit| with_kit(&opened, kit, &args.build, &catalogs))
+        .map(|kit| input::with_kit(&opened, kit, &args.build, &catalogs))
         .transpose()?;
     let after = kitted
         .as_ref()

@@ -15,7 +15,10 @@ use anyhow::Context;
 /// The build has no answer.
 pub fn run(args: &SizeArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
-    let opened = input::build(&args.file, &args.build, &catalogs)?;
+    let mut opened = input::build(&args.file, &args.build, &catalogs)?;
+    if let Some(kit) = &args.with {
+        opened = input::with_kit(&opened, kit, &args.build, &catalogs)?;
+    }
     let asked = Asked {
         description: &opened.description,
         build: &opened.build,

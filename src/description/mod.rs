@@ -21,7 +21,7 @@ pub use charging::{
 };
 pub use read::{
     bytes_of, bytes_within, read, read_accessory, read_battery, read_charging, read_file,
-    read_fleet, read_kit, read_set, read_starter,
+    read_fleet, read_kit, read_prices, read_set, read_starter,
 };
 pub(crate) use read::{open_text, second_reader};
 pub use set::Assignment;
@@ -199,6 +199,15 @@ pub struct MayText {
     pub battery: Option<Written<bool>>,
     /// Use a shop charger while parked.
     pub charger: Option<Written<bool>>,
+}
+
+/// A price list of the user's own.
+#[derive(Clone, Debug, Default)]
+pub struct PricesText {
+    /// The currency, a label.
+    pub currency: Option<Written<String>>,
+    /// Prices by the part's id, in the order written.
+    pub prices: Vec<(String, Written<Money>)>,
 }
 
 /// `wiring:` how wires run unless an accessory says otherwise.

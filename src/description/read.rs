@@ -5,7 +5,8 @@ use super::lower::Lower;
 use super::raw::{self, Map};
 use super::set::{self, Assignment};
 use super::{
-    AccessoryText, BatteryText, ChargingText, Description, KitText, StarterText, open, scan,
+    AccessoryText, BatteryText, ChargingText, Description, KitText, PricesText, StarterText, open,
+    scan,
 };
 use crate::problem::{FileProblem, Problem, Problems, Refusal, Source, TextProblem};
 use serde::de::DeserializeOwned;
@@ -129,6 +130,8 @@ parts!(
     read_accessory: Accessory => AccessoryText by accessory;
     /// Reads the keys of a catalog's kit.
     read_kit: Kit => KitText by kit;
+    /// Reads a price list.
+    read_prices: Prices => PricesText by prices;
 );
 
 /// Reads one mapping as a part.

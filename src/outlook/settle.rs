@@ -17,6 +17,10 @@ const STILL: f64 = 1e-9;
 /// Where between the touching cycle (0) and the charge reached (1) a cycle that holds itself up
 /// is looked for, from the top.
 const PROBES: [f64; 6] = [0.95, 0.8, 0.6, 0.4, 0.2, 0.0];
+/// The golden section's greater part.
+const GOLDEN: f64 = 0.618_033_988_749_894_8;
+/// Width to which the peak of the gain is found.
+const PEAK: f64 = 2e-4;
 /// Most rounds of any search here; each closes in by a fixed factor or stops.
 const MOST_ROUNDS: u32 = 60;
 /// Most cycles counted one by one towards a break.
@@ -45,8 +49,13 @@ pub enum Outlook {
 enum Approach {
     /// The outlook.
     Decided(Outlook),
-    /// No charge was found at which it settles: from here it falls through the reserve.
-    Falls(Charge),
+    /// No charge was found at which it settles: most likely it falls through the reserve.
+    Falls {
+        /// Charge reached.
+        charge: Charge,
+        /// Lowest of the cycle that led to it.
+        lowest: Fraction,
+    },
 }
 
 impl Outlook {
@@ -63,18 +72,51 @@ impl Machine {
     pub fn outlook(&self, start: Charge, reserve: Fraction) -> Outlook {
         match self.approach(start, reserve) {
             Approach::Decided(outlook) => outlook,
-            Approach::Falls(charge) => self.count(charge, reserve, PLAIN),
+            Approach::Falls { charge, .. } => self.count(charge, reserve, PLAIN),
         }
     }
 
     /// Whether it keeps up from a charge, without counting the shifts it carries: what a search
-    /// asks, many times over. A charge that falls past every cycle looked at counts as lost.
+    /// asks, many times over.
     #[must_use]
     pub fn keeps_up(&self, start: Charge, reserve: Fraction) -> bool {
         match self.approach(start, reserve) {
             Approach::Decided(outlook) => outlook.keeps_up(),
-            Approach::Falls(_) => false,
+            Approach::Falls { charge, lowest } => self.held_under(charge, lowest, reserve),
         }
+    }
+
+    /// Whether any cycle between the one that touches the reserve and a charge reached ends no lower
+    /// than it began. The gain has one peak there; it is looked for by golden sections.
+    fn held_under(&self, charge: Charge, lowest: Fraction, reserve: Fraction) -> bool {
+        let Some(touching) = self.touching(charge, lowest, reserve) else {
+            return false;
+        };
+        let gain = |soc: f64| {
+            let begin = Charge {
+                soc: Fraction(soc),
+                depletion: charge.depletion,
+            };
+            self.pass_around(0, begin).end.soc.0 - soc
+        };
+        let (mut low, mut high) = (touching, charge.soc.0);
+        let mut inner = [high - GOLDEN * (high - low), low + GOLDEN * (high - low)];
+        let mut gains = inner.map(gain);
+        if gain(touching) >= 0.0 {
+            return true;
+        }
+        while high - low > PEAK && gains.iter().all(|g| *g < 0.0) {
+            if gains[0] > gains[1] {
+                high = inner[1];
+                inner = [high - GOLDEN * (high - low), inner[0]];
+                gains = [gain(inner[0]), gains[0]];
+            } else {
+                low = inner[0];
+                inner = [inner[1], low + GOLDEN * (high - low)];
+                gains = [gains[1], gain(inner[1])];
+            }
+        }
+        gains.iter().any(|g| *g >= 0.0)
     }
 
     /// A few cycles run, then the charge they tend to looked for.
@@ -108,7 +150,7 @@ impl Machine {
         }
         match self.fixed_point(charge, lowest, reserve, limit(charge, changes)) {
             Some((charge, lowest)) => Approach::Decided(Outlook::Settles { charge, lowest }),
-            None => Approach::Falls(charge),
+            None => Approach::Falls { charge, lowest },
         }
     }
 

@@ -2,7 +2,6 @@
 
 use super::guideline::{Guideline, guideline};
 use super::influence::{Influence, influence};
-use super::keeps_up;
 use super::knob::{self, Knob, knobs};
 use super::margin::Margin;
 use super::nearest::largest;
@@ -11,6 +10,7 @@ use super::reason::{reserve_of, why_not};
 use super::rebuild::{self, WindingRow};
 use super::search::{Bound, Found, Search};
 use super::value::written;
+use super::{keeps_up, proves};
 use crate::build::{Build, State};
 use crate::check::{FORMAT, SolveError};
 use crate::ledger::Machine;
@@ -71,11 +71,16 @@ pub struct Options<'a> {
     /// Whether a build is good enough. By default that it keeps up; with a tolerance, that it does in
     /// a share of builds.
     pub keeps: &'a dyn Fn(&Build) -> bool,
+    /// The same without any short cut: every amount is proved with it.
+    pub proves: &'a dyn Fn(&Build) -> bool,
 }
 
 impl Default for Options<'_> {
     fn default() -> Self {
-        Options { keeps: &keeps_up }
+        Options {
+            keeps: &keeps_up,
+            proves: &proves,
+        }
     }
 }
 
@@ -116,6 +121,7 @@ pub fn size(
             build,
             knob,
             keeps: options.keeps,
+            proves: options.proves,
             margin: &mut margin,
             now_keeps,
         };

@@ -55,7 +55,7 @@ const WIDEST: f64 = 30.0;
 const CRANKING_AN_AH: f64 = 15.0;
 
 /// The windings that feed the battery bus, with their index.
-pub(super) fn windings(build: &Build) -> impl Iterator<Item = (usize, &Source, &WindingSource)> {
+pub(crate) fn windings(build: &Build) -> impl Iterator<Item = (usize, &Source, &WindingSource)> {
     build
         .sources
         .iter()
@@ -162,7 +162,7 @@ fn drawn(build: &Build, index: usize) -> Option<(f64, &'static str)> {
 }
 
 /// Whether the shift has any time in a state.
-pub(super) fn occurs(build: &Build, state: State) -> bool {
+pub(crate) fn occurs(build: &Build, state: State) -> bool {
     let mut steps = build.shift.iter();
     steps.any(|step| step.state == state && step.time.value.0 > 0.0)
 }

@@ -29,11 +29,19 @@ pub fn led_power(accessory: &Accessory) -> Option<Watts> {
     let Draw::Filament { power, .. } = accessory.draw.value else {
         return None;
     };
-    let light = accessory
-        .lumens
-        .map_or(FILAMENT_LUMENS_A_WATT * power.0, |l| l.0);
-    let watts = (10.0 * light / LED_LUMENS_A_WATT).ceil() / 10.0;
+    let watts = (10.0 * light(accessory)?.0 / LED_LUMENS_A_WATT).ceil() / 10.0;
     (watts < power.0).then_some(Watts(watts))
+}
+
+/// Lumens of one filament lamp, as a pure number: as stated, or 25 for each watt; none for anything
+/// else.
+#[must_use]
+pub fn light(accessory: &Accessory) -> Option<Fraction> {
+    let Draw::Filament { power, .. } = accessory.draw.value else {
+        return None;
+    };
+    let usual = Fraction(FILAMENT_LUMENS_A_WATT * power.0);
+    Some(accessory.lumens.unwrap_or(usual))
 }
 
 /// The build with some lamps changed.

@@ -25,8 +25,11 @@ pub use answer::{Answer, Options, Size, size};
 pub use guideline::{ALLOWED, Guideline, guideline};
 pub use influence::{Influence, influence};
 pub use knob::{Knob, knobs};
-pub use lamps::led_power;
+pub(crate) use knob::{occurs, windings};
+pub use lamps::{led_power, light};
+pub(crate) use nearest::largest;
 pub use nearest::nearest;
+pub(crate) use parts::rated;
 pub use reason::why_not;
 pub use rebuild::WindingRow;
 pub use search::Bound;
@@ -35,13 +38,26 @@ use crate::battery::Charge;
 use crate::build::Build;
 use crate::check::reserve;
 use crate::ledger::Machine;
+use crate::quantity::Fraction;
 
-/// Whether a build keeps up: the full verdict without its figures.
+/// Whether a build keeps up, found fast: what searches ask.
 #[must_use]
 pub fn keeps_up(build: &Build) -> bool {
-    let Some(machine) = Machine::new(build) else {
-        return false;
-    };
-    let reserve = reserve(build, &machine).soc;
-    machine.keeps_up(Charge::rested(build.start), reserve)
+    ask(build, Machine::keeps_up)
+}
+
+/// Whether a build keeps up by the full verdict, shifts counted out where need be: what answers are
+/// proved with.
+#[must_use]
+pub fn proves(build: &Build) -> bool {
+    ask(build, |machine, start, reserve| {
+        machine.outlook(start, reserve).keeps_up()
+    })
+}
+
+fn ask(build: &Build, of: impl Fn(&Machine, Charge, Fraction) -> bool) -> bool {
+    Machine::new(build).is_some_and(|machine| {
+        let reserve = reserve(build, &machine).soc;
+        of(&machine, Charge::rested(build.start), reserve)
+    })
 }

@@ -314,7 +314,7 @@ fn most_of_duty(build: &Build, index: usize) -> Option<(Knob, String)> {
 }
 
 /// Accessories on the battery bus with their Ah in a shift at a rested battery's volts, most first.
-pub(super) fn largest(build: &Build) -> Vec<(usize, AmpHours)> {
+pub(crate) fn largest(build: &Build) -> Vec<(usize, AmpHours)> {
     let volts = Volts(RANKED_AT_CELL * f64::from(build.cells()));
     let charge = |a: &Accessory| -> AmpHours {
         let amps = LoadSum::of(a.draw.value, a.count).current_at(volts);

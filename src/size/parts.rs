@@ -5,7 +5,7 @@ use super::value::Rated;
 use crate::build::{Build, SourceKind};
 use crate::catalog::Kind;
 use crate::description::{BatteryText, ChargingText};
-use crate::quantity::{Fraction, Rpm};
+use crate::quantity::{Amps, Rpm};
 use crate::remedy::{Asked, swap};
 
 /// A catalog part fitted, and whether the build then keeps up.
@@ -74,11 +74,17 @@ pub(super) fn in_order(fitted: &[Fitted], knob: &Knob) -> Vec<String> {
 /// The size of what is fitted: rated amps, Ah, cold cranking amps.
 pub(super) fn size(build: &Build, knob: &Knob) -> f64 {
     match knob {
-        Knob::Winding(index) => match build.sources.get(*index).map(|s| &s.kind) {
-            Some(SourceKind::Winding(winding)) => Rated::of(build, winding).at(Fraction::ONE).0,
-            Some(SourceKind::Alternator(alternator)) => alternator.output(Rpm(top_speed(build))).0,
-            None => f64::NAN,
-        },
+        Knob::Winding(index) => rated(build, *index).0,
         _ => knob.now(build).unwrap_or(f64::NAN),
+    }
+}
+
+/// Rated amps of a source: of a winding its rating, scale included; of an alternator what it gives at
+/// the highest named speed.
+pub(crate) fn rated(build: &Build, index: usize) -> Amps {
+    match build.sources.get(index).map(|s| &s.kind) {
+        Some(SourceKind::Winding(winding)) => Rated::of(build, winding).at(winding.scale.value),
+        Some(SourceKind::Alternator(alternator)) => alternator.output(Rpm(top_speed(build))),
+        None => Amps(f64::NAN),
     }
 }

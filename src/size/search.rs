@@ -62,6 +62,7 @@ pub(super) struct Search<'a, 'b> {
     pub(super) build: &'b Build,
     pub(super) knob: &'a Knob,
     pub(super) keeps: &'a dyn Fn(&Build) -> bool,
+    pub(super) proves: &'a dyn Fn(&Build) -> bool,
     pub(super) margin: &'a mut Margin<'b>,
     /// Whether the build as it is keeps up.
     pub(super) now_keeps: bool,
@@ -70,6 +71,10 @@ pub(super) struct Search<'a, 'b> {
 impl Search<'_, '_> {
     fn keeps(&self, x: f64) -> bool {
         (self.keeps)(&self.knob.apply(self.build, x))
+    }
+
+    fn proved(&self, x: f64) -> bool {
+        (self.proves)(&self.knob.apply(self.build, x))
     }
 
     /// The edge of the knob.
@@ -184,12 +189,14 @@ impl Search<'_, '_> {
             } else if self.allowed(beyond) && self.keeps(beyond) {
                 // It holds beyond as well: the edge lies further out.
                 (short, holds) = (short, beyond);
-            } else {
+            } else if self.proved(amount) && (!self.allowed(beyond) || !self.proved(beyond)) {
                 return Found::Edge {
                     bound,
                     amount,
                     beyond,
                 };
+            } else {
+                return Found::Ragged(bound);
             }
         }
         Found::Ragged(bound)

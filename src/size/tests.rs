@@ -60,7 +60,7 @@ fn a_knob_is_what_set_makes_of_the_file() {
             let now = knob.now(&build).expect("it is there");
             let x = 0.8125 * now;
             let set = format!("{path}={}", written(x, knob.unit(&build)));
-            let again = build_of(&text, &[set.clone()]);
+            let again = build_of(&text, std::slice::from_ref(&set));
             let (a, b) = (rule(&knob.apply(&build, x)), rule(&again));
             let (a, b) = (a.expect("an answer"), b.expect("an answer"));
             assert_eq!(a.verdict, b.verdict, "{set}");
@@ -96,7 +96,7 @@ fn nearest_changes_keep_up() {
         );
         for change in changes {
             let Some(set) = change.set else { continue };
-            let again = rule(&build_of(&text, &[set.clone()])).expect("an answer");
+            let again = rule(&build_of(&text, std::slice::from_ref(&set))).expect("an answer");
             assert_eq!(again.verdict, Verdict::KeepsUp, "{watts} W, {set}");
             listed += 1;
         }
@@ -146,6 +146,6 @@ fn beyond_charging_names_a_battery() {
     assert!(all.iter().any(|t| t.starts_with("Stopped for")), "{all:?}");
     for change in &changes {
         let Some(set) = &change.set else { continue };
-        assert!(keeps_up(&build_of(&text, &[set.clone()])), "{set}");
+        assert!(keeps_up(&build_of(&text, std::slice::from_ref(&set))), "{set}");
     }
 }

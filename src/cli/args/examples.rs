@@ -78,6 +78,18 @@ Examples:
   ampledger size mower.yaml --set 'accessories[0].count=4'
   ampledger size mower.yaml --format json";
 
+/// Of `remedy`.
+pub const REMEDY: &str = "\
+What may be changed stands under `may:` in the build; without it, all that the
+catalogs allow. A price list names prices by part id:
+  currency: EUR
+  prices: {winding-20a: 199, charger: 45}
+
+Examples:
+  ampledger remedy mower.yaml
+  ampledger remedy mower.yaml --with night-work --prices prices.yaml
+  ampledger remedy mower.yaml --format json";
+
 /// Of `odds`.
 pub const ODDS: &str = "\
 Tolerances stand in the build, `55 W ± 8 %`; a figure without one does not vary.

@@ -2,6 +2,7 @@
 
 use super::BuildArgs;
 use clap::Args;
+use std::path::PathBuf;
 
 /// `size`.
 #[derive(Args, Debug)]
@@ -12,4 +13,24 @@ pub struct SizeArgs {
     /// Changes to the build.
     #[command(flatten)]
     pub build: BuildArgs,
+    /// A kit to add first, by its id or file
+    #[arg(long, value_name = "KIT")]
+    pub with: Option<String>,
+}
+
+/// `remedy`.
+#[derive(Args, Debug)]
+pub struct RemedyArgs {
+    /// Build file; `-` is standard input
+    #[arg(value_name = "BUILD")]
+    pub file: String,
+    /// Changes to the build.
+    #[command(flatten)]
+    pub build: BuildArgs,
+    /// A kit to add first, by its id or file
+    #[arg(long, value_name = "KIT")]
+    pub with: Option<String>,
+    /// Your own prices by part id, before those of the catalogs
+    #[arg(long, value_name = "FILE.yaml")]
+    pub prices: Option<PathBuf>,
 }

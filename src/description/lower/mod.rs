@@ -7,6 +7,7 @@ mod engine;
 mod fit;
 mod fleet;
 mod leaf;
+mod prices;
 mod rest;
 
 /// The words that each key of words may have, and what each means.

@@ -8,12 +8,14 @@ mod battery;
 mod charging;
 mod fleet;
 pub(crate) mod node;
+mod prices;
 
 pub(crate) use accessory::{Accessory, Kit};
 pub(crate) use battery::Battery;
 pub(crate) use charging::{Alternator, Charging, Reading, Rectifier, Regulator, Winding};
 pub(crate) use fleet::{Fleet, Machine};
 pub(crate) use node::{Keys, Leaf, List, Map, Named, Node};
+pub(crate) use prices::Prices;
 
 use crate::quantity::{Amps, Celsius, Fraction, Hours, Ohms, Rpm, Volts};
 use crate::schema::form::{Count, Name, Price, Quantity, Returns, StepForm, YesNo};

@@ -1,0 +1,39 @@
+//! `ampledger remedy`.
+
+use super::args::Common;
+use super::args::mend::RemedyArgs;
+use super::progress::Progress;
+use super::{DOES_NOT, KEEPS_UP, input, output};
+use ampledger::remedy::{Asked, Prices, read_prices, remedy};
+use ampledger::view;
+use anyhow::Context;
+
+/// Looks for combinations of changes with which the build keeps up; the exit code is that of the
+/// build as it is.
+///
+/// # Errors
+/// The build has no answer; the price list does not read.
+pub fn run(args: &RemedyArgs, common: &Common) -> anyhow::Result<u8> {
+    let catalogs = input::catalogs(common)?;
+    let mut opened = input::build(&args.file, &args.build, &catalogs)?;
+    if let Some(kit) = &args.with {
+        opened = input::with_kit(&opened, kit, &args.build, &catalogs)?;
+    }
+    let prices = match &args.prices {
+        Some(path) => read_prices(path)?,
+        None => Prices::default(),
+    };
+    let asked = Asked {
+        description: &opened.description,
+        build: &opened.build,
+        catalogs: &catalogs,
+    };
+    let progress = Progress::new(1, "combinations");
+    let answer = remedy(&asked, &prices, &mut |done, all| {
+        progress.reached(done, all);
+    })
+    .with_context(|| opened.source.name.clone())?;
+    drop(progress);
+    output::write(common, || view::remedy(&answer), &answer)?;
+    Ok(if answer.keeps_up { KEEPS_UP } else { DOES_NOT })
+}

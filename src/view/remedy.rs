@@ -1,0 +1,82 @@
+//! Remedies as a report: a short list of ways out, priced, each with what it reaches.
+
+use crate::quantity::{Fraction, Money, format};
+use crate::remedy::{Answer, Remedy};
+use crate::report::{Cell, Column, Item, Report, Table, Tone};
+
+/// The report of remedies.
+#[must_use]
+pub fn remedy(answer: &Remedy) -> Report {
+    let lacks = answer.lacks_ah.map_or_else(
+        || "no charging while the engine runs can help it".to_owned(),
+        |charge| format!("it lacks {} a shift", format::text(charge)),
+    );
+    let count = u32::try_from(answer.answers.len()).unwrap_or(u32::MAX);
+    let (tone, lead, sentence) = if answer.keeps_up {
+        (
+            Tone::Good,
+            "Keeps up",
+            "nothing is to be mended.".to_owned(),
+        )
+    } else if let Some(binds) = &answer.binds {
+        let sentence = format!("{lacks}. With all changed that may be: {binds}.");
+        (Tone::Bad, "No way out", sentence)
+    } else {
+        let ways = format::count(count, "way out", "ways out");
+        (Tone::Bad, "Does not keep up", format!("{lacks}; {ways}."))
+    };
+    let mut report = Report::new(&answer.build)
+        .subtitle("Remedies: combinations of changes that make it keep up")
+        .verdict(tone, lead, sentence);
+    if !answer.answers.is_empty() {
+        report = report
+            .table(table(answer))
+            .subheading("To try one, set")
+            .lines(answer.answers.iter().enumerate().flat_map(commands));
+    }
+    report.list("Notes", answer.notes.iter().map(Item::new))
+}
+
+/// The assignments of an answer as options of `check`, one a line.
+fn commands((index, answer): (usize, &Answer)) -> impl Iterator<Item = String> {
+    let sets = answer.set.iter().enumerate();
+    sets.map(move |(k, set)| {
+        let number = if k == 0 {
+            (index + 1).to_string()
+        } else {
+            String::new()
+        };
+        format!("{number:<3}--set '{set}'")
+    })
+}
+
+/// One row a way out.
+fn table(answer: &Remedy) -> Table {
+    let rows = answer.answers.iter().enumerate().map(|(index, a)| {
+        vec![
+            Cell::text((index + 1).to_string()),
+            Cell::name(a.changes.join("; ")),
+            Cell::maybe(a.cost, |cost| money(cost, &answer.currency)),
+            Cell::maybe(a.settles_soc, |soc: Fraction| Cell::percent(soc)),
+        ]
+    });
+    let priced = answer.answers.iter().any(|a| a.cost.is_some());
+    let order = if priced {
+        "Cheapest first; prices of parts alone, without work. A price list of yours goes before the catalogs' invented prices: --prices FILE."
+    } else {
+        "Least change first: no prices are known."
+    };
+    Table::new("Ways out")
+        .columns([
+            Column::text(""),
+            Column::name("Changes"),
+            Column::money("Parts", &answer.currency),
+            Column::percent("Settles at"),
+        ])
+        .rows(rows)
+        .note(order)
+}
+
+fn money(cost: Money, currency: &str) -> Cell {
+    Cell::money(cost, currency)
+}
