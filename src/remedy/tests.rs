@@ -294,11 +294,19 @@ fn effort_orders_unknown_prices_last() {
     let of = |list: &[Change]| Effort::of(list);
     let (cheap, dear) = (change(Some(10.0), 3.0), change(Some(20.0), 0.1));
     let unknown = change(None, 0.0);
-    assert!(of(&[cheap.clone()]).cmp(&of(&[dear.clone()])).is_lt());
-    assert!(of(&[dear.clone()]).cmp(&of(&[unknown.clone()])).is_lt());
+    assert!(
+        of(std::slice::from_ref(&cheap))
+            .cmp(&of(std::slice::from_ref(&dear)))
+            .is_lt()
+    );
+    assert!(
+        of(std::slice::from_ref(&dear))
+            .cmp(&of(std::slice::from_ref(&unknown)))
+            .is_lt()
+    );
     assert!(
         of(&[cheap.clone(), change(Some(0.0), 0.0)])
-            .cmp(&of(&[cheap.clone()]))
+            .cmp(&of(std::slice::from_ref(&cheap)))
             .is_gt()
     );
     assert_eq!(of(&[cheap, unknown]).cost(), None);

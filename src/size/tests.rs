@@ -146,6 +146,9 @@ fn beyond_charging_names_a_battery() {
     assert!(all.iter().any(|t| t.starts_with("Stopped for")), "{all:?}");
     for change in &changes {
         let Some(set) = &change.set else { continue };
-        assert!(keeps_up(&build_of(&text, std::slice::from_ref(&set))), "{set}");
+        assert!(
+            keeps_up(&build_of(&text, std::slice::from_ref(&set))),
+            "{set}"
+        );
     }
 }
