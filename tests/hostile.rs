@@ -236,7 +236,8 @@ fn a_search_that_does_not_end_is_an_error() {
 #[test]
 fn figures_that_are_none_get_no_answer() {
     let good = built(ampledger::starter_build::Kind::SeriesRegulated.text());
-    let spoil: [(&str, fn(&mut Build, f64)); 7] = [
+    type Spoil = fn(&mut Build, f64);
+    let spoil: [(&str, Spoil); 7] = [
         ("air", |b, x| b.air.value.0 = x),
         ("time", |b, x| b.shift[1].time.value.0 = x),
         ("parked", |b, x| b.parked.value.0 = x),

@@ -147,7 +147,7 @@ fn beyond_charging_names_a_battery() {
     for change in &changes {
         let Some(set) = &change.set else { continue };
         assert!(
-            keeps_up(&build_of(&text, std::slice::from_ref(&set))),
+            keeps_up(&build_of(&text, std::slice::from_ref(set))),
             "{set}"
         );
     }
