@@ -6,6 +6,7 @@
 //! independent cycling accessories nothing is merged and the result is the enumeration.
 
 use super::LoadSum;
+use super::cases::Cases;
 use super::tally::Tally;
 use crate::quantity::{Fraction, Volts};
 use std::ops::Range;
@@ -46,50 +47,45 @@ impl Coincidences {
     #[must_use]
     pub fn new(steady: &[LoadSum], cyclers: &[Cycler], reference: Volts) -> Coincidences {
         let classes = steady.len().max(1);
-        let mut cases: Vec<(f64, Vec<LoadSum>)> = vec![(1.0, padded(steady, classes))];
-        let mut heaviest = cases[0].1.clone();
+        let mut cases = Cases::steady(steady, classes);
+        let mut heaviest = cases.sums.clone();
         for cycler in cyclers {
-            cases = joined(&cases, cycler);
+            cases = cases.joined(cycler);
             if cases.len() > MOST_CASES {
-                cases = merged(cases, reference);
+                cases = cases.merged(reference);
             }
             if let Some(most) = heaviest_case(cycler, reference) {
-                add(&mut heaviest, most);
+                heaviest.iter_mut().zip(most).for_each(|(a, b)| *a += *b);
             }
         }
-        sort_by_current(&mut cases, reference);
-        Coincidences::from_cases(&cases, heaviest, reference)
+        let (cases, currents) = cases.sorted(reference);
+        Coincidences::from_cases(cases, currents, heaviest)
     }
 
-    fn from_cases(
-        cases: &[(f64, Vec<LoadSum>)],
-        heaviest: Vec<LoadSum>,
-        reference: Volts,
-    ) -> Coincidences {
-        let totals: Vec<LoadSum> = cases
-            .iter()
-            .map(|(_, sums)| sums.iter().copied().sum())
+    fn from_cases(cases: Cases, currents: Vec<f64>, heaviest: Vec<LoadSum>) -> Coincidences {
+        let Cases {
+            classes,
+            shares,
+            sums,
+        } = cases;
+        let totals: Vec<LoadSum> = sums
+            .chunks_exact(classes)
+            .map(|row| row.iter().copied().sum())
             .collect();
-        let currents: Vec<f64> = totals
-            .iter()
-            .map(|total| total.current_at(reference).0)
-            .collect();
-        let origin = cases.iter().zip(&currents).map(|((p, _), i)| p * i).sum();
+        let origin = shares.iter().zip(&currents).map(|(p, i)| p * i).sum();
         let mut running = Tally::counted_from(origin);
-        let mut tallies = vec![running];
-        for ((share, _), (total, current)) in cases.iter().zip(totals.iter().zip(&currents)) {
+        let mut tallies = Vec::with_capacity(shares.len() + 1);
+        tallies.push(running);
+        for (share, (total, current)) in shares.iter().zip(totals.iter().zip(&currents)) {
             running.enter(*share, current - origin, total);
             tallies.push(running);
         }
         let heaviest_total: LoadSum = heaviest.iter().copied().sum();
         Coincidences {
-            shares: cases.iter().map(|(p, _)| *p).collect(),
-            sums: cases
-                .iter()
-                .flat_map(|(_, sums)| sums.iter().copied())
-                .collect(),
+            shares,
+            sums,
             filaments: heaviest_total.has_filaments(),
-            classes: heaviest.len(),
+            classes,
             totals,
             currents,
             tallies,
@@ -225,18 +221,6 @@ fn in_class(class: usize, classes: usize, sum: LoadSum) -> Vec<LoadSum> {
     sums
 }
 
-fn padded(sums: &[LoadSum], classes: usize) -> Vec<LoadSum> {
-    let mut all = sums.to_vec();
-    all.resize(classes, LoadSum::NONE);
-    all
-}
-
-fn add(into: &mut [LoadSum], sums: &[LoadSum]) {
-    for (a, b) in into.iter_mut().zip(sums) {
-        *a += *b;
-    }
-}
-
 fn total_current(sums: &[LoadSum], reference: Volts) -> f64 {
     sums.iter()
         .copied()
@@ -252,85 +236,4 @@ fn heaviest_case(cycler: &Cycler, reference: Volts) -> Option<&[LoadSum]> {
         .filter(|(share, _)| share.0 > 0.0)
         .max_by(|a, b| total_current(&a.1, reference).total_cmp(&total_current(&b.1, reference)))
         .map(|(_, sums)| sums.as_slice())
-}
-
-fn joined(cases: &[(f64, Vec<LoadSum>)], cycler: &Cycler) -> Vec<(f64, Vec<LoadSum>)> {
-    let mut all = Vec::with_capacity(cases.len() * cycler.cases.len());
-    for (p, sums) in cases {
-        for (share, more) in &cycler.cases {
-            let mut together = sums.clone();
-            add(&mut together, more);
-            all.push((p * share.0, together));
-        }
-    }
-    all
-}
-
-fn sort_by_current(cases: &mut Vec<(f64, Vec<LoadSum>)>, reference: Volts) {
-    let mut keyed: Vec<(f64, (f64, Vec<LoadSum>))> = std::mem::take(cases)
-        .into_iter()
-        .map(|case| (total_current(&case.1, reference), case))
-        .collect();
-    keyed.sort_by(|a, b| a.0.total_cmp(&b.0));
-    cases.extend(keyed.into_iter().map(|(_, case)| case));
-}
-
-/// Merges neighbours in current into [`MOST_CASES`] / 2 cells of equal width; each cell becomes
-/// two cases that keep its share, mean and variance of current.
-fn merged(mut cases: Vec<(f64, Vec<LoadSum>)>, reference: Volts) -> Vec<(f64, Vec<LoadSum>)> {
-    sort_by_current(&mut cases, reference);
-    let currents: Vec<f64> = cases
-        .iter()
-        .map(|c| total_current(&c.1, reference))
-        .collect();
-    let (low, high) = (currents[0], currents[currents.len() - 1]);
-    let cells = MOST_CASES / 2;
-    let width = (high - low) / cells as f64;
-    if width <= 0.0 {
-        return vec![weighted(&cases)];
-    }
-    let mut out = Vec::with_capacity(MOST_CASES);
-    let mut from = 0;
-    for cell in 0..cells {
-        let edge = if cell + 1 == cells {
-            f64::INFINITY
-        } else {
-            low + width * (cell + 1) as f64
-        };
-        let mut to = from;
-        while to < cases.len() && currents[to] < edge {
-            to += 1;
-        }
-        halved(&cases[from..to], &currents[from..to], &mut out);
-        from = to;
-    }
-    out
-}
-
-/// Splits a cell at its mean; each half becomes its weighted mean, which keeps the cell's mean
-/// and, being two points, nearly all of its variance.
-fn halved(cell: &[(f64, Vec<LoadSum>)], currents: &[f64], out: &mut Vec<(f64, Vec<LoadSum>)>) {
-    let share: f64 = cell.iter().map(|c| c.0).sum();
-    if share <= 0.0 {
-        return;
-    }
-    let mean = cell.iter().zip(currents).map(|(c, i)| c.0 * i).sum::<f64>() / share;
-    let split = currents.partition_point(|i| *i < mean);
-    for half in [&cell[..split], &cell[split..]] {
-        if half.iter().any(|c| c.0 > 0.0) {
-            out.push(weighted(half));
-        }
-    }
-}
-
-fn weighted(cases: &[(f64, Vec<LoadSum>)]) -> (f64, Vec<LoadSum>) {
-    let share: f64 = cases.iter().map(|c| c.0).sum();
-    let classes = cases[0].1.len();
-    let mut sums = vec![LoadSum::NONE; classes];
-    for (p, each) in cases {
-        for (into, sum) in sums.iter_mut().zip(each) {
-            *into += sum.share(Fraction(p / share));
-        }
-    }
-    (share, sums)
 }

@@ -1,5 +1,6 @@
 //! What accessories draw: the laws, and the sums of those that are on together.
 
+mod cases;
 pub mod coincidence;
 mod tally;
 
