@@ -29,11 +29,7 @@ fn read(text: &str, set: &[String]) -> (Description, Build) {
 fn sizes(text: &str) -> Size {
     let (description, build) = read(text, &[]);
     let catalogs = Catalogs::builtin();
-    let asked = Asked {
-        description: &description,
-        build: &build,
-        catalogs: &catalogs,
-    };
+    let asked = Asked::new(&description, &build, &catalogs);
     size(&asked, &Options::default(), &mut |_, _| {}).expect("an answer")
 }
 
@@ -243,11 +239,7 @@ fn the_guideline_of_eighty_per_cent() {
 fn progress_counts_to_its_end() {
     let (description, build) = read(size_builds::MOWER, &[]);
     let catalogs = Catalogs::builtin();
-    let asked = Asked {
-        description: &description,
-        build: &build,
-        catalogs: &catalogs,
-    };
+    let asked = Asked::new(&description, &build, &catalogs);
     let mut steps = Vec::new();
     size(&asked, &Options::default(), &mut |done, all| {
         steps.push((done, all))

@@ -16,6 +16,7 @@ use anyhow::Context;
 pub fn run(args: &RemedyArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
     let mut opened = input::build(&args.file, &args.build, &catalogs)?;
+    let own = opened.description.accessories.len();
     if let Some(kit) = &args.with {
         opened = input::with_kit(&opened, kit, &args.build, &catalogs)?;
     }
@@ -24,9 +25,8 @@ pub fn run(args: &RemedyArgs, common: &Common) -> anyhow::Result<u8> {
         None => Prices::default(),
     };
     let asked = Asked {
-        description: &opened.description,
-        build: &opened.build,
-        catalogs: &catalogs,
+        own,
+        ..Asked::new(&opened.description, &opened.build, &catalogs)
     };
     let progress = Progress::new(1, "combinations");
     let answer = remedy(&asked, &prices, &mut |done, all| {

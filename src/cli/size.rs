@@ -16,13 +16,13 @@ use anyhow::Context;
 pub fn run(args: &SizeArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
     let mut opened = input::build(&args.file, &args.build, &catalogs)?;
+    let own = opened.description.accessories.len();
     if let Some(kit) = &args.with {
         opened = input::with_kit(&opened, kit, &args.build, &catalogs)?;
     }
     let asked = Asked {
-        description: &opened.description,
-        build: &opened.build,
-        catalogs: &catalogs,
+        own,
+        ..Asked::new(&opened.description, &opened.build, &catalogs)
     };
     let progress = Progress::new(1, "sizes");
     let answer = size::size(&asked, &Options::default(), &mut |done, all| {

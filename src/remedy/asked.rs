@@ -15,6 +15,26 @@ pub struct Asked<'a> {
     pub build: &'a Build,
     /// Where parts are found.
     pub catalogs: &'a Catalogs,
+    /// Accessories that stand in the file; those after them came with a kit, and no `--set` reaches
+    /// them.
+    pub own: usize,
+}
+
+impl<'a> Asked<'a> {
+    /// A build all of which stands in its file.
+    #[must_use]
+    pub fn new(
+        description: &'a Description,
+        build: &'a Build,
+        catalogs: &'a Catalogs,
+    ) -> Asked<'a> {
+        Asked {
+            description,
+            build,
+            catalogs,
+            own: description.accessories.len(),
+        }
+    }
 }
 
 impl Asked<'_> {
@@ -26,6 +46,12 @@ impl Asked<'_> {
         build.air = self.build.air.clone();
         build.start = self.build.start;
         Some(build)
+    }
+
+    /// Whether a path leads into the file: not to an accessory of a kit.
+    pub(crate) fn in_file(&self, path: &str) -> bool {
+        let mut of_kit = self.description.accessories.iter().skip(self.own);
+        !of_kit.any(|a| path.starts_with(&a.path))
     }
 
     /// The parts of a kind, read, in the order of their catalogs. Entries that do not read are left out.

@@ -128,6 +128,13 @@ pub fn remedy(
         .collect();
     answers.sort_by(|a, b| a.0.cmp(&b.0));
     remedy.answers = answers.into_iter().map(|(_, answer)| answer).collect();
+    let sets = remedy.answers.iter().flat_map(|a| &a.set);
+    let out_of_reach = |set: &String| set.split('=').next().is_some_and(|p| !asked.in_file(p));
+    if sets.into_iter().any(out_of_reach) {
+        let note =
+            "accessories of the kit are out of reach of --set: fit the part in the kit itself";
+        remedy.notes.push(note.to_owned());
+    }
     if remedy.answers.is_empty() {
         remedy.binds = Some(all_that_may(asked, &slots));
     }

@@ -112,11 +112,7 @@ fn the_search_equals_trying_everything() {
     ] {
         let text = text(work, head, minutes);
         let (description, build) = read(&text, &[], &catalogs);
-        let asked = Asked {
-            description: &description,
-            build: &build,
-            catalogs: &catalogs,
-        };
+        let asked = Asked::new(&description, &build, &catalogs);
         let slots = own(offers(&asked, &Prices::default(), false));
         assert!(slots.len() >= 4, "{slots:?}");
         let want = by_force(&asked, &slots);
@@ -138,11 +134,7 @@ fn assignments_make_the_same_builds() {
     let catalogs = small(&folder);
     let text = text(150.0, 55.0, 30.0);
     let (description, build) = read(&text, &[], &catalogs);
-    let asked = Asked {
-        description: &description,
-        build: &build,
-        catalogs: &catalogs,
-    };
+    let asked = Asked::new(&description, &build, &catalogs);
     let slots = own(offers(&asked, &Prices::default(), true));
     let mut kinds = 0;
     for slot in &slots {
@@ -166,11 +158,7 @@ fn answers_are_priced_and_in_order() {
     let catalogs = Catalogs::builtin();
     let text = text(150.0, 55.0, 30.0);
     let (description, build) = read(&text, &[], &catalogs);
-    let asked = Asked {
-        description: &description,
-        build: &build,
-        catalogs: &catalogs,
-    };
+    let asked = Asked::new(&description, &build, &catalogs);
     let found = remedy(&asked, &Prices::default(), &mut |_, _| {}).expect("answers");
     assert!(
         !found.keeps_up && (2..=super::MOST).contains(&found.answers.len()),
@@ -231,11 +219,7 @@ fn may_limits_what_is_offered() {
         text(170.0, 110.0, 45.0)
     );
     let (description, build) = read(&limited, &[], &catalogs);
-    let asked = Asked {
-        description: &description,
-        build: &build,
-        catalogs: &catalogs,
-    };
+    let asked = Asked::new(&description, &build, &catalogs);
     let found = remedy(&asked, &Prices::default(), &mut |_, _| {}).expect("answers");
     assert!(!found.answers.is_empty(), "{found:?}");
     for set in found.answers.iter().flat_map(|a| &a.set) {
@@ -261,11 +245,7 @@ fn changes_of_degree_are_tight() {
         (verdict != Verdict::KeepsUp).then_some((limited, description, build))
     });
     let (limited, description, build) = short.expect("one falls short");
-    let asked = Asked {
-        description: &description,
-        build: &build,
-        catalogs: &catalogs,
-    };
+    let asked = Asked::new(&description, &build, &catalogs);
     let found = remedy(&asked, &Prices::default(), &mut |_, _| {}).expect("answers");
     let set = &found.answers.first().expect("an answer").set;
     assert_eq!(set.len(), 1, "{set:?}");
@@ -310,4 +290,30 @@ fn effort_orders_unknown_prices_last() {
             .is_gt()
     );
     assert_eq!(of(&[cheap, unknown]).cost(), None);
+}
+
+#[test]
+fn price_lists_are_read_and_refused() {
+    let folder = tempfile::tempdir().expect("a folder");
+    let path = folder.path().join("prices.yaml");
+    let list = |text: &str| {
+        std::fs::write(&path, text).expect("a file");
+        super::read_prices(&path)
+    };
+    let good = list("currency: EUR\nprices: {winding-20a: 199, charger: 45.5}\n").expect("a list");
+    assert_eq!(good.currency, "EUR");
+    assert_eq!(good.of("charger", None), Some(crate::quantity::Money(45.5)));
+    let catalog = Some(crate::quantity::Money(7.0));
+    assert_eq!(good.of("winding-16a", catalog), catalog);
+    for (text, at) in [
+        ("currency: EUR\nprices: {winding-20a: -1}\n", ":2:"),
+        ("prices:\n  winding-20a: 12 V\n", ":2:"),
+        ("currency: EUR\nprice: {winding-20a: 1}\n", ":2:"),
+        ("currency: EUR\n", ""),
+        ("prices: {a: .nan}\n", ":1:"),
+        ("[1, 2]\n", ""),
+    ] {
+        let refusal = list(text).expect_err(text).to_string();
+        assert!(refusal.contains(at), "{text}: {refusal}");
+    }
 }

@@ -126,7 +126,11 @@ pub fn size(
             now_keeps,
         };
         let found = search.run();
-        answers.extend(found.map(|found| answer(build, knob, found, &fitted)));
+        answers.extend(found.map(|found| {
+            let mut answer = answer(build, knob, found, &fitted);
+            answer.set = answer.set.filter(|path| asked.in_file(path));
+            answer
+        }));
         step();
     }
     let ranked = influence(build);
