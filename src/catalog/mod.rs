@@ -194,6 +194,12 @@ impl Catalogs {
         })
     }
 
+    /// The user's entries alone, in the order of their files.
+    #[must_use]
+    pub fn own(&self) -> &[Entry] {
+        &self.own
+    }
+
     /// The entry of an id.
     #[must_use]
     pub fn find(&self, kind: Kind, id: &str) -> Option<Entry> {

@@ -140,7 +140,8 @@ impl Machine {
             }
             changes = [changes[1], passed.end.soc.0 - charge.soc.0];
             lowest = passed.lowest;
-            if changes[1].abs() < STILL {
+            // a charge that is no number stays none: those who ask refuse it
+            if changes[1].abs() < STILL || changes[1].is_nan() {
                 return Approach::Decided(Outlook::Settles {
                     charge: passed.end,
                     lowest,

@@ -7,7 +7,7 @@ use std::path::Path;
 /// The text of every example build.
 pub fn examples() -> Vec<String> {
     let folder = Path::new(env!("CARGO_MANIFEST_DIR"));
-    let folder = folder.ancestors().find(|f| f.join("examples").is_dir());
+    let folder = folder.ancestors().find(|f| f.join("catalogs").is_dir());
     let folder = folder.expect("the folder of examples").join("examples");
     let entries = std::fs::read_dir(folder).expect("the examples");
     let mut paths: Vec<_> = entries.map(|e| e.expect("an example").path()).collect();

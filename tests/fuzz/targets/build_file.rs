@@ -25,11 +25,17 @@ fuzz_target!(|bytes: &[u8]| {
 fn told(refusal: &Refusal) {
     assert!(!refusal.problems().is_empty());
     let text = refusal.render(false);
-    assert!(text.starts_with("error: ") && !text.contains('\u{1b}'), "{text}");
+    assert!(
+        text.starts_with("error: ") && !text.contains('\u{1b}'),
+        "{text}"
+    );
     let lines = refusal.source().text.split('\n').count().max(1);
     for problem in refusal.problems().iter() {
         if let Some((line, column)) = refusal.source().place(problem) {
-            assert!((1..=lines).contains(&line) && column >= 1, "{line}:{column} of {lines} lines");
+            assert!(
+                (1..=lines).contains(&line) && column >= 1,
+                "{line}:{column} of {lines} lines"
+            );
         }
     }
 }
