@@ -7,21 +7,24 @@ mod builds;
 mod edits;
 #[path = "hostile/numbers.rs"]
 mod numbers;
+#[path = "hostile/tried.rs"]
+mod tried;
 
 use ampledger::battery::Charge;
-use ampledger::build::Build;
+use ampledger::build::{Build, Draw};
 use ampledger::catalog::Catalogs;
 use ampledger::check::answer::{Check, Verdict};
-use ampledger::check::{SolveError, Wanted, check, first_shift, rule_on};
+use ampledger::check::{SolveError, Wanted, check, first_shift, judge, rule_on};
 use ampledger::curve::curve;
 use ampledger::description::read;
 use ampledger::ledger::Machine;
 use ampledger::problem::Refusal;
-use ampledger::quantity::{AmpHours, Amps, Fraction, Rpm, Volts};
+use ampledger::quantity::{AmpHours, Amps, Fraction, Ohms, Rpm, Volts};
 use ampledger::resolve::resolve;
 use ampledger::root::{RootError, bracketed};
 use builds::{Draft, Load, draft};
 use proptest::prelude::*;
+use std::path::Path;
 
 /// The build of a text that must be accepted.
 fn built(text: &str) -> Build {
@@ -219,18 +222,74 @@ fn a_search_that_does_not_end_is_an_error() {
 #[test]
 fn figures_that_are_none_get_no_answer() {
     let good = built(ampledger::starter_build::Kind::SeriesRegulated.text());
-    type Spoil = fn(&mut Build);
-    let spoil: [(&str, Spoil); 2] = [
-        ("air", |b| b.air.value.0 = f64::NAN),
-        ("start", |b| b.start.0 = f64::NAN),
+    type Spoil = fn(&mut Build, f64);
+    let spoil: [(&str, Spoil); 9] = [
+        ("air", |b, x| b.air.value.0 = x),
+        ("time", |b, x| b.shift[1].time.value.0 = x),
+        ("parked", |b, x| b.parked.value.0 = x),
+        ("start", |b, x| b.start.0 = x),
+        ("duty", |b, x| b.accessories[0].duty.running[0].value.0 = x),
+        ("draw", |b, x| {
+            b.accessories[0].draw.value = Draw::Current(Amps(x))
+        }),
+        ("speed", |b, x| b.speeds[0].rpm.value.0 = x),
+        ("starter", |b, x| {
+            b.starter.as_mut().expect("a starter").draw.value.0 = x
+        }),
+        ("capacity", |b, x| {
+            b.battery.as_mut().expect("a battery").label.capacity.0 = x
+        }),
     ];
     for (what, spoil) in spoil {
-        let mut build = good.clone();
-        spoil(&mut build);
-        let answer = check(&build, Wanted::default()).map(|checked| checked.check);
-        assert!(
-            matches!(answer, Err(SolveError::NotFinite)),
-            "{what}: {answer:?}"
-        );
+        for x in [f64::NAN, f64::INFINITY, f64::NEG_INFINITY] {
+            let mut build = good.clone();
+            spoil(&mut build, x);
+            let answer = check(&build, Wanted::default()).map(|checked| checked.check);
+            assert!(
+                matches!(answer, Err(SolveError::NotFinite)),
+                "{what} {x}: {answer:?}"
+            );
+            let judged = judge(&build).map(|judged| judged.verdict());
+            assert!(
+                matches!(judged, Err(SolveError::NotFinite)),
+                "{what} {x}: {judged:?}"
+            );
+        }
     }
+}
+
+/// A number so small that what is divided by it runs beyond all numbers gets no answer either: no file can give it.
+#[test]
+fn answers_beyond_all_numbers_are_not_given() {
+    let mut build = built(ampledger::starter_build::Kind::SeriesRegulated.text());
+    build.accessories[0].draw.value = Draw::Resistance(Ohms(1e-308));
+    let answer = check(&build, Wanted::default()).map(|checked| checked.check);
+    assert!(matches!(answer, Err(SolveError::NotFinite)), "{answer:?}");
+}
+
+/// What the fuzzing targets once found, through the same code.
+#[test]
+fn what_was_once_found_stays_mended() {
+    type Tried = fn(&[u8]);
+    let targets: [(&str, Tried); 5] = [
+        ("build_file", tried::build_file),
+        ("catalog", tried::catalog),
+        ("chain", tried::chain),
+        ("readings", tried::readings),
+        ("fleet_csv", tried::fleet_csv),
+    ];
+    let found = Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/hostile/found");
+    let mut inputs = 0;
+    for (target, tried) in targets {
+        let Ok(entries) = std::fs::read_dir(found.join(target)) else {
+            continue;
+        };
+        for entry in entries {
+            let path = entry.expect("an entry").path();
+            println!("{}", path.display());
+            tried(&std::fs::read(&path).expect("its bytes"));
+            inputs += 1;
+        }
+    }
+    assert!(inputs >= 6, "{inputs} inputs");
 }

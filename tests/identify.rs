@@ -1,6 +1,6 @@
 //! A winding's constants from bench tables made by the winding itself: exact, and with noise.
 
-use ampledger::identify::{Identified, IdentifyError, Note, Reading, Readings, identify};
+use ampledger::identify::{Identified, IdentifyError, Note, Reading, Readings, identify, read_csv};
 use ampledger::quantity::{Amps, Celsius, Henries, Ohms, Rpm, Volts, VoltsPerRpm};
 use ampledger::source::{Magnets, Phases, Rectifier, Winding, Working, rectified_dc};
 
@@ -146,9 +146,12 @@ fn inside(bench: &Bench, tables: u64, noise: f64, even: bool) -> [usize; 3] {
             &found.resistance_spread,
             &found.inductance_spread,
         );
-        inside[0] += usize::from(k.low_95.0 < bench.k && bench.k < k.high_95.0);
-        inside[1] += usize::from(r.low_95.0 < bench.r && bench.r < r.high_95.0);
-        inside[2] += usize::from(l.low_95.0 < bench.l && bench.l < l.high_95.0);
+        inside[0] +=
+            usize::from(k.low_95.0 < bench.k && k.high_95.is_none_or(|high| bench.k < high.0));
+        inside[1] +=
+            usize::from(r.low_95.0 < bench.r && r.high_95.is_none_or(|high| bench.r < high.0));
+        inside[2] +=
+            usize::from(l.low_95.0 < bench.l && l.high_95.is_none_or(|high| bench.l < high.0));
     }
     inside
 }
@@ -355,4 +358,16 @@ fn json_names_stay() {
         assert!(json[name].is_number(), "{name} in {json}");
     }
     assert!(json["inductance_spread"]["low_95"].is_number());
+}
+
+/// Two rows at nearly one speed, both far beyond where the current has stopped to rise: they set no upper limit to the
+/// EMF, and the answer says so rather than a number beyond all.
+#[test]
+fn where_there_is_no_upper_limit_it_says_so() {
+    let table = include_str!("hostile/found/readings/no-upper-limit.csv");
+    let found = identify(&read_csv("bench.csv", table).unwrap()).unwrap();
+    assert_eq!(found.open_circuit_spread.high_95, None, "{found:?}");
+    let notes: Vec<String> = found.notes.iter().map(ToString::to_string).collect();
+    let said = "do not pin down the open-circuit volts: anything from 0 V per 1000 rpm up fits";
+    assert!(notes.iter().any(|note| note.contains(said)), "{notes:?}");
 }

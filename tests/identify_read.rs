@@ -84,6 +84,14 @@ fn errors_name_their_line() {
         told(&CSV.replace("6.66", "6.66 V")).to_string(),
         "line 7: `6.66 V` is no number for `amps`"
     );
+    assert_eq!(
+        told(&CSV.replace("6.66", "-6.66")).to_string(),
+        "line 7: current of a reading may not be negative: `-6.66`"
+    );
+    assert_eq!(
+        told(&CSV.replace("2400,", "2400e3 rpm,")).to_string(),
+        "line 7: speed is above the limit of 30000 rpm: `2400e3 rpm`"
+    );
     assert!(matches!(
         told(&CSV.replace("2400,13.2,6.66", "2400,13.2")),
         ReadError::Table { line: Some(7), .. }

@@ -1,9 +1,10 @@
 //! What is printed on a battery, and what its chemistry adds where the label is silent.
 
 use crate::quantity::{AmpHours, Amps, Celsius, Fraction, Hours, Ohms, Volts};
+use serde::Serialize;
 
 /// How the acid is held in a lead-acid battery.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
 pub enum Chemistry {
     /// Liquid acid, vented.
     Flooded,
@@ -15,7 +16,7 @@ pub enum Chemistry {
 
 /// What a label states of one battery. Everything but chemistry, cells and
 /// 20 h capacity may be missing.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Copy, Debug, PartialEq, Serialize)]
 pub struct Label {
     /// Capacity at the 20 h rate to 1.75 V per cell at 25 °C.
     pub capacity: AmpHours,

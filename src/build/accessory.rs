@@ -3,9 +3,10 @@
 use super::{Figure, State};
 use crate::description::accessory::LoadKind;
 use crate::quantity::{Amps, Celsius, Fraction, Henries, Hours, Metres, Money, Ohms, Volts, Watts};
+use serde::Serialize;
 
 /// One accessory, or several alike.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct Accessory {
     /// Name in the answers; unique in a build.
     pub name: String,
@@ -46,7 +47,7 @@ pub struct Accessory {
 }
 
 /// What one accessory draws, in the law it follows.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Copy, Debug, PartialEq, Serialize)]
 pub enum Draw {
     /// The same current at any volts.
     Current(Amps),
@@ -64,7 +65,7 @@ pub enum Draw {
 }
 
 /// Shares of the time on, by state.
-#[derive(Clone, Debug, PartialEq)]
+#[derive(Clone, Debug, PartialEq, Serialize)]
 pub struct Duty {
     /// At each named speed, in the order of the build's speeds.
     pub running: Vec<Figure<Fraction>>,
@@ -75,7 +76,7 @@ pub struct Duty {
 }
 
 /// Volts within which an accessory works.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Copy, Debug, PartialEq, Serialize)]
 pub struct Works {
     /// Drops out below; none never does.
     pub low: Option<Volts>,
@@ -86,7 +87,7 @@ pub struct Works {
 }
 
 /// Surge at switch-on.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Copy, Debug, PartialEq, Serialize)]
 pub struct Inrush {
     /// Times its steady current.
     pub times: Fraction,
@@ -95,7 +96,7 @@ pub struct Inrush {
 }
 
 /// How an accessory's wire runs.
-#[derive(Clone, Debug, PartialEq)]
+#[derive(Clone, Debug, PartialEq, Serialize)]
 pub struct Wire {
     /// One-way length, where stated.
     pub run: Option<Metres>,

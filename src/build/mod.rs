@@ -10,9 +10,10 @@ pub use source::{Alternator, Regulator, Source, SourceKind, WindingSource};
 
 use crate::battery::{self, Label};
 use crate::quantity::{Amps, Celsius, Fraction, Hours, Money, Ohms, Rpm, Tolerance, Volts};
+use serde::Serialize;
 
 /// Where a number comes from.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
 pub enum Origin {
     /// The user wrote it.
     Stated,
@@ -23,7 +24,7 @@ pub enum Origin {
 }
 
 /// A number with its origin, its tolerance, and the path that `--set` takes to change it.
-#[derive(Clone, Debug, PartialEq)]
+#[derive(Clone, Debug, PartialEq, Serialize)]
 pub struct Figure<T> {
     /// The value.
     pub value: T,
@@ -47,7 +48,7 @@ pub struct Assumed {
 }
 
 /// A complete build.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct Build {
     /// Its name.
     pub name: String,
@@ -84,7 +85,7 @@ pub struct Build {
 }
 
 /// A named engine speed.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct Speed {
     /// Its name.
     pub name: String,
@@ -93,7 +94,7 @@ pub struct Speed {
 }
 
 /// The starter and what its starts ask of the battery.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct Starter {
     /// Current while cranking a warm (27 °C) engine.
     pub draw: Figure<Amps>,
@@ -125,7 +126,7 @@ impl Starter {
 }
 
 /// The battery: its label, and what the user wants kept in it.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct BatterySpec {
     /// The label's figures.
     pub label: Label,
@@ -142,7 +143,7 @@ pub struct BatterySpec {
 }
 
 /// What the machine is doing.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize)]
 pub enum State {
     /// Engine running at a named speed: index into [`Build::speeds`].
     Running(usize),
@@ -155,7 +156,7 @@ pub enum State {
 }
 
 /// One step of the shift.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct Step {
     /// What the machine does.
     pub state: State,
@@ -164,7 +165,7 @@ pub struct Step {
 }
 
 /// Shifts on successive days, then days without.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
 pub struct Days {
     /// Shifts in a row.
     pub shifts: u32,
@@ -173,7 +174,7 @@ pub struct Days {
 }
 
 /// A shop charger, plugged in while parked.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct Charger {
     /// Its most current.
     pub amps: Figure<Amps>,

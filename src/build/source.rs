@@ -8,9 +8,10 @@ use crate::quantity::{
 use crate::source::{
     ConstantsError, Known, Magnets, OutputCurve, Phases, Rating, Rectifier, Winding, Working,
 };
+use serde::Serialize;
 
 /// One source of current.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct Source {
     /// Name in the answers.
     pub name: String,
@@ -31,7 +32,7 @@ pub struct Source {
 }
 
 /// Winding or alternator.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub enum SourceKind {
     /// A flywheel winding with its rectifier.
     Winding(Box<WindingSource>),
@@ -40,7 +41,7 @@ pub enum SourceKind {
 }
 
 /// A winding as it stands in the build: measured figures, and the constants that follow.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct WindingSource {
     /// Open-circuit rms volts between two leads at 20 °C.
     pub open_circuit: Figure<(Volts, Rpm)>,
@@ -67,7 +68,7 @@ pub struct WindingSource {
 }
 
 /// A belt-driven alternator.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct Alternator {
     /// Output curve by alternator speed.
     pub curve: OutputCurve,
@@ -80,7 +81,7 @@ pub struct Alternator {
 }
 
 /// A regulator.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Serialize)]
 pub struct Regulator {
     /// Setpoint at 25 °C.
     pub holds: Figure<Volts>,

@@ -8,7 +8,7 @@ use std::fmt;
 pub enum SolveError {
     /// Asked for the charge of a battery that is not there.
     NoBattery,
-    /// The search for the charge or the current ended in something that is no number.
+    /// A figure of the build or of the answer is infinite or no number.
     NotFinite,
     /// The engine never runs at a named speed and the machine never stands with its key on.
     EmptyShift,

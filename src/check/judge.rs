@@ -3,10 +3,11 @@
 use super::answer::Verdict;
 use super::error::SolveError;
 use super::ruling::{Ruling, rule_on};
+use super::solvable;
 use crate::build::Build;
 use crate::circuit::{circuits, verdict_on_volts};
 use crate::ledger::Machine;
-use crate::quantity::{AmpHours, Fraction, Hours};
+use crate::quantity::{AmpHours, Fraction};
 
 /// A build judged.
 #[derive(Clone, Debug)]
@@ -55,9 +56,7 @@ impl Judged {
 /// # Errors
 /// [`SolveError`]: there is no answer.
 pub fn judge(build: &Build) -> Result<Judged, SolveError> {
-    if build.shift.iter().all(|s| s.time.value <= Hours::ZERO) {
-        return Err(SolveError::EmptyShift);
-    }
+    solvable(build)?;
     if let Some(machine) = Machine::new(build) {
         let ruling = rule_on(build, &machine)?;
         return Ok(Judged::OnCharge(Box::new(machine), ruling));

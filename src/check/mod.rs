@@ -30,7 +30,7 @@ pub use storage::{Storage, storage};
 
 use crate::build::Build;
 use crate::circuit;
-use crate::quantity::{Fraction, Hours};
+use crate::quantity::{Fraction, Hours, all_finite};
 use answer::{AccessoryRow, Check, TraceRow};
 
 /// Version of the JSON names.
@@ -59,13 +59,7 @@ pub struct Checked {
 /// # Errors
 /// [`SolveError`]: there is no answer.
 pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
-    if build
-        .shift
-        .iter()
-        .all(|step| step.time.value <= Hours::ZERO)
-    {
-        return Err(SolveError::EmptyShift);
-    }
+    solvable(build)?;
     let circuits = circuit::circuits(build).map_err(SolveError::Circuit)?;
     let mut checked = match build.battery {
         Some(_) => charged::check(build, wanted)?,
@@ -81,7 +75,23 @@ pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
         .extend(circuit::accessory_rows(build, &circuits));
     check.findings.extend(circuit::findings(build, &circuits));
     shares(&mut check.accessories);
+    if !(all_finite(&checked.check) && all_finite(&checked.trace)) {
+        return Err(SolveError::NotFinite);
+    }
     Ok(checked)
+}
+
+/// Whether there is anything to solve, and in numbers.
+fn solvable(build: &Build) -> Result<(), SolveError> {
+    if !all_finite(build) {
+        return Err(SolveError::NotFinite);
+    }
+    let empty = build.shift.iter().all(|s| s.time.value <= Hours::ZERO);
+    if empty {
+        Err(SolveError::EmptyShift)
+    } else {
+        Ok(())
+    }
 }
 
 /// Each accessory's share of the charge of all, largest first.

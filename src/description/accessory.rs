@@ -2,6 +2,7 @@
 
 use super::{ReturnPath, Written};
 use crate::quantity::{Amps, Celsius, Fraction, Henries, Hours, Metres, Money, Ohms, Volts, Watts};
+use serde::Serialize;
 
 /// One accessory as written. A catalog part has the same shape.
 #[derive(Clone, Debug, Default)]
@@ -81,7 +82,7 @@ pub enum LawName {
 }
 
 /// `kind:` what the current is to a switch or relay contact.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
 pub enum LoadKind {
     /// A filament lamp.
     Lamp,

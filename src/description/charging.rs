@@ -2,6 +2,7 @@
 
 use super::Written;
 use crate::quantity::{Amps, Celsius, Fraction, Henries, Money, Ohms, Rpm, Volts, VoltsPerKelvin};
+use serde::Serialize;
 
 /// One entry of `charging:`. A catalog winding has the same shape.
 #[derive(Clone, Debug, Default)]
@@ -113,7 +114,7 @@ pub struct RegulatorText {
 }
 
 /// Kinds of regulator.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize)]
 pub enum RegulatorKind {
     /// Opens at its setpoint.
     Series,

@@ -15,7 +15,7 @@ pub use read::{ReadError, read_csv, readings_of};
 pub use readings::{HELD_WITHIN, IdentifyError, Reading, Readings};
 pub use spread::Spread;
 
-use crate::quantity::{Amps, Henries, Ohms, Rpm, Volts, VoltsPerRpm};
+use crate::quantity::{Amps, Henries, Ohms, Rpm, Volts, VoltsPerRpm, all_finite};
 use crate::source::{Phases, Winding};
 use model::{Logs, Model};
 use serde::Serialize;
@@ -89,7 +89,14 @@ pub fn identify(readings: &Readings) -> Result<Identified, IdentifyError> {
         .ok_or(IdentifyError::NotConverged {
             residual: estimate.residual,
         })?;
-    Ok(report(readings, &model, &estimate, &winding))
+    let found = report(readings, &model, &estimate, &winding);
+    if all_finite(&found) {
+        Ok(found)
+    } else {
+        Err(IdentifyError::NotConverged {
+            residual: estimate.residual,
+        })
+    }
 }
 
 /// Constants between two leads at 20 °C for one phase at work, as factors of k, R and L.

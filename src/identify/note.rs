@@ -65,8 +65,8 @@ pub enum Note {
     NotPinned {
         /// Low end of its 95 % interval.
         low: Subject,
-        /// High end.
-        high: Subject,
+        /// High end, where the readings set one.
+        high: Option<Subject>,
     },
     /// A measured constant does not go with the readings.
     Disagrees {
@@ -95,14 +95,16 @@ impl fmt::Display for Note {
                 format::count(*rows as u32, "reading", "readings"),
                 format::text(*setpoint)
             ),
-            Note::NotPinned { low, high } => write!(
-                f,
-                "the readings do not pin down the {}: anything from {} to {} fits about as well; {}",
-                low.name(),
-                low.value(),
-                high.value(),
-                low.remedy()
-            ),
+            Note::NotPinned { low, high } => {
+                let upwards = high.map_or("up".to_owned(), |high| format!("to {}", high.value()));
+                write!(
+                    f,
+                    "the readings do not pin down the {}: anything from {} {upwards} fits about as well; {}",
+                    low.name(),
+                    low.value(),
+                    low.remedy()
+                )
+            }
             Note::Disagrees { measured, alone } => write!(
                 f,
                 "the measured {} of {} does not go with the readings, which alone lead to {}; check both",
@@ -162,15 +164,15 @@ pub(super) fn notes(
     let intervals = [
         (
             Subject::OpenCircuit(k.low_95),
-            Subject::OpenCircuit(k.high_95),
+            k.high_95.map(Subject::OpenCircuit),
         ),
         (
             Subject::Resistance(r.low_95),
-            Subject::Resistance(r.high_95),
+            r.high_95.map(Subject::Resistance),
         ),
         (
             Subject::Inductance(l.low_95),
-            Subject::Inductance(l.high_95),
+            l.high_95.map(Subject::Inductance),
         ),
     ];
     for (index, (low, high)) in intervals.into_iter().enumerate() {

@@ -4,6 +4,7 @@ use super::readings::{Reading, Readings};
 use crate::description::charging::{RectifierKind, RectifierText};
 use crate::description::{ChargingText, read_charging};
 use crate::problem::Refusal;
+use crate::quantity::bounds::{self, Bounds, OutOfBounds};
 use crate::quantity::parse::parse;
 use crate::quantity::unit::Unit;
 use crate::quantity::{Amps, Rpm, Volts};
@@ -41,6 +42,15 @@ pub enum ReadError {
         /// What stands there.
         found: String,
     },
+    /// A cell lies beyond what its column may hold.
+    OutOfBounds {
+        /// Line of the file, from 1.
+        line: u64,
+        /// What stands there.
+        found: String,
+        /// The limit that it breaks.
+        broken: OutOfBounds,
+    },
     /// The table itself cannot be taken apart.
     Table {
         /// Line of the file, from 1, where it is known.
@@ -73,6 +83,11 @@ impl fmt::Display for ReadError {
             } => {
                 write!(f, "line {line}: `{found}` is no number for `{column}`")
             }
+            ReadError::OutOfBounds {
+                line,
+                found,
+                broken,
+            } => write!(f, "line {line}: {broken}: `{found}`"),
             ReadError::Table {
                 line: Some(line),
                 why,
@@ -187,9 +202,9 @@ pub fn read_csv(name: &str, text: &str) -> Result<Readings, ReadError> {
     for record in reader.records() {
         let record = record.map_err(|e| table(&e))?;
         readings.rows.push(Reading {
-            rpm: cell(&record, rpm, Rpm)?,
-            bus: cell(&record, volts, Volts)?,
-            amps: cell(&record, amps, Amps)?,
+            rpm: cell(&record, rpm, Rpm, &bounds::TURNING)?,
+            bus: cell(&record, volts, Volts, &bounds::READING_VOLTS)?,
+            amps: cell(&record, amps, Amps, &bounds::READING_CURRENT)?,
         });
     }
     if readings.rows.is_empty() {
@@ -215,27 +230,35 @@ fn table(error: &csv::Error) -> ReadError {
     }
 }
 
-/// A number in the column's unit, with or without the unit written.
+/// A number in the column's unit, with or without the unit written, within what it may be.
 fn cell<Q: Unit>(
     record: &csv::StringRecord,
     (index, column): (usize, &'static str),
     of: fn(f64) -> Q,
+    bounds: &Bounds<Q>,
 ) -> Result<Q, ReadError> {
     let found = record.get(index).unwrap_or_default();
-    if let Ok(number) = found.parse::<f64>()
-        && number.is_finite()
-    {
-        return Ok(of(number));
-    }
-    match parse::<Q>(found) {
-        Ok(measured) => Ok(measured.value),
-        Err(_) => {
-            let line = record.position().map_or(0, csv::Position::line);
-            Err(ReadError::Cell {
-                line,
-                column,
-                found: found.to_owned(),
-            })
-        }
+    let line = record.position().map_or(0, csv::Position::line);
+    let value = match found.parse::<f64>() {
+        Ok(number) if number.is_finite() => of(number),
+        _ => match parse::<Q>(found) {
+            Ok(measured) => measured.value,
+            Err(_) => {
+                let found = found.to_owned();
+                return Err(ReadError::Cell {
+                    line,
+                    column,
+                    found,
+                });
+            }
+        },
+    };
+    match bounds.check(value) {
+        Ok(()) => Ok(value),
+        Err(broken) => Err(ReadError::OutOfBounds {
+            line,
+            found: found.to_owned(),
+            broken,
+        }),
     }
 }

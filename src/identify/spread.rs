@@ -13,17 +13,17 @@ pub struct Spread<Q> {
     pub one_sigma: Fraction,
     /// Low end of the interval that holds the true value in 95 of 100 such tables.
     pub low_95: Q,
-    /// High end of it.
-    pub high_95: Q,
+    /// High end of it; none where the readings set no upper limit.
+    pub high_95: Option<Q>,
 }
 
 impl<Q> Spread<Q> {
     /// The same with the ends as another quantity.
-    pub(super) fn map<P>(self, form: impl Fn(Q) -> P) -> Spread<P> {
+    pub(super) fn map<P>(self, form: impl Fn(Q) -> P + Copy) -> Spread<P> {
         Spread {
             one_sigma: self.one_sigma,
             low_95: form(self.low_95),
-            high_95: form(self.high_95),
+            high_95: self.high_95.map(form),
         }
     }
 }
@@ -48,7 +48,7 @@ impl Estimate {
         Spread {
             one_sigma: Fraction(self.sigma[index]),
             low_95: value / reach,
-            high_95: value * reach,
+            high_95: Some(value * reach).filter(|high| high.is_finite()),
         }
     }
 }

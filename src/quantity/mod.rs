@@ -18,10 +18,13 @@
 //! ```
 
 pub mod bounds;
+mod finite;
 pub mod format;
 pub mod ops;
 pub mod parse;
 pub mod unit;
+
+pub use finite::all_finite;
 
 use serde::Serialize;
 

@@ -37,15 +37,16 @@ fn constants(answer: &Identified) -> Table {
             row(
                 "open-circuit volts at 1000 rpm",
                 volts(answer.open_circuit_v_per_rpm),
-                [emf.low_95, emf.high_95].map(volts),
+                (volts(emf.low_95), emf.high_95.map(volts)),
             ),
-            row("resistance", answer.resistance_ohm, [r.low_95, r.high_95]),
-            row("inductance", answer.inductance_h, [l.low_95, l.high_95]),
+            row("resistance", answer.resistance_ohm, (r.low_95, r.high_95)),
+            row("inductance", answer.inductance_h, (l.low_95, l.high_95)),
         ])
 }
 
-fn row<Q: Written>(name: &str, value: Q, ends: [Q; 2]) -> [Cell; 3] {
-    let [low, high] = ends.map(format::text);
+fn row<Q: Written>(name: &str, value: Q, (low, high): (Q, Option<Q>)) -> [Cell; 3] {
+    let low = format::text(low);
+    let high = high.map_or("anything".to_owned(), format::text);
     [
         Cell::name(name),
         Cell::text(format::text(value)),
