@@ -4,7 +4,6 @@
 /// character (common practice; a wide fallback font takes about that).
 #[must_use]
 pub fn text_width(text: &str, size: f64) -> f64 {
-    #[allow(clippy::cast_precision_loss)]
     let characters = text.chars().count() as f64;
     characters * size * 0.6
 }

@@ -76,7 +76,6 @@ fn step(unit: &str, span: f64, most: usize) -> f64 {
     const HOURS: [f64; 12] = [
         0.25, 0.5, 1.0, 2.0, 3.0, 4.0, 6.0, 8.0, 12.0, 24.0, 48.0, 96.0,
     ];
-    #[allow(clippy::cast_precision_loss)]
     let fits = |step: f64| span / step <= most as f64 - 1.0 + 1e-9;
     let hours = HOURS
         .into_iter()

@@ -35,7 +35,7 @@ pub const WIDE: Size = Size {
 /// For telephones.
 pub const NARROW: Size = Size {
     width: 360.0,
-    plot: 170.0,
+    plot: 145.0,
     text: 12.0,
     ticks: 5,
     margin: 76.0,
@@ -219,7 +219,9 @@ impl Frame<'_> {
                     (svg_fill::fill(layer.role, &self.outline(pieces), self.bounds(pieces), &self.clip(layer.role, "")))
                 }
                 @if layer.role == Role::Draw {
-                    path class="line draw" d=(self.path(upper_edge(pieces), false)) {}
+                    @for edge in upper_edges(pieces) {
+                        path class="line draw" d=(self.path(edge.into_iter(), false)) {}
+                    }
                 }
             },
         }
@@ -364,9 +366,22 @@ fn span_class(index: usize, tone: Tone) -> &'static str {
     }
 }
 
-/// The upper edge of an area's pieces as one line.
-fn upper_edge(pieces: &[Vec<(f64, f64, f64)>]) -> impl Iterator<Item = (f64, f64)> {
-    pieces.iter().flatten().map(|(x, _, high)| (*x, *high))
+/// The upper edges of an area's pieces: one line for those that meet.
+fn upper_edges(pieces: &[Vec<(f64, f64, f64)>]) -> Vec<Vec<(f64, f64)>> {
+    let mut edges: Vec<Vec<(f64, f64)>> = Vec::new();
+    for piece in pieces {
+        let edge = piece.iter().map(|(x, _, high)| (*x, *high));
+        let meets = |line: &&mut Vec<(f64, f64)>| {
+            let end = line.last().map(|(x, _)| *x);
+            end.zip(piece.first().map(|(x, _, _)| *x))
+                .is_some_and(|(end, begin)| begin - end <= 1e-9)
+        };
+        match edges.last_mut().filter(meets) {
+            Some(line) => line.extend(edge),
+            None => edges.push(edge.collect()),
+        }
+    }
+    edges
 }
 
 #[cfg(test)]
@@ -392,6 +407,22 @@ mod tests {
             svg.contains("class=\"line supply\" d=\"M46 10L376 10L376 137.5L706 137.5\""),
             "{svg}"
         );
+    }
+
+    #[test]
+    fn nothing_drawn_leaves_a_gap_in_the_edge() {
+        let step = |from: f64, to: f64, high: f64| (Hours(from), Hours(to), Amps(0.0), Amps(high));
+        let steps = [
+            step(0.0, 1.0, 5.0),
+            step(1.0, 2.0, 8.0),
+            step(2.0, 3.0, 0.0),
+            step(3.0, 4.0, 8.0),
+        ];
+        let chart = Plot::<Hours, Amps>::new("t")
+            .step_area("", Role::Draw, steps)
+            .finish("d");
+        let svg = drawn(&chart, WIDE);
+        assert_eq!(svg.matches("class=\"line draw\"").count(), 2, "{svg}");
     }
 
     #[test]

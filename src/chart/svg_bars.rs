@@ -18,12 +18,11 @@ pub(super) fn draw(bars: &Bars, size: Size) -> (f64, Markup) {
     let left = if narrow {
         0.0
     } else {
-        (names + 12.0).min(size.width * 0.4)
+        (names + 12.0).min(size.width * 0.55)
     };
     let room = (size.width - left - values).max(20.0);
     let row = if narrow { 38.0 } else { 26.0 };
     let top = |index: usize| {
-        #[allow(clippy::cast_precision_loss)]
         let rows = index as f64;
         4.0 + rows * row
     };

@@ -23,7 +23,6 @@ impl Frame<'_> {
             .fold(0.0, f64::max);
         let width = width * BOLD + 2.0;
         let line_height = self.size.text + 3.0;
-        #[allow(clippy::cast_precision_loss)]
         let height = line_height * lines.len() as f64;
         let mut candidates = Vec::new();
         for row in 0..14 {
@@ -42,7 +41,7 @@ impl Frame<'_> {
         let place = obstacles.place(&candidates, &self.area);
         html! {
             @if let Some(place) = place {
-                (text_lines(&lines, class, place.left + 1.0, place.top + self.size.text, line_height))
+                (text_lines(&lines, &format!("over {class}"), place.left + 1.0, place.top + self.size.text, line_height))
             }
         }
     }
@@ -68,7 +67,6 @@ impl Frame<'_> {
             let lines = labels::wrap(&reference.label, width, self.size.text);
             entries.push((self.y.place(reference.at), lines, class(reference.role)));
         }
-        #[allow(clippy::cast_precision_loss)]
         let wanted: Vec<(f64, f64)> = entries
             .iter()
             .map(|(y, lines, _)| (*y, lines.len() as f64 * line_height))

@@ -65,7 +65,6 @@ impl Canvas {
     }
     /// The number at a column's middle.
     fn at(&self, column: usize) -> f64 {
-        #[allow(clippy::cast_precision_loss)]
         self.x.number(column as f64)
     }
     /// A layer, column by column.
@@ -110,7 +109,6 @@ impl Canvas {
 
 /// A place as an index; none below zero or without a number.
 fn index(place: f64) -> Option<usize> {
-    #[allow(clippy::cast_possible_truncation, clippy::cast_sign_loss)]
     (place.is_finite() && (0.0..1e6).contains(&place)).then_some(place as usize)
 }
 
@@ -145,7 +143,6 @@ fn height_at(points: &[(f64, f64)], x: f64) -> Option<f64> {
     })
 }
 
-#[allow(clippy::cast_precision_loss)]
 fn draw_plane(plane: &Plane, style: Style) -> Vec<String> {
     let gutter = 8;
     let columns = style.width.saturating_sub(gutter + 1).clamp(16, 100);
@@ -326,7 +323,6 @@ fn draw_bars(bars: &Bars, style: Style) -> Vec<String> {
 #[must_use]
 pub fn strip(length: f64, room: usize, ascii: bool) -> String {
     const EIGHTHS: [&str; 8] = ["", "▏", "▎", "▍", "▌", "▋", "▊", "▉"];
-    #[allow(clippy::cast_precision_loss)]
     let eighths = (length.clamp(0.0, 1.0) * room as f64 * 8.0).round();
     let eighths = index(eighths).unwrap_or(0).max(usize::from(length > 0.0));
     if ascii {

@@ -88,7 +88,7 @@ pub struct Check {
     pub balance_ah: Option<AmpHours>,
     /// Charge at which each shift begins once it has settled.
     pub settles_soc: Option<Fraction>,
-    /// Lowest charge in the settled shift (or in the shift that breaks the reserve).
+    /// Lowest charge in the settled shift; in the first where the charge does not settle.
     pub lowest_soc: Option<Fraction>,
     /// The reserve.
     pub reserve_soc: Option<Fraction>,

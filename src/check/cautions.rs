@@ -4,6 +4,13 @@ use crate::battery::Chemistry;
 use crate::build::{Build, Draw, SourceKind};
 use crate::description::accessory::LoadKind;
 
+/// On parts across a clutch coil, and on feeding from safety switches.
+pub const CLUTCH_PARTS: &str = "Parts across a clutch coil can change how fast the blades stop: add none that the machine's maker does not allow. Never feed anything from the seat, brake or blade switches.";
+/// On fusing added wires.
+pub const FUSE_WIRES: &str = "Fuse every added supply wire as near the battery as it can be, with a fuse that protects the wire.";
+/// On what a planning figure is worth.
+pub const ESTIMATE: &str = "A planning estimate: measure amps and volts on the machine before relying on it. Local codes, the machine's maker and, where required, a licensed person come first.";
+
 /// The cautions, most general last.
 #[must_use]
 pub fn cautions(build: &Build) -> Vec<String> {
@@ -34,10 +41,7 @@ fn of_windings(build: &Build) -> Vec<Caution> {
             "The braking winding stops the blades through the interlock. Hang nothing on it, do not lengthen, cut or bypass its lead, and test that the blades stop as the machine's maker states after any work near it.",
         ),
         // Common practice, no source: a diode across the coil delays its release.
-        (
-            coils,
-            "Parts across a clutch coil can change how fast the blades stop: add none that the machine's maker does not allow. Never feed anything from the seat, brake or blade switches.",
-        ),
+        (coils, CLUTCH_PARTS),
         (
             own,
             "Do not join a lighting winding's circuit to the battery.",
@@ -74,17 +78,11 @@ fn of_work(build: &Build) -> Vec<Caution> {
         .any(|s| matches!(s.kind, SourceKind::Winding(_)));
     vec![
         // 33 CFR 183.455: protection at the source of power.
-        (
-            !build.accessories.is_empty(),
-            "Fuse every added supply wire as near the battery as it can be, with a fuse that protects the wire.",
-        ),
+        (!build.accessories.is_empty(), FUSE_WIRES),
         (
             wound,
             "Engine off, key out, blades and belts still before touching any wiring. Run engines outdoors only: exhaust gas kills.",
         ),
-        (
-            true,
-            "A planning estimate: measure amps and volts on the machine before relying on it. Local codes, the machine's maker and, where required, a licensed person come first.",
-        ),
+        (true, ESTIMATE),
     ]
 }

@@ -38,7 +38,7 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
         states: &states,
         accessories: &accessories,
     };
-    let trace = trace(build, &machine, &shift, wanted);
+    let later = later(build, &machine, &shift, wanted);
     let check = Check {
         format: FORMAT,
         build: build.name.clone(),
@@ -69,23 +69,20 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
         cautions: cautions(build),
         notes: build.notes.clone(),
     };
-    Ok(Checked { check, trace })
+    Ok(Checked {
+        check,
+        trace: shift.trace,
+        later,
+    })
 }
 
-/// The trace of the first shift and of those after it, where one is wanted.
-fn trace(build: &Build, machine: &Machine, shift: &FirstShift, wanted: Wanted) -> Vec<TraceRow> {
-    let mut trace = shift.trace.clone();
-    if let Some(last) = shift.legs.last().filter(|_| wanted.trace) {
+/// The course of the shifts after the first, where it is wanted.
+fn later(build: &Build, machine: &Machine, shift: &FirstShift, wanted: Wanted) -> Vec<TraceRow> {
+    let last = shift.legs.last().filter(|_| wanted.trace);
+    last.map_or_else(Vec::new, |last| {
         let ends = last.begins + last.time;
-        trace.extend(history::history(
-            build,
-            machine,
-            last.after,
-            ends,
-            wanted.shifts,
-        ));
-    }
-    trace
+        history::history(build, machine, last.after, ends, wanted.shifts)
+    })
 }
 
 /// What fails first when a build that does not keep up is worked all the same.

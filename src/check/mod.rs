@@ -2,7 +2,7 @@
 
 pub mod answer;
 mod beyond;
-mod cautions;
+pub mod cautions;
 mod charged;
 mod course;
 mod error;
@@ -41,7 +41,7 @@ pub const FORMAT: u32 = 1;
 pub struct Wanted {
     /// A trace of the first shift.
     pub trace: bool,
-    /// Shifts that the trace goes on for; 0 and 1 are the first alone.
+    /// Shifts that are followed where there is a trace; 0 and 1 are the first alone.
     pub shifts: u32,
 }
 
@@ -52,6 +52,16 @@ pub struct Checked {
     pub check: Check,
     /// The first shift and the parking after it, at least a row every ten minutes.
     pub trace: Vec<TraceRow>,
+    /// The shifts after it, each with its parking, as far as they were asked for.
+    pub later: Vec<TraceRow>,
+}
+
+impl Checked {
+    /// The course of the first shift and of those after it.
+    #[must_use]
+    pub fn course(&self) -> Vec<TraceRow> {
+        self.trace.iter().chain(&self.later).cloned().collect()
+    }
 }
 
 /// Checks a build.
@@ -66,6 +76,7 @@ pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
         None => Checked {
             check: without_battery::check(build, &circuits),
             trace: Vec::new(),
+            later: Vec::new(),
         },
     };
     let check = &mut checked.check;

@@ -149,6 +149,17 @@ pub struct BuildArgs {
     pub start: Option<String>,
 }
 
+/// Whom an answer goes to.
+#[derive(Args, Debug)]
+pub struct HandOver {
+    /// For whom it is made, written on it
+    #[arg(long = "for", value_name = "NAME")]
+    pub made_for: Option<String>,
+    /// Date to write on it, as you write it
+    #[arg(long, value_name = "DATE")]
+    pub date: Option<String>,
+}
+
 /// `check`.
 #[derive(Args, Debug)]
 pub struct CheckArgs {
@@ -170,12 +181,9 @@ pub struct CheckArgs {
     /// Verdicts over a range of air temperatures (default -20 °C to 40 °C)
     #[arg(long, value_name = "FROM to TO", num_args = 0..=1, require_equals = true, default_missing_value = "-20 °C to 40 °C")]
     pub season: Option<String>,
-    /// For whom the page is made
-    #[arg(long = "for", value_name = "NAME")]
-    pub made_for: Option<String>,
-    /// Date to print on the page, as you write it
-    #[arg(long, value_name = "DATE")]
-    pub date: Option<String>,
+    /// Whom the answer goes to.
+    #[command(flatten)]
+    pub hand_over: HandOver,
 }
 
 /// `fleet`.
@@ -190,6 +198,9 @@ pub struct FleetArgs {
     /// Verdicts only: look for no remedy
     #[arg(long)]
     pub no_remedy: bool,
+    /// Whom the answer goes to.
+    #[command(flatten)]
+    pub hand_over: HandOver,
 }
 
 /// `odds`.
@@ -244,6 +255,9 @@ pub struct WireArgs {
     /// Sizes in which the wire is bought
     #[arg(long, value_enum, default_value_t = GaugeArg::Metric, value_name = "GAUGE")]
     pub gauge: GaugeArg,
+    /// Whom the answer goes to.
+    #[command(flatten)]
+    pub hand_over: HandOver,
 }
 
 /// Wire sizes.
@@ -275,13 +289,13 @@ pub struct SheetArgs {
     /// A kit to add, by its id or file: both verdicts side by side
     #[arg(long, value_name = "KIT")]
     pub with: Option<String>,
+    /// Your own prices by part id, before those of the catalogs
+    #[arg(long, value_name = "FILE.yaml")]
+    pub prices: Option<PathBuf>,
     /// Sizes in which the wire is bought
     #[arg(long, value_enum, default_value_t = GaugeArg::Metric, value_name = "GAUGE")]
     pub gauge: GaugeArg,
-    /// For whom the page is made
-    #[arg(long = "for", value_name = "NAME")]
-    pub made_for: Option<String>,
-    /// Date to print on the page, as you write it
-    #[arg(long, value_name = "DATE")]
-    pub date: Option<String>,
+    /// Whom the answer goes to.
+    #[command(flatten)]
+    pub hand_over: HandOver,
 }

@@ -3,7 +3,7 @@
 use super::args::{CheckArgs, Common, Format};
 use super::input::{self, Opened};
 use super::{DOES_NOT, KEEPS_UP, output};
-use ampledger::check::answer::{Check, Verdict};
+use ampledger::check::answer::{Check, TraceRow, Verdict};
 use ampledger::check::{Checked, Wanted, check, season};
 use ampledger::quantity::Celsius;
 use ampledger::report::Report;
@@ -33,25 +33,25 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
         return super::why::run(&opened, state, common);
     }
     if let Some(range) = &args.season {
-        return over_season(&opened, range, common);
+        return over_season(&opened, range, args, common);
     }
     let wanted = Wanted {
         trace: args.trace.is_some() || common.format == Format::Html,
         shifts: days(common),
     };
     let before = answer(&opened, wanted)?;
-    let options = |trace| view::Options {
-        page: common.format == Format::Html,
-        trace,
-        made_for: args.made_for.as_deref(),
-        date: args.date.as_deref(),
-    };
+    let addressed = |report| output::addressed(report, &args.hand_over);
     let (last, verdict) = match &args.with {
         None => {
             let verdict = before.check.verdict;
             output::write(
                 common,
-                || view::check(&before.check, &options(&before.trace)),
+                || {
+                    addressed(view::check(
+                        &before.check,
+                        &options(common, &before.course()),
+                    ))
+                },
                 &before.check,
             )?;
             (before, verdict)
@@ -65,7 +65,14 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
                 before: &before.check,
                 after: &after.check,
             };
-            let report = || view::compare(&before.check, &after.check, &options(&after.trace));
+            let report = || {
+                let course = after.course();
+                addressed(view::compare(
+                    &before.check,
+                    &after.check,
+                    &options(common, &course),
+                ))
+            };
             output::write(common, report, &both)?;
             let verdict = after.check.verdict;
             (after, verdict)
@@ -75,6 +82,14 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
         write_trace(path, &last, common.force)?;
     }
     Ok(code(verdict))
+}
+
+/// What the report of a check takes beside the answer.
+fn options<'a>(common: &Common, trace: &'a [TraceRow]) -> view::Options<'a> {
+    view::Options {
+        page: common.format == Format::Html,
+        trace,
+    }
 }
 
 /// Shifts whose charge a page draws.
@@ -102,7 +117,12 @@ pub fn answer(opened: &Opened, wanted: Wanted) -> anyhow::Result<Checked> {
 }
 
 /// The verdicts over a range of air temperatures.
-fn over_season(opened: &Opened, range: &str, common: &Common) -> anyhow::Result<u8> {
+fn over_season(
+    opened: &Opened,
+    range: &str,
+    args: &CheckArgs,
+    common: &Common,
+) -> anyhow::Result<u8> {
     let ends: Vec<&str> = range.split(" to ").collect();
     let [from, to] = ends.as_slice() else {
         bail!("--season `{range}`: write it like `-20 °C to 40 °C`");
@@ -123,7 +143,8 @@ fn over_season(opened: &Opened, range: &str, common: &Common) -> anyhow::Result<
         },
     )
     .with_context(|| opened.source.name.clone())?;
-    output::write(common, || view::season(&answer), &answer)?;
+    let report = || output::addressed(view::season(&answer), &args.hand_over);
+    output::write(common, report, &answer)?;
     Ok(answer
         .rows
         .iter()
@@ -156,14 +177,9 @@ fn several(files: &[String], args: &CheckArgs, common: &Common) -> anyhow::Resul
     }
     let checks: Vec<&Check> = all.iter().map(|one| &one.check).collect();
     let report = || {
-        let mut whole = Report::new("Load budgets");
+        let mut whole = output::addressed(Report::new("Load budgets"), &args.hand_over);
         for one in &all {
-            let options = view::Options {
-                page: common.format == Format::Html,
-                trace: &one.trace,
-                ..Default::default()
-            };
-            whole = whole.append(view::check(&one.check, &options));
+            whole = whole.append(view::check(&one.check, &options(common, &one.course())));
         }
         whole
     };

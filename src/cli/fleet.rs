@@ -53,7 +53,8 @@ pub fn run(args: &FleetArgs, common: &Common) -> anyhow::Result<u8> {
                 rows,
                 totals,
             };
-            output::write(common, || view::fleet(&answer), &answer)?;
+            let report = || output::addressed(view::fleet(&answer), &args.hand_over);
+            output::write(common, report, &answer)?;
             answer.totals
         }
     };

@@ -1,6 +1,6 @@
 //! Bytes out: standard output, or a file written whole or not at all.
 
-use super::args::{Common, Format};
+use super::args::{Common, Format, HandOver};
 use ampledger::report::{Report, csv, html, markdown, text};
 use anyhow::Context;
 use std::io::{ErrorKind, IsTerminal, Write};
@@ -42,6 +42,11 @@ pub fn write_as(
         Format::Html => html::render(&report()),
     };
     put(common, &bytes)
+}
+
+/// A report with whom it goes to and its date, as far as they are given.
+pub fn addressed(report: Report, to: &HandOver) -> Report {
+    report.made_for(to.made_for.clone(), to.date.clone())
 }
 
 /// JSON with a final line end.

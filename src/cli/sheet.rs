@@ -2,13 +2,18 @@
 
 use super::args::{Common, Format, SheetArgs};
 use super::check::{PAGE_SHIFTS, answer, code};
-use super::{input, output, wire};
+use super::input::{self, Opened};
+use super::{output, wire};
 use ampledger::build::Build;
-use ampledger::check::Wanted;
+use ampledger::catalog::Catalogs;
 use ampledger::check::answer::Check;
+use ampledger::check::season::{Range, Season, season};
+use ampledger::check::{SolveError, Wanted};
 use ampledger::curve::{Curve, curve};
+use ampledger::remedy::{Asked, Prices, Remedy, read_prices, remedy};
 use ampledger::view::{self, quote};
 use ampledger::wire::{Options, Wires, wires};
+use anyhow::Context;
 use serde::Serialize;
 
 /// The answers of a sheet, as JSON.
@@ -17,17 +22,24 @@ struct Answers<'a> {
     format: u32,
     check: &'a Check,
     with: Option<&'a Check>,
+    remedy: Option<&'a Remedy>,
     wires: &'a Wires,
     curve: &'a Curve,
+    season: Option<&'a Season>,
+    quote: &'a [quote::Line],
 }
 
-/// Gathers check, quote, wires and charts in one document.
+/// Gathers check, remedies, quote, wires and charts in one document.
 ///
 /// # Errors
-/// The build cannot be read, or has no answer.
+/// The build cannot be read, or has no answer; the price list does not read.
 pub fn run(args: &SheetArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
     let opened = input::build(&args.file, &args.build, &catalogs)?;
+    let prices = match &args.prices {
+        Some(path) => read_prices(path)?,
+        None => Prices::default(),
+    };
     let wanted = Wanted {
         trace: true,
         shifts: PAGE_SHIFTS,
@@ -42,45 +54,67 @@ pub fn run(args: &SheetArgs, common: &Common) -> anyhow::Result<u8> {
         .as_ref()
         .map(|kitted| answer(kitted, wanted))
         .transpose()?;
-    let build = kitted
-        .as_ref()
-        .map_or(&opened.build, |kitted| &kitted.build);
+    let to_be = kitted.as_ref().unwrap_or(&opened);
     let shown = after.as_ref().unwrap_or(&before);
-    let chosen = wires(
-        build,
-        &Options {
-            gauge: wire::gauge(args.gauge),
-        },
-    );
-    let output = curve(build, &[], &[]);
+    let named = || opened.source.name.clone();
+    let own = opened.description.accessories.len();
+    let mended =
+        where_there_is_a_battery(remedies(to_be, own, &prices, &catalogs)).with_context(named)?;
+    let year =
+        where_there_is_a_battery(season(&to_be.build, Range::default())).with_context(named)?;
+    let gauge = wire::gauge(args.gauge);
+    let chosen = wires(&to_be.build, &Options { gauge });
+    let output = curve(&to_be.build, &[], &[]);
+    let parts = parts(to_be, kitted.as_ref().map(|_| &opened.build), &prices);
     let answers = Answers {
         format: ampledger::check::FORMAT,
         check: &before.check,
         with: after.as_ref().map(|after| &after.check),
+        remedy: mended.as_ref(),
         wires: &chosen,
         curve: &output,
+        season: year.as_ref(),
+        quote: &parts,
     };
-    let parts = parts(build, kitted.as_ref().map(|_| &opened.build));
     let report = || {
-        let options = view::Options {
-            page: true,
-            trace: &shown.trace,
-            made_for: args.made_for.as_deref(),
-            date: args.date.as_deref(),
-        };
         let sheet = view::sheet::Sheet {
             before: &before.check,
             after: after.as_ref().map(|after| &after.check),
+            trace: &shown.course(),
+            remedies: mended.as_ref(),
             wires: &chosen,
             curve: &output,
-            remedies: None,
+            season: year.as_ref(),
             parts: &parts,
-            currency: &build.currency,
+            currency: &prices.currency,
         };
-        view::sheet(&sheet, &options)
+        output::addressed(view::sheet(&sheet), &args.hand_over)
     };
     output::write_as(common, format(common), report, &answers)?;
     Ok(code(shown.check.verdict))
+}
+
+/// Ways to make a build keep up; `own` of its accessories stand in its file.
+fn remedies(
+    opened: &Opened,
+    own: usize,
+    prices: &Prices,
+    catalogs: &Catalogs,
+) -> Result<Remedy, SolveError> {
+    let asked = Asked {
+        own,
+        ..Asked::new(&opened.description, &opened.build, catalogs)
+    };
+    remedy(&asked, prices, &mut |_, _| {})
+}
+
+/// What is asked of builds with a battery alone: nothing of one without.
+fn where_there_is_a_battery<T>(answer: Result<T, SolveError>) -> Result<Option<T>, SolveError> {
+    match answer {
+        Ok(answer) => Ok(Some(answer)),
+        Err(SolveError::NoBattery) => Ok(None),
+        Err(problem) => Err(problem),
+    }
 }
 
 /// A page where no other format is asked for.
@@ -92,17 +126,22 @@ fn format(common: &Common) -> Format {
 }
 
 /// What is quoted: the accessories with a price that a kit adds, or all with a price without one.
-fn parts(build: &Build, without: Option<&Build>) -> Vec<quote::Line> {
+/// A price in the build goes before the user's list, and that before the catalogs.
+fn parts(to_be: &Opened, without: Option<&Build>, prices: &Prices) -> Vec<quote::Line> {
     let had =
         |name: &str| without.is_some_and(|build| build.accessories.iter().any(|a| a.name == name));
-    build
-        .accessories
-        .iter()
-        .filter(|a| a.price.is_some() && !had(&a.name))
-        .map(|a| quote::Line {
-            name: a.name.clone(),
-            count: a.count,
-            each: a.price,
-        })
-        .collect()
+    let stated = |path: &str| {
+        let mut texts = to_be.description.accessories.iter();
+        texts.any(|text| text.path == path && text.price.is_some())
+    };
+    let added = to_be.build.accessories.iter().filter(|a| !had(&a.name));
+    let lines = added.map(|a| quote::Line {
+        name: a.name.clone(),
+        count: a.count,
+        each: match &a.part {
+            Some(id) if !stated(&a.path) => prices.of(id, a.price),
+            _ => a.price,
+        },
+    });
+    lines.filter(|line| line.each.is_some()).collect()
 }

@@ -30,6 +30,7 @@ pub fn run(args: &SizeArgs, common: &Common) -> anyhow::Result<u8> {
     })
     .with_context(|| opened.source.name.clone())?;
     drop(progress);
-    output::write(common, || view::size(&answer), &answer)?;
+    let report = || output::addressed(view::size(&answer), &args.hand_over);
+    output::write(common, report, &answer)?;
     Ok(if answer.keeps_up { KEEPS_UP } else { DOES_NOT })
 }

@@ -1,6 +1,6 @@
 //! `ampledger wire`.
 
-use super::args::{Common, GaugeArg, WireArgs};
+use super::args::{Common, Format, GaugeArg, WireArgs};
 use super::{DOES_NOT, KEEPS_UP, input, output};
 use ampledger::view;
 use ampledger::wire::{Gauge, Options, wires};
@@ -18,7 +18,12 @@ pub fn run(args: &WireArgs, common: &Common) -> anyhow::Result<u8> {
             gauge: gauge(args.gauge),
         },
     );
-    output::write(common, || view::wire(&answer), &answer)?;
+    let laid_out = || match common.format {
+        Format::Html => view::wire::page(&answer),
+        _ => view::wire(&answer),
+    };
+    let report = || output::addressed(laid_out(), &args.hand_over);
+    output::write(common, report, &answer)?;
     Ok(if answer.unmet.is_empty() {
         KEEPS_UP
     } else {

@@ -210,7 +210,6 @@ impl Cell {
     /// A count.
     #[must_use]
     pub fn count(number: u64) -> Cell {
-        #[allow(clippy::cast_precision_loss)]
         Cell {
             text: number.to_string(),
             number: Some(number as f64),

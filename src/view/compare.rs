@@ -2,7 +2,7 @@
 
 use super::check::{Options, closing, reserve, verdict};
 use super::states::below_zero;
-use super::{accessories, charts};
+use super::{accessories, page};
 use crate::check::answer::{Check, StateRow};
 use crate::quantity::{AmpHours, Amps, Fraction, Volts, format};
 use crate::report::{Block, Cell, Column, Report, Table};
@@ -11,37 +11,33 @@ use crate::report::{Block, Cell, Column, Report, Table};
 /// after the change.
 #[must_use]
 pub fn compare(before: &Check, after: &Check, options: &Options) -> Report {
+    if options.page {
+        return page::of_two(before, after, options.trace);
+    }
     let mut report = Report::new(&after.build)
         .subtitle(format!(
             "Before and after, air at {}",
             format::temperature(after.air_c)
         ))
-        .made_for(
-            options.made_for.map(str::to_owned),
-            options.date.map(str::to_owned),
-        )
-        .block(Block::Verdicts(vec![
-            verdict(before).caption("Before"),
-            verdict(after).caption("After"),
-        ]))
+        .block(verdicts(before, after))
         .table(difference(before, after))
         .table(by_state(before, after));
-    if options.page {
-        for chart in charts::of_check(after, options.trace) {
-            report = report.chart(chart);
-        }
-    }
     if !after.accessories.is_empty() {
-        if options.page {
-            report = report.chart(charts::by_accessory(&after.accessories));
-        }
-        report = report.table(accessories::table(after, !options.page));
+        report = report.table(accessories::table(after, true));
     }
     closing(report, after)
 }
 
+/// Both verdicts.
+pub(super) fn verdicts(before: &Check, after: &Check) -> Block {
+    Block::Verdicts(vec![
+        verdict(before).caption("Before"),
+        verdict(after).caption("After"),
+    ])
+}
+
 /// The figures that matter, before and after.
-fn difference(before: &Check, after: &Check) -> Table {
+pub(super) fn difference(before: &Check, after: &Check) -> Table {
     let draws = |c: &Check| Some(c.accessories.iter().map(|a| a.ah).sum::<AmpHours>());
     let charge = |what, was: Option<AmpHours>, is: Option<AmpHours>| {
         line(what, was, is, Cell::measured, Cell::measured_signed)
@@ -100,7 +96,7 @@ fn line<Q: Copy + std::ops::Sub<Output = Q>>(
 }
 
 /// Draw, battery and bus volts by state, before and after.
-fn by_state(before: &Check, after: &Check) -> Table {
+pub(super) fn by_state(before: &Check, after: &Check) -> Table {
     let mut names: Vec<&str> = before.states.iter().map(|s| s.state.as_str()).collect();
     for state in &after.states {
         if !names.contains(&state.state.as_str()) {

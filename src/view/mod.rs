@@ -5,6 +5,7 @@
 //! before and the layout after.
 
 pub mod accessories;
+pub mod assumed;
 pub mod charts;
 pub mod check;
 pub mod compare;
@@ -12,6 +13,7 @@ pub mod curve;
 pub mod fleet;
 pub mod identify;
 pub mod odds;
+mod page;
 pub mod parts;
 pub mod quote;
 pub mod remedy;

@@ -50,25 +50,53 @@ fn commands((index, answer): (usize, &Answer)) -> impl Iterator<Item = String> {
     })
 }
 
+/// Heading of the remedies on a page that holds more.
+pub(super) const HEADING: &str = "What mends it";
+/// What stands there where nothing need be mended.
+pub(super) const NONE_NEEDED: &str = "No remedy needed: it keeps up as it is.";
+
+/// The same in short, for a page that holds more: the ways out with their prices, or what binds.
+#[must_use]
+pub fn short(report: Report, answer: &Remedy) -> Report {
+    if answer.keeps_up {
+        return report.heading(HEADING).paragraph(NONE_NEEDED);
+    }
+    if let Some(binds) = &answer.binds {
+        let text = format!("No way out. With all changed that may be: {binds}.");
+        return report.heading(HEADING).paragraph(text);
+    }
+    let order = if is_priced(answer) {
+        "Each does it alone; cheapest first. Prices of parts, without work."
+    } else {
+        "Each does it alone; least change first. No prices are known."
+    };
+    let mut table = table(answer).note(order);
+    table.title = HEADING.to_owned();
+    report.table(table)
+}
+
+fn is_priced(answer: &Remedy) -> bool {
+    answer.answers.iter().any(|a| a.cost.is_some())
+}
+
 /// One row a way out.
 fn table(answer: &Remedy) -> Table {
     let rows = answer.answers.iter().enumerate().map(|(index, a)| {
         vec![
-            Cell::text((index + 1).to_string()),
+            Cell::count(index as u64 + 1),
             Cell::name(a.changes.join("; ")),
             Cell::maybe(a.cost, |cost| money(cost, &answer.currency)),
             Cell::maybe(a.settles_soc, |soc: Fraction| Cell::percent(soc)),
         ]
     });
-    let priced = answer.answers.iter().any(|a| a.cost.is_some());
-    let order = if priced {
+    let order = if is_priced(answer) {
         "Cheapest first; prices of parts alone, without work. A price list of yours goes before the catalogs' invented prices: --prices FILE."
     } else {
         "Least change first: no prices are known."
     };
     Table::new("Ways out")
         .columns([
-            Column::text(""),
+            Column::figures("No."),
             Column::name("Changes"),
             Column::money("Parts", &answer.currency),
             Column::percent("Settles at"),

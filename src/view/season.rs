@@ -1,6 +1,7 @@
 //! The season: a row a temperature, and its chart.
 
 use super::charts::{self, SeasonPoint};
+use crate::chart::Chart;
 use crate::check::answer::Verdict;
 use crate::check::season::{Season, SeasonRow};
 use crate::quantity::{AmpHours, Celsius, Volts, format};
@@ -36,10 +37,14 @@ pub fn season(answer: &Season) -> Report {
     Report::new(&answer.build)
         .subtitle(range)
         .verdict(tone, lead, sentence)
-        .chart(charts::season(
-            &answer.rows.iter().map(point).collect::<Vec<_>>(),
-        ))
+        .chart(chart(answer))
         .table(table(answer))
+}
+
+/// Settled charge and reserve against air temperature.
+#[must_use]
+pub fn chart(answer: &Season) -> Chart {
+    charts::season(&answer.rows.iter().map(point).collect::<Vec<_>>())
 }
 
 fn point(row: &SeasonRow) -> SeasonPoint {

@@ -1,5 +1,7 @@
 //! Wires, fuses and relays as a list to take to the bench.
 
+use super::assumed::{self, by_ground};
+use super::quote::Bought;
 use crate::quantity::{AmpHours, Amps, Fraction, Metres, Volts, format};
 use crate::report::{Cell, Column, Item, Report, Table, Tone};
 use crate::wire::{Arrives, Buy, Effect, Gauge, Unmet, Wire, Wires};
@@ -7,6 +9,22 @@ use crate::wire::{Arrives, Buy, Effect, Gauge, Unmet, Wire, Wires};
 /// The report of an answer: the list of wires, what to buy, what arrives, and why.
 #[must_use]
 pub fn wire(answer: &Wires) -> Report {
+    let mut report = lists(answer);
+    if !answer.wires.is_empty() {
+        report = report.heading("Why");
+        for row in &answer.wires {
+            let binds = Item::new(&row.binds).lead(Tone::Plain, "decides");
+            let reasons = row.reasons.iter().map(Item::new);
+            report = report
+                .subheading(&row.name)
+                .list("", std::iter::once(binds).chain(reasons));
+        }
+    }
+    closing(report, answer)
+}
+
+/// The verdict, the list of wires, what to buy, what arrives.
+fn lists(answer: &Wires) -> Report {
     let (tone, lead, sentence) = verdict(answer);
     let mut report = Report::new(&answer.build)
         .subtitle(format!(
@@ -28,32 +46,51 @@ pub fn wire(answer: &Wires) -> Report {
             .iter()
             .map(|n| Item::new(&n.why).lead(Tone::Dim, &n.name)),
     );
-    if let Some(effect) = &answer.effect {
-        report = report
+    match &answer.effect {
+        Some(effect) => report
             .heading("What the wires do to the charge")
-            .paragraph(charge(effect));
+            .paragraph(charge(effect)),
+        None => report,
     }
-    if !answer.wires.is_empty() {
-        report = report.heading("Why");
-        for row in &answer.wires {
-            let binds = Item::new(&row.binds).lead(Tone::Plain, "decides");
-            let reasons = row.reasons.iter().map(Item::new);
-            report = report
-                .subheading(&row.name)
-                .list("", std::iter::once(binds).chain(reasons));
-        }
-    }
-    closing(report, answer)
 }
 
-/// The same in short, for a page that holds more: the list of wires, what to buy, what no standard
-/// pair can do.
+/// The same as a page: the reasons of each wire in one entry, and what the figures rest on in short.
 #[must_use]
-pub fn short(answer: &Wires) -> Report {
-    Report::new("Wire, fuse and relay")
-        .table(wires(answer))
-        .table(to_buy(&answer.buy, answer.gauge))
-        .list("No standard pair", answer.unmet.iter().flat_map(unmet))
+pub fn page(answer: &Wires) -> Report {
+    let mut report = lists(answer);
+    if !answer.wires.is_empty() {
+        let why = answer.wires.iter().map(|row| {
+            let reasons = row.reasons.join("; ");
+            Item::new(format!("{}; {reasons}", row.binds)).lead(Tone::Plain, &row.name)
+        });
+        report = assumed::short(report.list("Why", why), &answer.assumed);
+    }
+    let sources = answer.sources.iter();
+    let sources = sources.map(|s| (s.certainty.as_str(), format!("{}: {}", s.what, s.source)));
+    let listed = |note: &str| {
+        let mut certainties = answer.sources.iter().map(|s| s.certainty.as_str());
+        certainties.any(|certainty| {
+            note.strip_prefix(certainty)
+                .is_some_and(|n| n.starts_with(':'))
+        })
+    };
+    let notes = answer.notes.iter().filter(|note| !listed(note));
+    report
+        .list("Tables used", by_ground(sources))
+        .list("Notes", notes.map(Item::new))
+        .cautions(answer.cautions.iter().cloned())
+}
+
+/// The wires alone, for a page that holds more, and what no standard pair can do.
+#[must_use]
+pub fn short(report: Report, answer: &Wires) -> Report {
+    let mut report = report;
+    if !answer.wires.is_empty() {
+        let mut table = wires(answer);
+        table.title = "Wire, fuse and relay".to_owned();
+        report = report.table(table);
+    }
+    report.list("No standard pair", answer.unmet.iter().flat_map(unmet))
 }
 
 fn verdict(answer: &Wires) -> (Tone, String, String) {
@@ -138,13 +175,23 @@ fn relay(wire: &Wire) -> Cell {
 }
 
 /// What to buy, with its number.
-fn to_buy(buy: &Buy, gauge: Gauge) -> Table {
-    let mut table = Table::new("To buy").columns([
-        Column::name("What"),
-        Column::text("Size"),
-        Column::figures("How much"),
-    ]);
-    for row in &buy.wire {
+pub(super) fn to_buy(buy: &Buy, gauge: Gauge) -> Table {
+    let rows = bought(buy, gauge)
+        .into_iter()
+        .map(|b| [Cell::name(b.what), Cell::text(b.size), b.amount]);
+    Table::new("To buy")
+        .columns([
+            Column::name("What"),
+            Column::text("Size"),
+            Column::figures("How much"),
+        ])
+        .rows(rows)
+        .note("Wire as it runs: add for cutting, ends and the relays' own control wires.")
+}
+
+/// Wire by size, fuses and relays by rating, with how much of each.
+pub(super) fn bought(buy: &Buy, gauge: Gauge) -> Vec<Bought> {
+    let wire = buy.wire.iter().map(|row| {
         let metric = format::text(row.section_mm2);
         let awg = row.gauge_awg.as_ref().map(|awg| format!("{awg} AWG"));
         let size = match (gauge, awg) {
@@ -153,36 +200,36 @@ fn to_buy(buy: &Buy, gauge: Gauge) -> Table {
             (_, None) => metric,
         };
         let insulation = format::temperature(row.insulation_c);
-        table = table.row([
-            Cell::name(format!("copper wire, stranded, insulation {insulation}")),
-            Cell::text(size),
-            Cell::measured(row.metres),
-        ]);
-    }
-    for row in &buy.fuses {
-        let colour = row
-            .colour
-            .as_ref()
-            .map_or_else(String::new, |c| format!(", {c}"));
-        table = table.row([
-            Cell::name(format!("{} fuse and holder{colour}", row.kind)),
-            Cell::text(format::text(row.fuse_a)),
-            Cell::count(u64::from(row.count)),
-        ]);
-    }
-    for row in &buy.relays {
+        Bought {
+            what: format!("copper wire, stranded, insulation {insulation}"),
+            size,
+            amount: Cell::measured(row.metres),
+        }
+    });
+    let fuses = buy.fuses.iter().map(|row| {
+        let colour = row.colour.as_ref().map(|c| format!(", {c}"));
+        Bought {
+            what: format!("{} fuse and holder{}", row.kind, colour.unwrap_or_default()),
+            size: format::text(row.fuse_a),
+            amount: Cell::count(u64::from(row.count)),
+        }
+    });
+    let relays = buy.relays.iter().filter_map(|row| {
         let (what, size) = match (row.relay_a, row.carries_a) {
-            (Some(contacts), _) => ("relay and socket, contacts of", format::text(contacts)),
+            (Some(contacts), _) => (
+                "relay and socket",
+                format!("{} contacts", format::text(contacts)),
+            ),
             (None, Some(amps)) => ("contactor, continuous, hot", format::text(amps)),
-            (None, None) => continue,
+            (None, None) => return None,
         };
-        table = table.row([
-            Cell::name(what),
-            Cell::text(size),
-            Cell::count(u64::from(row.count)),
-        ]);
-    }
-    table.note("Wire as it runs: add for cutting, ends and the relays' own control wires.")
+        Some(Bought {
+            what: what.to_owned(),
+            size,
+            amount: Cell::count(u64::from(row.count)),
+        })
+    });
+    wire.chain(fuses).chain(relays).collect()
 }
 
 /// What arrives at each accessory.
@@ -258,22 +305,8 @@ fn charge(effect: &Effect) -> String {
 /// Assumed values, tables used, notes and cautions.
 fn closing(report: Report, answer: &Wires) -> Report {
     let mut report = report;
-    if !answer.assumed.is_empty() && !answer.wires.is_empty() {
-        report = report.table(
-            Table::new("Assumed")
-                .columns([
-                    Column::name("What"),
-                    Column::text("Value"),
-                    Column::text("Ground"),
-                ])
-                .rows(answer.assumed.iter().map(|a| {
-                    [
-                        Cell::name(&a.what),
-                        Cell::text(&a.value),
-                        Cell::text(&a.origin).dim(),
-                    ]
-                })),
-        );
+    if !answer.wires.is_empty() {
+        report = assumed::table(report, &answer.assumed);
     }
     if !answer.sources.is_empty() {
         report = report.table(

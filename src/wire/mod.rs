@@ -12,6 +12,7 @@
 mod ampacity;
 mod answer;
 mod arrives;
+pub mod cautions;
 mod conductor;
 mod demand;
 mod fuse;
@@ -90,7 +91,7 @@ pub fn wires_from(build: &Build, options: &Options, tables: &Tables) -> Wires {
         system_v: PLANNING_CELL * f64::from(build.cells()),
         buy: buy(&wires),
         notes: notes::notes(build, &demands, &grounds),
-        cautions: notes::cautions(build, &demands, &wires),
+        cautions: cautions::cautions(build, &demands, &wires),
         sources: notes::sources(&grounds),
         wires,
         unmet,

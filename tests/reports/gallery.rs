@@ -8,16 +8,12 @@ use ampledger::view::{self, Options, charts};
 
 /// Options of a page, with the trace of the sample.
 pub fn page<'a>(trace: &'a [TraceRow]) -> Options<'a> {
-    Options {
-        page: true,
-        trace,
-        made_for: Some("Hill Farm"),
-        date: Some("4 March"),
-    }
+    Options { page: true, trace }
 }
 
 pub fn check_page() -> Report {
     view::check(&falls_short(MARKUP), &page(&trace()))
+        .made_for(Some("Hill Farm".to_owned()), Some("4 March".to_owned()))
 }
 
 /// Every report that the tests go through.

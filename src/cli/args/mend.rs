@@ -1,6 +1,6 @@
 //! Arguments of `size` and `remedy`.
 
-use super::BuildArgs;
+use super::{BuildArgs, HandOver};
 use clap::Args;
 use std::path::PathBuf;
 
@@ -16,6 +16,9 @@ pub struct SizeArgs {
     /// A kit to add first, by its id or file
     #[arg(long, value_name = "KIT")]
     pub with: Option<String>,
+    /// Whom the answer goes to.
+    #[command(flatten)]
+    pub hand_over: HandOver,
 }
 
 /// `remedy`.
@@ -33,4 +36,7 @@ pub struct RemedyArgs {
     /// Your own prices by part id, before those of the catalogs
     #[arg(long, value_name = "FILE.yaml")]
     pub prices: Option<PathBuf>,
+    /// Whom the answer goes to.
+    #[command(flatten)]
+    pub hand_over: HandOver,
 }
