@@ -1,5 +1,7 @@
 //! Where labels go: away from lines, from each other and from the edge.
 
+use crate::report::flow::flowing;
+
 /// Estimated width of a text in a proportional sans-serif of this size: 0.6 of the size a
 /// character (common practice; a wide fallback font takes about that).
 #[must_use]
@@ -8,11 +10,12 @@ pub fn text_width(text: &str, size: f64) -> f64 {
     characters * size * 0.6
 }
 
-/// Words in lines of at most this width; a longer word stands alone.
+/// Words in lines of at most this width; a longer word stands alone, and a number keeps its unit.
 #[must_use]
 pub fn wrap(text: &str, width: f64, size: f64) -> Vec<String> {
     let mut lines: Vec<String> = Vec::new();
-    for word in text.split_whitespace() {
+    let text = flowing(text);
+    for word in text.split(' ').filter(|word| !word.is_empty()) {
         match lines.last_mut() {
             Some(line) if text_width(&format!("{line} {word}"), size) <= width => {
                 line.push(' ');
@@ -198,6 +201,10 @@ mod tests {
         assert_eq!(
             wrap("reserve for the next start", 66.0, 11.0),
             ["reserve", "for the", "next start"]
+        );
+        assert_eq!(
+            wrap("cut-in 1601 rpm", 70.0, 11.0),
+            ["cut-in", "1601\u{a0}rpm"]
         );
         assert_eq!(wrap("", 66.0, 11.0), Vec::<String>::new());
     }

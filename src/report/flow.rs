@@ -4,13 +4,13 @@
 pub(super) const TIE: char = '\u{a0}';
 
 /// Units that stay on the line of their number.
-const UNITS: [&str; 19] = [
+const UNITS: [&str; 20] = [
     "%", "A", "mA", "Ah", "V", "mV", "W", "Wh", "Ω", "h", "min", "s", "rpm", "°C", "K", "m", "mm",
-    "mm²", "points",
+    "mm²", "points", "AWG",
 ];
 
 /// The text with a space that does not break between a number and its unit.
-pub(super) fn flowing(text: &str) -> String {
+pub(crate) fn flowing(text: &str) -> String {
     let mut flowing = String::with_capacity(text.len());
     let mut words = text.split(' ').peekable();
     while let Some(word) = words.next() {

@@ -27,7 +27,7 @@
 //! ```
 
 pub mod csv;
-mod flow;
+pub(crate) mod flow;
 pub mod html;
 pub mod markdown;
 pub mod model;

@@ -216,7 +216,7 @@ fn list(title: &str, rows: &[&Row], crossed: bool) -> Table {
             cells.push(verdict(row));
         }
         if remedies {
-            cells.push(Cell::text(row.outcome.remedy.clone().unwrap_or_default()));
+            cells.push(remedy(row));
         }
         if costs {
             cells.push(Cell::maybe(row.outcome.cost, |cost| Cell::money(cost, "")));
@@ -224,6 +224,15 @@ fn list(title: &str, rows: &[&Row], crossed: bool) -> Table {
         cells
     };
     table.rows(rows.iter().map(row))
+}
+
+/// The remedy of a row; that none was found is said, and nothing where none is needed.
+fn remedy(row: &Row) -> Cell {
+    match &row.outcome.remedy {
+        Some(remedy) => Cell::text(remedy),
+        None if falls(row) => Cell::text("none found").dim(),
+        None => Cell::empty(),
+    }
 }
 
 /// Sums by kit and season.

@@ -9,18 +9,24 @@ use crate::wire::{Arrives, Buy, Effect, Gauge, Unmet, Wire, Wires};
 /// The report of an answer: the list of wires, what to buy, what arrives, and why.
 #[must_use]
 pub fn wire(answer: &Wires) -> Report {
-    let mut report = lists(answer);
-    if !answer.wires.is_empty() {
-        report = report.heading("Why");
-        for row in &answer.wires {
+    closing(why(lists(answer), answer), answer)
+}
+
+/// What decided on each wire, and the reason for each choice.
+fn why(report: Report, answer: &Wires) -> Report {
+    if answer.wires.is_empty() {
+        return report;
+    }
+    answer
+        .wires
+        .iter()
+        .fold(report.heading("Why"), |report, row| {
             let binds = Item::new(&row.binds).lead(Tone::Plain, "decides");
             let reasons = row.reasons.iter().map(Item::new);
-            report = report
+            report
                 .subheading(&row.name)
-                .list("", std::iter::once(binds).chain(reasons));
-        }
-    }
-    closing(report, answer)
+                .list("", std::iter::once(binds).chain(reasons))
+        })
 }
 
 /// The verdict, the list of wires, what to buy, what arrives.
@@ -54,16 +60,12 @@ fn lists(answer: &Wires) -> Report {
     }
 }
 
-/// The same as a page: the reasons of each wire in one entry, and what the figures rest on in short.
+/// The same as a page: what the figures rest on in short.
 #[must_use]
 pub fn page(answer: &Wires) -> Report {
-    let mut report = lists(answer);
+    let mut report = why(lists(answer), answer);
     if !answer.wires.is_empty() {
-        let why = answer.wires.iter().map(|row| {
-            let reasons = row.reasons.join("; ");
-            Item::new(format!("{}; {reasons}", row.binds)).lead(Tone::Plain, &row.name)
-        });
-        report = assumed::short(report.list("Why", why), &answer.assumed);
+        report = assumed::short(report, &answer.assumed);
     }
     let sources = answer.sources.iter();
     let sources = sources.map(|s| (s.certainty.as_str(), format!("{}: {}", s.what, s.source)));

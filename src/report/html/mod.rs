@@ -142,8 +142,8 @@ fn facts(facts: &[Fact]) -> Markup {
 fn content(cell: &Cell) -> Markup {
     html! {
         @match cell.number {
-            Some(number) => { data value=(format!("{number}")) { (clean(&cell.text, false)) } }
-            None => { (clean(&cell.text, false)) }
+            Some(number) => { data value=(format!("{number}")) { (flow(&cell.text)) } }
+            None => { (flow(&cell.text)) }
         }
     }
 }
@@ -171,7 +171,7 @@ fn table(table: &Table, number: usize) -> Markup {
                 tbody { @for row in &table.rows { (self::row(table, row)) } }
             }
         }
-        @if let Some(note) = &table.note { p class="dim note" { (clean(note, false)) } }
+        @if let Some(note) = &table.note { p class="dim note" { (flow(note)) } }
     }
 }
 
