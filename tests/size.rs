@@ -8,9 +8,11 @@ use ampledger::catalog::Catalogs;
 use ampledger::check::answer::Verdict;
 use ampledger::check::rule;
 use ampledger::description::{Assignment, Description, read_set};
+use ampledger::odds::{Toleranced, Wanted, odds};
+use ampledger::quantity::Fraction;
 use ampledger::remedy::Asked;
 use ampledger::resolve::resolve;
-use ampledger::size::{Answer, Bound, Options, Size, guideline, influence, size};
+use ampledger::size::{Answer, Bound, Share, Size, guideline, influence, size};
 use rayon::prelude::*;
 use size_builds::{Draws, build_text};
 
@@ -30,7 +32,7 @@ fn sizes(text: &str) -> Size {
     let (description, build) = read(text, &[]);
     let catalogs = Catalogs::builtin();
     let asked = Asked::new(&description, &build, &catalogs);
-    size(&asked, &Options::default(), &mut |_, _| {}).expect("an answer")
+    size(&asked, None, &mut |_, _| {}).expect("an answer")
 }
 
 fn keeps_up(text: &str, set: String) -> bool {
@@ -106,6 +108,69 @@ fn every_size_is_proved_from_both_sides() {
     );
     let short = sum(|p| p.short);
     assert!((10..=40).contains(&short), "{short} of 50 fall short");
+}
+
+/// Sizes for a share of builds, against the odds of the file with the value set: at the amount that share keeps up,
+/// just beyond it does not.
+#[test]
+fn a_share_of_builds_keeps_up_at_its_sizes() {
+    let text = "build: cart
+engine: {speeds: {idle: 1700 rpm, governed: 3300 rpm}}
+charging:
+  - winding: {open_circuit: 29 V at 3600 rpm ± 6 %, resistance: 0.16 ohm, inductance: 0.33 mH, poles: 16}
+    rectifier: full-wave
+    regulator: {holds: 14.3 V}
+battery: {capacity: 32 Ah, cold_cranking: 290 A, type: flooded, reserve: 55 %}
+accessories:
+  - {name: lamps, draw: 13 A ± 8 %, duty: {governed: 100 %, idle: 100 %}}
+shift: [{idle: 30 min}, {governed: 2 h}]
+parked: 13 h
+";
+    let (description, build) = read(text, &[]);
+    let catalogs = Catalogs::builtin();
+    let asked = Asked::new(&description, &build, &catalogs);
+    let share = Share {
+        of_builds: Fraction(0.7),
+        runs: 40,
+        seed: 3,
+    };
+    let answer = size(&asked, Some(share), &mut |_, _| {}).expect("an answer");
+    let wanted = Wanted {
+        runs: share.runs,
+        seed: share.seed,
+        ..Wanted::default()
+    };
+    let odds_of = |set: &[String]| {
+        let (description, _) = read(text, set);
+        odds(&description, &catalogs, wanted, &|| ()).expect("odds")
+    };
+    let stated = odds_of(&[]);
+    let summary = answer.share.expect("a share");
+    assert_eq!(summary.keeps_up_share, stated.keeps_up_share);
+    assert_eq!(answer.keeps_up, stated.keeps_up_share >= share.of_builds);
+    let mut proved = 0;
+    for answer in answer.answers.iter().filter(|a| a.amount.is_some()) {
+        let drawn = |t: &Toleranced| answer.set.as_deref() == Some(t.path.as_str());
+        if answer.set.is_none() || stated.tolerances.iter().any(drawn) {
+            continue; // with the value set its tolerance goes
+        }
+        let beyond = match answer.bound {
+            Bound::Least => 0.96,
+            Bound::Most => 1.04,
+        };
+        let share_at = |factor| {
+            let set = scaled(answer, factor).expect("a path");
+            (odds_of(std::slice::from_ref(&set)).keeps_up_share, set)
+        };
+        let (at, beyond) = (share_at(1.0), share_at(beyond));
+        assert!(at.0 >= share.of_builds, "{at:?}");
+        assert!(beyond.0 < share.of_builds, "{beyond:?}");
+        proved += 1;
+    }
+    assert!(proved >= 5, "{proved} proved");
+    // more builds ask for more
+    let winding = |size: &Size| size.answers[0].amount.expect("a least winding");
+    assert!(winding(&answer) > winding(&sizes(text)));
 }
 
 /// Parts that are listed keep up when fitted, parts that are not do not, in order of size.
@@ -241,10 +306,7 @@ fn progress_counts_to_its_end() {
     let catalogs = Catalogs::builtin();
     let asked = Asked::new(&description, &build, &catalogs);
     let mut steps = Vec::new();
-    size(&asked, &Options::default(), &mut |done, all| {
-        steps.push((done, all))
-    })
-    .expect("an answer");
+    size(&asked, None, &mut |done, all| steps.push((done, all))).expect("an answer");
     let all = steps.len();
     assert!(
         steps

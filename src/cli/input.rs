@@ -4,7 +4,7 @@ use super::args::{BuildArgs, Common};
 use ampledger::build::Build;
 use ampledger::catalog::Catalogs;
 use ampledger::description::set::Assignment;
-use ampledger::description::{Description, bytes_of, read_file, read_set};
+use ampledger::description::{Description, Written, bytes_of, read_file, read_set};
 use ampledger::problem::{Problem, Refusal, Source};
 use ampledger::quantity::parse::parse;
 use ampledger::quantity::{Celsius, Fraction};
@@ -47,8 +47,15 @@ pub fn build(file: &str, args: &BuildArgs, catalogs: &Catalogs) -> anyhow::Resul
                 .map_err(|problem| Refusal::new(Source::default(), Problem::whole(problem)))
         })
         .collect::<Result<_, _>>()?;
-    let (description, source) =
+    let (mut description, source) =
         describe(file, &assignments).map_err(|refusal| whole(refusal, catalogs))?;
+    if let Some(text) = &args.air {
+        description.air = Some(Written {
+            value: value::<Celsius>("--air", text)?,
+            tolerance: None,
+            path: "air".to_owned(),
+        });
+    }
     let build = resolved(&description, &source, args, catalogs)?;
     Ok(Opened {
         description,

@@ -4,7 +4,7 @@ use super::args::{Common, OddsArgs};
 use super::input::{self, Opened};
 use super::progress::Progress;
 use super::{check, output};
-use ampledger::description::{Assignment, Written, read_set};
+use ampledger::description::{Assignment, read_set};
 use ampledger::odds::{Odds, OddsError, Wanted, odds};
 use ampledger::problem::Refusal;
 use ampledger::quantity::format::{self, precise};
@@ -19,18 +19,11 @@ use std::path::Path;
 /// The build has no answer; a file cannot be written.
 pub fn run(args: &OddsArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
-    let mut opened = input::build(&args.build, &args.changes, &catalogs)?;
+    let opened = input::build(&args.build, &args.changes, &catalogs)?;
     let air = match &args.changes.air {
         Some(text) => Some(input::value::<Celsius>("--air", text)?),
         None => None,
     };
-    if let Some(value) = air {
-        opened.description.air = Some(Written {
-            value,
-            tolerance: None,
-            path: "air".to_owned(),
-        });
-    }
     let start = match &args.changes.start {
         Some(text) => input::value::<Fraction>("--start", text)?,
         None => Fraction::ONE,

@@ -1,13 +1,14 @@
 //! `ampledger size`.
 
-use super::args::Common;
 use super::args::mend::SizeArgs;
+use super::args::{Common, Format};
 use super::progress::Progress;
 use super::{DOES_NOT, KEEPS_UP, input, output};
+use ampledger::quantity::Fraction;
 use ampledger::remedy::Asked;
-use ampledger::size::{self, Options};
+use ampledger::size::{self, Share};
 use ampledger::view;
-use anyhow::Context;
+use anyhow::{Context, bail};
 
 /// Solves each number of the build alone; the exit code is that of the build as it is.
 ///
@@ -24,13 +25,31 @@ pub fn run(args: &SizeArgs, common: &Common) -> anyhow::Result<u8> {
         own,
         ..Asked::new(&opened.description, &opened.build, &catalogs)
     };
+    let share = share(args)?;
     let progress = Progress::new(1, "sizes");
-    let answer = size::size(&asked, &Options::default(), &mut |done, all| {
+    let answer = size::size(&asked, share, &mut |done, all| {
         progress.reached(done, all);
     })
     .with_context(|| opened.source.name.clone())?;
     drop(progress);
-    let report = || output::addressed(view::size(&answer), &args.hand_over);
+    let page = common.format == Format::Html;
+    let report = || output::addressed(view::size(&answer, page), &args.hand_over);
     output::write(common, report, &answer)?;
     Ok(if answer.keeps_up { KEEPS_UP } else { DOES_NOT })
+}
+
+/// The share of builds that is to keep up, where one is asked.
+fn share(args: &SizeArgs) -> anyhow::Result<Option<Share>> {
+    let Some(text) = &args.odds else {
+        return Ok(None);
+    };
+    let of_builds = input::value::<Fraction>("--odds", text)?;
+    if !(0.01..=1.0).contains(&of_builds.0) {
+        bail!("--odds `{text}`: a share of builds lies between 1 % and 100 %");
+    }
+    Ok(Some(Share {
+        of_builds,
+        runs: args.runs,
+        seed: args.seed,
+    }))
 }

@@ -185,7 +185,8 @@ fn render_part(table: &Table, part: &[Span], style: &Style) -> Vec<String> {
         rows.push(
             columns
                 .iter()
-                .map(|i| painted(table, row, *i, bar_width, style))
+                .zip(&widths)
+                .map(|(i, width)| painted(table, row, *i, *width, style))
                 .collect(),
         );
     }
@@ -216,18 +217,38 @@ fn bar_beside(table: &Table, part: &[Span], room: usize) -> Option<(usize, Vec<u
     (used <= room && part.len() + 1 == table.columns.len()).then_some((bar, widths))
 }
 
-fn painted(table: &Table, row: &Row, index: usize, bar: usize, style: &Style) -> (String, Tone) {
+fn painted(table: &Table, row: &Row, index: usize, width: usize, style: &Style) -> (String, Tone) {
     let Some(cell) = row.cells.get(index) else {
         return (String::new(), Tone::Plain);
     };
     if table.columns[index].kind == ColumnKind::Bar {
         let strip = cell
             .bar
-            .map(|b| terminal::strip(b, bar, style.ascii))
+            .map(|b| terminal::strip(b, width, style.ascii))
             .unwrap_or_default();
         return (strip, cell.tone);
     }
-    (shown(cell, style), cell.tone)
+    (at_hyphens(&shown(cell, style), width), cell.tone)
+}
+
+/// A text whose longest words are broken after a hyphen: ids wrap where they may be read on.
+fn at_hyphens(text: &str, width: usize) -> String {
+    let broken = |word: &str| -> String {
+        let mut lines = vec![String::new()];
+        for piece in word.split_inclusive('-') {
+            match lines.last_mut() {
+                Some(line) if length(line) + length(piece) <= width => line.push_str(piece),
+                _ => lines.push(piece.to_owned()),
+            }
+        }
+        lines.retain(|line| !line.is_empty());
+        lines.join("\n")
+    };
+    let words = text.split(' ').map(|word| match length(word) > width {
+        true => broken(word),
+        false => word.to_owned(),
+    });
+    words.collect::<Vec<_>>().join(" ")
 }
 
 fn shown(cell: &Cell, style: &Style) -> String {

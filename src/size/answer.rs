@@ -1,5 +1,6 @@
 //! What size would do: the answers, each proved by the full verdict.
 
+use super::crowd::{Crowd, InShare, Share};
 use super::guideline::{Guideline, guideline};
 use super::influence::{Influence, influence};
 use super::knob::{self, Knob, knobs};
@@ -10,7 +11,7 @@ use super::reason::{reserve_of, why_not};
 use super::rebuild::{self, WindingRow};
 use super::search::{Bound, Found, Search};
 use super::value::written;
-use super::{keeps_up, proves};
+use super::yardstick::Yardstick;
 use crate::build::{Build, State};
 use crate::check::{FORMAT, SolveError};
 use crate::ledger::Machine;
@@ -28,8 +29,10 @@ pub struct Size {
     pub format: u32,
     /// Name of the build.
     pub build: String,
-    /// Whether it keeps up as it is.
+    /// Whether it keeps up as it is; with a share, whether that share does.
     pub keeps_up: bool,
+    /// The share of builds that is to keep up, where one was asked; none for the build as stated.
+    pub share: Option<InShare>,
     /// Why not, where it does not.
     pub binds: Option<String>,
     /// One answer a number that may be varied.
@@ -65,32 +68,14 @@ pub struct Answer {
     pub parts: Vec<String>,
 }
 
-/// How sizes are judged.
-#[derive(Clone, Copy)]
-pub struct Options<'a> {
-    /// Whether a build is good enough. By default that it keeps up; with a tolerance, that it does in
-    /// a share of builds.
-    pub keeps: &'a dyn Fn(&Build) -> bool,
-    /// The same without any short cut: every amount is proved with it.
-    pub proves: &'a dyn Fn(&Build) -> bool,
-}
-
-impl Default for Options<'_> {
-    fn default() -> Self {
-        Options {
-            keeps: &keeps_up,
-            proves: &proves,
-        }
-    }
-}
-
-/// Solves each number alone. `progress` is told how many of how many steps are done.
+/// Solves each number alone: with which the build as stated keeps up or, with a `share`, that share of the builds
+/// within its tolerances. `progress` is told how many of how many steps are done.
 ///
 /// # Errors
 /// [`SolveError`]: no battery to keep charged, or no time in the shift.
 pub fn size(
     asked: &Asked<'_>,
-    options: &Options<'_>,
+    share: Option<Share>,
     progress: &mut dyn FnMut(usize, usize),
 ) -> Result<Size, SolveError> {
     let build = asked.build;
@@ -106,28 +91,31 @@ pub fn size(
         done += 1;
         progress(done, all);
     };
+    let yardstick = match share {
+        None => Yardstick::Stated(build),
+        Some(share) => Yardstick::Share(Crowd::new(*asked, share)),
+    };
     let fitted = Offers {
-        batteries: parts::batteries(asked, options.keeps),
+        batteries: parts::batteries(asked, &yardstick),
         windings: knob::windings(build)
-            .map(|(index, _, _)| (index, parts::windings(asked, index, options.keeps)))
+            .map(|(index, _, _)| (index, parts::windings(asked, index, &yardstick)))
             .collect(),
     };
     step();
-    let now_keeps = (options.keeps)(build);
+    let now_keeps = yardstick.now();
     let mut margin = Margin::new(build, machine);
     let mut answers = Vec::with_capacity(knobs.len());
     for knob in &knobs {
         let mut search = Search {
             build,
             knob,
-            keeps: options.keeps,
-            proves: options.proves,
+            yardstick: &yardstick,
             margin: &mut margin,
             now_keeps,
         };
         let found = search.run();
         answers.extend(found.map(|found| {
-            let mut answer = answer(build, knob, found, &fitted);
+            let mut answer = answer(build, knob, found, &fitted, &yardstick);
             answer.set = answer.set.filter(|path| asked.in_file(path));
             answer
         }));
@@ -143,7 +131,8 @@ pub fn size(
         format: FORMAT,
         build: build.name.clone(),
         keeps_up: now_keeps,
-        binds: (!now_keeps).then(|| why_not(build)),
+        share: yardstick.summary(),
+        binds: (!now_keeps).then(|| why_not(&yardstick.failing_now())),
         answers,
         guideline: guideline(build),
         windings,
@@ -180,7 +169,13 @@ fn asked_knobs(build: &Build) -> Vec<Knob> {
     knobs(build).into_iter().filter(wanted).collect()
 }
 
-fn answer(build: &Build, knob: &Knob, found: Found, offers: &Offers) -> Answer {
+fn answer(
+    build: &Build,
+    knob: &Knob,
+    found: Found,
+    offers: &Offers,
+    yardstick: &Yardstick<'_>,
+) -> Answer {
     let unit = knob.stated(build, 1.0).1;
     let parts = match knob {
         Knob::Winding(index) => offers
@@ -211,7 +206,7 @@ fn answer(build: &Build, knob: &Knob, found: Found, offers: &Offers) -> Answer {
             answer.bound = bound;
             answer.amount = Some(knob.stated(build, amount).0);
             answer.value = Some(written(amount, knob.unit(build)));
-            let beyond_it = knob.apply(build, beyond.min(knob.range(build).1));
+            let beyond_it = yardstick.failing(knob, beyond.min(knob.range(build).1));
             answer.binds = match knob {
                 Knob::Capacity | Knob::ColdCranking => reserve_of(&beyond_it),
                 Knob::Reserve => "the lowest charge of the shift it settles at".to_owned(),
@@ -226,7 +221,7 @@ fn answer(build: &Build, knob: &Knob, found: Found, offers: &Offers) -> Answer {
         }
         Found::Never { bound, best } => {
             answer.bound = bound;
-            answer.binds = format!("not by this: {}", why_not(&knob.apply(build, best)));
+            answer.binds = format!("not by this: {}", why_not(&yardstick.failing(knob, best)));
         }
         Found::Ragged(bound) => {
             answer.bound = bound;

@@ -6,6 +6,7 @@
 
 mod answer;
 mod apply;
+mod crowd;
 mod guideline;
 mod influence;
 mod knob;
@@ -20,8 +21,10 @@ mod search;
 mod tests;
 mod value;
 mod worth;
+mod yardstick;
 
-pub use answer::{Answer, Options, Size, size};
+pub use answer::{Answer, Size, size};
+pub use crowd::{InShare, Share};
 pub use guideline::{ALLOWED, Guideline, guideline};
 pub use influence::{Influence, influence};
 pub use knob::{Knob, knobs};

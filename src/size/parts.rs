@@ -2,9 +2,10 @@
 
 use super::knob::{Knob, top_speed};
 use super::value::Rated;
+use super::yardstick::Yardstick;
 use crate::build::{Build, SourceKind};
-use crate::catalog::Kind;
-use crate::description::{BatteryText, ChargingText};
+use crate::catalog::{Entry, Kind};
+use crate::description::{BatteryText, ChargingText, Description};
 use crate::quantity::{Amps, Rpm};
 use crate::remedy::{Asked, swap};
 
@@ -21,11 +22,7 @@ pub(super) struct Fitted {
 }
 
 /// Every catalog winding and alternator in place of a source, as far as it fits.
-pub(super) fn windings(
-    asked: &Asked<'_>,
-    index: usize,
-    keeps: &dyn Fn(&Build) -> bool,
-) -> Vec<Fitted> {
+pub(super) fn windings(asked: &Asked<'_>, index: usize, yardstick: &Yardstick<'_>) -> Vec<Fitted> {
     let parts = asked.parts::<ChargingText>(Kind::Charging).into_iter();
     parts
         .filter_map(|part| {
@@ -33,29 +30,34 @@ pub(super) fn windings(
             let build = asked.resolved(&swapped.description)?;
             let source = build.sources.get(index)?;
             let feeds = source.circuit.is_none() && !source.braking;
-            feeds.then(|| fitted(&part.entry.id, &part.entry.title, build, keeps))
+            feeds.then(|| fitted(&part.entry, &swapped.description, build, yardstick))
         })
         .collect()
 }
 
 /// Every catalog battery of as many cells in place of the battery.
-pub(super) fn batteries(asked: &Asked<'_>, keeps: &dyn Fn(&Build) -> bool) -> Vec<Fitted> {
+pub(super) fn batteries(asked: &Asked<'_>, yardstick: &Yardstick<'_>) -> Vec<Fitted> {
     let parts = asked.parts::<BatteryText>(Kind::Battery).into_iter();
     parts
         .filter_map(|part| {
             let swapped = swap::battery(asked.description, &part.entry.id)?;
             let build = asked.resolved(&swapped.description)?;
             let same = build.cells() == asked.build.cells();
-            same.then(|| fitted(&part.entry.id, &part.entry.title, build, keeps))
+            same.then(|| fitted(&part.entry, &swapped.description, build, yardstick))
         })
         .collect()
 }
 
-fn fitted(id: &str, title: &str, build: Build, keeps: &dyn Fn(&Build) -> bool) -> Fitted {
+fn fitted(
+    entry: &Entry,
+    description: &Description,
+    build: Build,
+    yardstick: &Yardstick<'_>,
+) -> Fitted {
     Fitted {
-        id: id.to_owned(),
-        title: title.to_owned(),
-        keeps_up: keeps(&build),
+        id: entry.id.clone(),
+        title: entry.title.clone(),
+        keeps_up: yardstick.fits(description, &build),
         build,
     }
 }

@@ -3,6 +3,7 @@
 use super::knob::Knob;
 use super::margin::Margin;
 use super::value::{Round, rounded};
+use super::yardstick::Yardstick;
 use crate::build::Build;
 
 /// Significant digits of an amount: four move it by at most 0.1 %.
@@ -61,8 +62,7 @@ pub(super) enum Found {
 pub(super) struct Search<'a, 'b> {
     pub(super) build: &'b Build,
     pub(super) knob: &'a Knob,
-    pub(super) keeps: &'a dyn Fn(&Build) -> bool,
-    pub(super) proves: &'a dyn Fn(&Build) -> bool,
+    pub(super) yardstick: &'a Yardstick<'b>,
     pub(super) margin: &'a mut Margin<'b>,
     /// Whether the build as it is keeps up.
     pub(super) now_keeps: bool,
@@ -70,11 +70,11 @@ pub(super) struct Search<'a, 'b> {
 
 impl Search<'_, '_> {
     fn keeps(&self, x: f64) -> bool {
-        (self.keeps)(&self.knob.apply(self.build, x))
+        self.yardstick.keeps(self.knob, x)
     }
 
     fn proved(&self, x: f64) -> bool {
-        (self.proves)(&self.knob.apply(self.build, x))
+        self.yardstick.proves(self.knob, x)
     }
 
     /// The edge of the knob.
@@ -257,8 +257,11 @@ impl Search<'_, '_> {
         (short, holds)
     }
 
-    /// Where the margin is nought.
+    /// Where the margin of the build as stated is nought; none where it is not what decides.
     fn followed(&mut self, short: f64, holds: f64) -> Option<f64> {
+        if !self.yardstick.follows_margin() {
+            return None;
+        }
         let ends = (
             self.margin.at(self.knob, short),
             self.margin.at(self.knob, holds),

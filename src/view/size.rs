@@ -1,7 +1,7 @@
 //! Sizes as a report: each number alone, the guideline, the catalog windings, what matters most.
 
 use crate::chart::Chart;
-use crate::quantity::{AmpHours, Amps, Rpm, Volts, Watts, format};
+use crate::quantity::{AmpHours, Amps, Fraction, Rpm, Volts, Watts, format};
 use crate::report::{Cell, Column, Item, Report, Table, Tone};
 use crate::size::{Answer, Bound, Guideline, Influence, Size, WindingRow};
 
@@ -10,23 +10,12 @@ const MOST_PARTS: usize = 6;
 /// Inputs shown by their influence.
 const MOST_INFLUENCES: usize = 10;
 
-/// The report of sizes.
+/// The report of sizes; as a `page` to hand over with charts.
 #[must_use]
-pub fn size(answer: &Size) -> Report {
-    let (tone, lead, sentence) = match &answer.binds {
-        None => (
-            Tone::Good,
-            "Keeps up",
-            "each number below, alone, may go as far as its amount.".to_owned(),
-        ),
-        Some(binds) => (
-            Tone::Bad,
-            "Does not keep up",
-            format!("{binds}; each amount below, alone, would mend it."),
-        ),
-    };
+pub fn size(answer: &Size, page: bool) -> Report {
+    let (tone, lead, sentence) = verdict(answer);
     let mut report = Report::new(&answer.build)
-        .subtitle("Sizes: each number alone, all others held")
+        .subtitle(subtitle(answer))
         .verdict(tone, lead, sentence);
     if answer.answers.iter().any(|a| a.amount.is_some()) {
         report = report.table(answers(&answer.answers));
@@ -47,9 +36,45 @@ pub fn size(answer: &Size) -> Report {
         report = report.table(guideline(&answer.guideline));
     }
     if !answer.influence.is_empty() {
-        report = report.chart(influence(&answer.influence));
+        if page {
+            report = report.chart(influence_chart(&answer.influence));
+        }
+        report = report.table(influences(&answer.influence, !page));
     }
     report
+}
+
+fn subtitle(answer: &Size) -> String {
+    let each = "Sizes: each number alone, all others held";
+    match &answer.share {
+        None => each.to_owned(),
+        Some(share) => format!(
+            "{each}; to keep up in {} of builds ({}, seed {})",
+            format::percent(share.wanted),
+            format::count(
+                u32::try_from(share.runs).unwrap_or(u32::MAX),
+                "draw",
+                "draws"
+            ),
+            share.seed
+        ),
+    }
+}
+
+fn verdict(answer: &Size) -> (Tone, String, String) {
+    let (tone, holds) = match &answer.binds {
+        None => (Tone::Good, "Keeps up"),
+        Some(_) => (Tone::Bad, "Does not keep up"),
+    };
+    let lead = match &answer.share {
+        None => holds.to_owned(),
+        Some(share) => format!("Keeps up in {}", format::percent(share.keeps_up_share)),
+    };
+    let sentence = match &answer.binds {
+        None => "each number below, alone, may go as far as its amount.".to_owned(),
+        Some(binds) => format!("{binds}; each amount below, alone, would mend it."),
+    };
+    (tone, lead, sentence)
 }
 
 /// Numbers without an edge, those of one reason together.
@@ -188,17 +213,46 @@ fn guideline(rows: &[Guideline]) -> Table {
         .note("FAA AC 43.13-1B §11-35: a rule of thumb for continuous load, not the verdict. Cycling loads by their duty; bus at 14 V for each 12 V.")
 }
 
-/// The inputs that move the charge lacking most.
-fn influence(rows: &[Influence]) -> Chart {
-    let shown = rows.iter().take(MOST_INFLUENCES);
-    let bars = shown.clone().map(|i| {
-        let sign = if i.ah_per_percent.0 < 0.0 {
-            "helps"
+/// The inputs that move the charge lacking most, with bars of it where no chart shows them.
+fn influences(rows: &[Influence], bars: bool) -> Table {
+    let rows = &rows[..rows.len().min(MOST_INFLUENCES)];
+    let decimals = format::decimals(rows.iter().map(|i| i.ah_per_percent.abs()));
+    let longest = rows
+        .iter()
+        .map(|i| i.ah_per_percent.0.abs())
+        .fold(0.0, f64::max);
+    let cells = rows.iter().map(|i| {
+        let (word, tone) = if i.ah_per_percent < AmpHours::ZERO {
+            ("lacks less", Tone::Good)
         } else {
-            "harms"
+            ("lacks more", Tone::Bad)
         };
-        (format!("{} ({sign})", i.what), i.ah_per_percent.abs())
+        let mut row = vec![
+            Cell::name(&i.what),
+            Cell::text(word).tone(tone),
+            Cell::fixed(i.ah_per_percent.abs(), decimals),
+        ];
+        if bars {
+            row.push(Cell::bar(Fraction(
+                i.ah_per_percent.0.abs() / longest.max(1e-12),
+            )));
+        }
+        row
     });
+    Table::new("What moves the charge lacking each shift")
+        .columns([
+            Column::name("1 % more of"),
+            Column::text("Then it"),
+            Column::number::<AmpHours>("By"),
+        ])
+        .columns(bars.then(Column::bar))
+        .rows(cells)
+}
+
+/// The same as a chart.
+fn influence_chart(rows: &[Influence]) -> Chart {
+    let bars = rows.iter().take(MOST_INFLUENCES);
+    let bars = bars.map(|i| (i.what.clone(), i.ah_per_percent.abs()));
     let first = rows.first().map_or(String::new(), |i| {
         format!(
             "1 % more {} changes it most, by {}.",

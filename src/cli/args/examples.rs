@@ -76,6 +76,7 @@ Each amount is on the side that keeps up, and just beyond it does not.
 Examples:
   ampledger size mower.yaml
   ampledger size mower.yaml --set 'accessories[0].count=4'
+  ampledger size mower.yaml --odds '95 %'
   ampledger size mower.yaml --format json";
 
 /// Of `remedy`.

@@ -16,6 +16,15 @@ pub struct SizeArgs {
     /// A kit to add first, by its id or file
     #[arg(long, value_name = "KIT")]
     pub with: Option<String>,
+    /// Ask for what keeps up in this share of the builds within the tolerances, `95 %`
+    #[arg(long, value_name = "SHARE")]
+    pub odds: Option<String>,
+    /// How many builds are drawn for --odds
+    #[arg(long, value_name = "COUNT", requires = "odds", default_value_t = 256, value_parser = clap::value_parser!(u64).range(20..=100_000))]
+    pub runs: u64,
+    /// Which sequence of draws --odds takes: the same seed gives the same answer
+    #[arg(long, value_name = "NUMBER", requires = "odds", default_value_t = 1)]
+    pub seed: u64,
     /// Whom the answer goes to.
     #[command(flatten)]
     pub hand_over: HandOver,

@@ -115,3 +115,12 @@ fn words_wrap_and_a_word_without_end_is_cut() {
             .all(|l| l.chars().count() <= 8)
     );
 }
+
+#[test]
+fn long_ids_break_after_a_hyphen() {
+    assert_eq!(
+        super::at_hyphens("winding-20a-three-phase fits", 16),
+        "winding-20a-\nthree-phase fits"
+    );
+    assert_eq!(super::at_hyphens("no-break here", 16), "no-break here");
+}
