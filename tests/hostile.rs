@@ -14,7 +14,7 @@ use ampledger::battery::Charge;
 use ampledger::build::{Build, Draw};
 use ampledger::catalog::Catalogs;
 use ampledger::check::answer::{Check, Verdict};
-use ampledger::check::{SolveError, Wanted, check, first_shift, judge, rule_on};
+use ampledger::check::{Passage, SolveError, Wanted, check, first_shift, judge, rule_on};
 use ampledger::curve::curve;
 use ampledger::description::read;
 use ampledger::ledger::Machine;
@@ -22,7 +22,7 @@ use ampledger::problem::Refusal;
 use ampledger::quantity::{AmpHours, Amps, Fraction, Ohms, Rpm, Volts};
 use ampledger::resolve::resolve;
 use ampledger::root::{RootError, bracketed};
-use builds::{Draft, Load, draft};
+use builds::{Charging, Draft, Load, draft};
 use proptest::prelude::*;
 use std::path::Path;
 
@@ -59,7 +59,7 @@ fn cases(usual: u32) -> ProptestConfig {
 }
 
 proptest! {
-    #![proptest_config(cases(32))]
+    #![proptest_config(cases(20))]
 
     /// Figures are figures, charges are shares of full, and the verdict follows from them.
     #[test]
@@ -92,24 +92,29 @@ proptest! {
         prop_assert!(book.imbalance().0.abs() <= 1e-9 * through.0.max(1e-3), "{book:?}\n{text}");
     }
 
-    /// More load never raises the charge at which it settles, nor turns a verdict for the better. (Where loads drop out
-    /// it may: a lower bus then sheds others.)
+    /// More load never raises the charge at which it settles, nor turns a verdict for the better, nor lacks less (to the
+    /// thousandth to which that is found). Where loads drop out it may: a lower bus then sheds others.
     #[test]
     fn more_load_never_helps(draft in draft(), amps in 0.05..5.0f64, share in 0.1..1.0f64) {
         let more = Load { amps, law: "current", idle: share, governed: share, stopped: 0.0, parked: 0.0 };
         let draft = Draft { holds_on: true, ..draft };
         let heavier = Draft { loads: [draft.loads.clone(), vec![more]].concat(), ..draft.clone() };
-        let (light, heavy) = (answered(&draft.yaml()), answered(&heavier.yaml()));
+        let ruled = |draft: &Draft| {
+            let build = built(&draft.yaml());
+            let machine = Machine::new(&build).expect("a battery");
+            rule_on(&build, &machine).expect("a ruling")
+        };
+        let (light, heavy) = (ruled(&draft), ruled(&heavier));
         prop_assert!(heavy.verdict >= light.verdict, "{}", heavier.yaml());
-        if let (Some(light), Some(heavy)) = (light.settles_soc, heavy.settles_soc) {
-            prop_assert!(heavy <= light + Fraction(1e-6), "{light:?} {heavy:?}\n{}", heavier.yaml());
+        if let (Some((light, _)), Some((heavy, _))) = (light.settles, heavy.settles) {
+            prop_assert!(heavy.soc <= light.soc + Fraction(1e-6), "{light:?} {heavy:?}\n{}", heavier.yaml());
         }
-        if let (Some(light), Some(heavy)) = (light.lacks_ah, heavy.lacks_ah) {
-            prop_assert!(heavy.0 >= light.0 - 1e-6, "{light:?} {heavy:?}\n{}", heavier.yaml());
+        if let (Some(light), Some(heavy)) = (light.lacks, heavy.lacks) {
+            prop_assert!(heavy.0 >= 0.999 * light.0 - 1e-4, "{light:?} {heavy:?}\n{}", heavier.yaml());
         }
     }
 
-    /// What is said to be lacking is enough, and three hundredths less are not.
+    /// What is said to be lacking is enough, and a hundredth less is not.
     #[test]
     fn what_is_lacking_is_what_it_takes(draft in draft()) {
         let text = Draft { holds_on: true, ..draft }.yaml();
@@ -124,9 +129,35 @@ proptest! {
         if let (Some(amps), false) = (ruling.lacks_current, ruling.verdict == Verdict::KeepsUp) {
             prop_assert!(amps > Amps::ZERO, "{ruling:?}\n{text}");
             prop_assert!(holds(amps + Amps(1e-4 + 1e-4 * amps.0)), "{ruling:?}\n{text}");
-            // where a battery holds itself up from full only, the edge is looked for at a few depths
-            prop_assert!(!holds(0.97 * amps - Amps(1e-3)), "{ruling:?}\n{text}");
+            prop_assert!(!holds(0.99 * amps - Amps(1e-4)), "{ruling:?}\n{text}");
         }
+    }
+
+    /// Where loads and source take what they take whatever the volts, and the shift only discharges, a larger battery is
+    /// left with no smaller share of its charge. (Elsewhere it need not be: the same amps fill the smaller one sooner,
+    /// without a regulator the larger one gasses more, and a small one that collapses under resistances keeps what it can
+    /// no longer give.)
+    #[test]
+    fn a_larger_battery_is_left_with_no_less(draft in draft(), times in 1.05..3.0f64, part in 0.1..1.0f64) {
+        let amps = part * draft.charging.rated;
+        let more = Load { amps, law: "current", idle: 1.0, governed: 1.0, stopped: 1.0, parked: 0.0 };
+        let mut loads = [draft.loads.clone(), vec![more]].concat();
+        loads.iter_mut().for_each(|load| load.law = "current");
+        let charging = Charging { alternator: true, phases: 3, ..draft.charging };
+        let draft = Draft { holds_on: true, loads, charging, ..draft };
+        let mut larger = draft.clone();
+        larger.battery.capacity *= times;
+        larger.battery.cranking *= times;
+        let shift = |draft: &Draft| {
+            let build = built(&draft.yaml());
+            let machine = Machine::new(&build).expect("a battery");
+            first_shift(&build, &machine, Charge::FULL, false)
+        };
+        let small = shift(&draft);
+        let given = |leg: &Passage| leg.after.soc <= leg.before.soc && leg.mean.bus > Volts(6.0);
+        prop_assume!(small.legs.iter().all(given));
+        let large = shift(&larger).lowest;
+        prop_assert!(large >= small.lowest - Fraction(1e-6), "{:?} {large:?} {times}\n{}", small.lowest, draft.yaml());
     }
 
     /// At volts below any setpoint, a faster engine never gives less current.

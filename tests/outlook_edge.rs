@@ -69,3 +69,40 @@ fn the_edge_divides_whatever_the_load() {
         wrong.join("\n")
     );
 }
+
+/// A cart, invented, whose constant power holds its bus up from a full battery long after a low one could not: the
+/// touching cycle alone would ask for 12.8 A where 5.0 A do.
+#[test]
+fn a_full_battery_that_holds_itself_up_is_seen() {
+    let text = "\
+build: sprayer cart
+air: -5.8 °C
+engine: {speeds: {idle: 1917.9 rpm}, starter: {draw: 113.5 A, time: 2 s}}
+charging:
+  - alternator: {curve: [0 A at 1300 rpm, 15.16 A at 2200 rpm, 24.26 A at 3600 rpm, 30.32 A at 6000 rpm], ratio: 2.1}
+battery: {capacity: 28.85 Ah, cold_cranking: 355.2 A, type: gel}
+accessories:
+  - {name: pump, draw: 165.1 W, works: 0 V to 90 V, duty: 100 %}
+  - {name: lamps, draw: 166.73 W, law: filament, at: 13 V, works: 0 V to 90 V, duty: 12.78 %}
+  - {name: beacon, draw: 55.15 W, law: filament, at: 13 V, works: 0 V to 90 V, duty: 100 %}
+  - {name: heater, draw: 9.228 A, works: 0 V to 90 V, duty: 91.98 %}
+shift: [{idle: 126.3 min}]
+parked: 0 h
+";
+    let (description, _) = read("cart", text.as_bytes()).expect("a build");
+    let build = resolve(&description, &Catalogs::builtin()).expect("complete");
+    let mut machine = Machine::new(&build).expect("a battery");
+    let reserve = reserve(&build, &machine).soc;
+    let edge = machine
+        .edge(reserve, Spread::Everywhere)
+        .expect("an edge")
+        .0;
+    let mut keeps = |current: f64| {
+        machine.set_extra(Amps(current));
+        machine.repeat(Charge::FULL, reserve, 3000).keeps_up()
+    };
+    assert!(
+        keeps(1.002 * edge) && !keeps(0.993 * edge),
+        "edge {edge} A of plain repetition"
+    );
+}

@@ -27,6 +27,11 @@ const CLOSED: f64 = 1e-9;
 /// Width, as a share of the current, to which it is found.
 const FOUND_TO: f64 = 2e-5;
 
+/// Width, as a share of the current, within which the edge of a build with constant powers is proved.
+const PROVED: f64 = 1e-3;
+/// The same of a current near nought, A.
+const PROVED_AT_NOUGHT: f64 = 2e-5;
+
 /// Searches for the current of the touching cycle, each from where the last ended.
 const MOST_SEARCHES: u32 = 4;
 
@@ -118,7 +123,8 @@ impl Machine {
         if !self.has_constant_powers() {
             return Some(Amps(touching));
         }
-        Some(Amps(search.held_up_from_full(touching)))
+        let least = search.held_up_from_full(touching);
+        Some(Amps(search.proved(least)))
     }
 }
 
@@ -241,6 +247,32 @@ impl Search {
         least
     }
 
+    /// The edge by its definition: if the build keeps up from full with a little less than a current found, the least
+    /// current with which it does, between the two.
+    fn proved(&mut self, found: f64) -> f64 {
+        let mut keeps = |current: f64| {
+            self.add(current);
+            self.machine.keeps_up(Charge::FULL, self.reserve)
+        };
+        let width = PROVED * found.abs() + PROVED_AT_NOUGHT;
+        let (mut low, mut high) = (found - width, found);
+        while keeps(low) {
+            if low < -BEYOND {
+                return low;
+            }
+            (low, high) = (low - 2.0 * (found - low), low);
+        }
+        while high < found && high - low > width {
+            let middle = 0.5 * (low + high);
+            if keeps(middle) {
+                high = middle
+            } else {
+                low = middle
+            }
+        }
+        high
+    }
+
     /// Lowers the least current to that with which the cycle at a depth closes, if that is less.
     fn lowers(&mut self, least: &mut f64, top: f64, depth: f64) -> bool {
         let soc = self.reserve.0 + (1.0 - (-depth).exp()) * (top - self.reserve.0);
@@ -261,12 +293,18 @@ impl Search {
         }
     }
 
-    /// Gain over a cycle begun where the touching cycle is lowest, with a charge.
+    /// Gain over a cycle begun where the touching cycle is lowest, with a charge and the depletion that a cycle from
+    /// there leaves.
     fn gain_from(&mut self, soc: f64) -> f64 {
-        let begin = Charge {
+        let mut begin = Charge {
             soc: Fraction(soc),
             depletion: self.turn.depletion,
         };
+        begin.depletion = self
+            .machine
+            .pass_around(self.turn.from, begin)
+            .end
+            .depletion;
         self.machine.pass_around(self.turn.from, begin).end.soc.0 - soc
     }
 }

@@ -182,7 +182,7 @@ impl Load {
             0.0 => String::new(),
             amps => format!(", parked: {:.2} mA", 1000.0 * amps),
         };
-        let works = if holds_on { ", works: 1 V to 90 V" } else { "" };
+        let works = if holds_on { ", works: 0 V to 90 V" } else { "" };
         let share = |x: f64| format!("{:.2} %", 100.0 * x);
         format!(
             "  - {{name: {name}, draw: {draw}{works}{parked}, duty: {{idle: {}, governed: {}, stopped: {}}}}}\n",
