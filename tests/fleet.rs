@@ -46,8 +46,10 @@ fn judged(plan: &Plan) -> Fleet {
     Fleet {
         format: 1,
         fleet: plan.name.clone(),
+        currency: String::new(),
         rows,
         totals,
+        notes: Vec::new(),
     }
 }
 

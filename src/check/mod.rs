@@ -93,7 +93,10 @@ pub fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError> {
 }
 
 /// Whether there is anything to solve, and in numbers.
-fn solvable(build: &Build) -> Result<(), SolveError> {
+///
+/// # Errors
+/// [`SolveError`]: no time in the shift, a figure that is no number.
+pub(crate) fn solvable(build: &Build) -> Result<(), SolveError> {
     if !all_finite(build) {
         return Err(SolveError::NotFinite);
     }

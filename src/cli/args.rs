@@ -198,6 +198,9 @@ pub struct FleetArgs {
     /// Verdicts only: look for no remedy
     #[arg(long)]
     pub no_remedy: bool,
+    /// Your own prices by part id, before those of the catalogs
+    #[arg(long, value_name = "FILE.yaml", conflicts_with = "no_remedy")]
+    pub prices: Option<PathBuf>,
     /// Whom the answer goes to.
     #[command(flatten)]
     pub hand_over: HandOver,

@@ -3,10 +3,10 @@
 use super::args::{Common, FleetArgs, Format};
 use super::progress::Progress;
 use super::{DOES_NOT, KEEPS_UP, WRONG, input, output};
-use ampledger::build::Build;
-use ampledger::check::{FORMAT, Judged};
-use ampledger::description::{Description, bytes_of, bytes_within, read_fleet};
-use ampledger::fleet::{Fleet, MOST_BYTES, Mend, Mender, Plan, Row, Totals, judge_all, read_sheet};
+use ampledger::check::FORMAT;
+use ampledger::description::{bytes_of, bytes_within, read_fleet};
+use ampledger::fleet::{Fleet, MOST_BYTES, Plan, Row, Totals, judge_all, read_sheet};
+use ampledger::remedy::{Prices, read_prices};
 use ampledger::report::csv::harmless;
 use ampledger::view;
 use anyhow::Context;
@@ -20,11 +20,14 @@ use std::path::Path;
 pub fn run(args: &FleetArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
     let plan = plan(&args.fleet)?.with_kits(&args.kit);
-    let mender = |_: &Description, build: &Build, judged: &Judged| first_change(build, judged);
-    let mender: Option<&Mender> = (!args.no_remedy).then_some(&mender);
+    let prices = match &args.prices {
+        Some(path) => read_prices(path)?,
+        None => Prices::default(),
+    };
+    let mend = (!args.no_remedy).then_some(&prices);
     let progress = Progress::new(plan.entries.len() as u64, "Judging builds");
     let judge = |emit: &mut dyn FnMut(Row) -> anyhow::Result<()>| {
-        judge_all(&plan, &catalogs, mender, &|rows| progress.step(rows), emit)
+        judge_all(&plan, &catalogs, mend, &|rows| progress.step(rows), emit)
     };
     let totals = match (common.format, &common.output) {
         (Format::Csv, None) => {
@@ -50,8 +53,10 @@ pub fn run(args: &FleetArgs, common: &Common) -> anyhow::Result<u8> {
             let answer = Fleet {
                 format: FORMAT,
                 fleet: plan.name.clone(),
+                currency: prices.currency.clone(),
                 rows,
                 totals,
+                notes: prices.notes(&catalogs),
             };
             let report = || output::addressed(view::fleet(&answer), &args.hand_over);
             output::write(common, report, &answer)?;
@@ -105,19 +110,6 @@ fn plan(file: &str) -> anyhow::Result<Plan> {
 fn begins_as_sheet(bytes: &[u8]) -> bool {
     let line = bytes.split(|b| *b == b'\n').next().unwrap_or_default();
     line.contains(&b',') && !line.contains(&b':')
-}
-
-/// The nearest single change with which a build keeps up.
-fn first_change(build: &Build, judged: &Judged) -> Option<Mend> {
-    let Judged::OnCharge(_, ruling) = judged else {
-        return None;
-    };
-    let change = ampledger::size::nearest(build, ruling).into_iter().next()?;
-    Some(Mend {
-        text: change.text,
-        cost: None,
-        set: change.set.into_iter().collect(),
-    })
 }
 
 /// Rows as CSV.

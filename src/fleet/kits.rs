@@ -4,27 +4,14 @@ use super::plan::Plan;
 use crate::catalog::{Catalogs, Kind};
 use crate::description::AccessoryText;
 use crate::quantity::Money;
+use crate::remedy::{Part, Prices};
 use crate::resolve::{Kit, find_kit};
-use serde::Serialize;
 use std::collections::BTreeMap;
 use std::sync::Arc;
 
 /// Kits by the name that the fleet file gives them.
 #[derive(Debug, Default)]
 pub(super) struct Kits(BTreeMap<Arc<str>, Result<Kit, String>>);
-
-/// One line of a shopping list.
-#[derive(Clone, Debug, PartialEq, Serialize)]
-pub struct Part {
-    /// What it is, in words.
-    pub name: String,
-    /// Its id in the catalogs, where it has one.
-    pub part: Option<String>,
-    /// How many.
-    pub count: u64,
-    /// Price of one, where it is known.
-    pub each: Option<Money>,
-}
 
 impl Kits {
     /// All kits that a plan names: of the catalogs, or files beside the fleet file.
@@ -60,28 +47,29 @@ impl Kits {
     }
 
     /// What fitting one of a kit costs, where that is known: its own price, or the sum of its parts'.
-    pub(super) fn price(&self, name: &str, catalogs: &Catalogs) -> Option<Money> {
+    pub(super) fn price(&self, name: &str, catalogs: &Catalogs, prices: &Prices) -> Option<Money> {
         let kit = self.find(name).ok()?;
-        if let Some(price) = kit.price {
+        if let Some(price) = prices.of(name, kit.price) {
             return Some(price);
         }
         let each = |part: &Part| Some(part.each? * part.count as f64);
-        let prices: Option<Vec<Money>> = parts(kit, catalogs).iter().map(each).collect();
+        let prices: Option<Vec<Money>> = parts(kit, catalogs, prices).iter().map(each).collect();
         prices.map(|prices| prices.into_iter().sum())
     }
 
     /// The parts of one of a kit.
-    pub(super) fn parts(&self, name: &str, catalogs: &Catalogs) -> Vec<Part> {
+    pub(super) fn parts(&self, name: &str, catalogs: &Catalogs, prices: &Prices) -> Vec<Part> {
         self.find(name)
-            .map_or_else(|_| Vec::new(), |kit| parts(kit, catalogs))
+            .map_or_else(|_| Vec::new(), |kit| parts(kit, catalogs, prices))
     }
 }
 
-fn parts(kit: &Kit, catalogs: &Catalogs) -> Vec<Part> {
-    kit.accessories.iter().map(|a| part(a, catalogs)).collect()
+fn parts(kit: &Kit, catalogs: &Catalogs, prices: &Prices) -> Vec<Part> {
+    let one = |a| part(a, catalogs, prices);
+    kit.accessories.iter().map(one).collect()
 }
 
-fn part(accessory: &AccessoryText, catalogs: &Catalogs) -> Part {
+fn part(accessory: &AccessoryText, catalogs: &Catalogs, prices: &Prices) -> Part {
     let id = accessory.part.as_ref().map(|p| p.value.clone());
     let read = id
         .as_ref()
@@ -89,10 +77,11 @@ fn part(accessory: &AccessoryText, catalogs: &Catalogs) -> Part {
     let title = read.as_ref().map(|read| read.entry.title.clone());
     let own = accessory.name.as_ref().map(|n| n.value.clone());
     let price = |text: &AccessoryText| text.price.as_ref().map(|p| p.value);
+    let each = price(accessory).or_else(|| price(&read.as_ref()?.text));
     Part {
         name: title.or(own).or_else(|| id.clone()).unwrap_or_default(),
+        each: id.as_ref().map_or(each, |id| prices.of(id, each)),
         part: id,
         count: u64::from(accessory.count.as_ref().map_or(1, |c| c.value)),
-        each: price(accessory).or_else(|| read.as_ref().and_then(|read| price(&read.text))),
     }
 }

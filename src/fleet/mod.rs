@@ -13,14 +13,13 @@ mod sheet;
 mod solve;
 mod totals;
 
-pub use kits::Part;
 pub use plan::{Entry, NO_KIT, Plan};
 pub use row::{Outcome, Row, one_line};
 pub use sheet::{MOST_BYTES, read_sheet};
-pub use solve::{Mend, Mender};
 pub use totals::{Group, Totals};
 
 use crate::catalog::Catalogs;
+use crate::remedy::Prices;
 use kits::Kits;
 use rayon::prelude::*;
 use serde::Serialize;
@@ -39,10 +38,14 @@ pub struct Fleet {
     pub format: u32,
     /// Name of the fleet.
     pub fleet: String,
+    /// Currency of the costs, a label; empty where none is named.
+    pub currency: String,
     /// One a machine, kit and season, in the order of the file.
     pub rows: Vec<Row>,
     /// Sums.
     pub totals: Totals,
+    /// Notes: prices of parts that are in no catalog.
+    pub notes: Vec<String>,
 }
 
 /// What a row's outcome depends on: file, kit, air to the bit, changes and faults.
@@ -63,7 +66,7 @@ fn asked(entry: &Entry) -> Asked {
     (entry.build.clone(), entry.kit.clone(), air, changes)
 }
 
-/// Judges every row of a plan. `told` is called with the number of rows more that are judged, on any thread; `emit`
+/// Judges every row of a plan; with prices, the first remedy of each that does not keep up is looked for. `told` is called with the number of rows more that are judged, on any thread; `emit`
 /// with each row, in order.
 ///
 /// # Errors
@@ -71,7 +74,7 @@ fn asked(entry: &Entry) -> Asked {
 pub fn judge_all<E>(
     plan: &Plan,
     catalogs: &Catalogs,
-    mender: Option<&Mender>,
+    prices: Option<&Prices>,
     told: &(dyn Fn(u64) + Sync),
     emit: &mut dyn FnMut(Row) -> Result<(), E>,
 ) -> Result<Totals, E> {
@@ -79,7 +82,7 @@ pub fn judge_all<E>(
         plan,
         catalogs,
         kits: Kits::of(plan, catalogs),
-        mender,
+        prices,
     };
     let mut tally = Tally::default();
     // Looked up only, never walked: its order has no bearing.
@@ -107,7 +110,8 @@ pub fn judge_all<E>(
         }
         left = &left[rows.len()..];
     }
-    Ok(tally.finish(&shop.kits, catalogs))
+    let none = Prices::default();
+    Ok(tally.finish(&shop.kits, catalogs, prices.unwrap_or(&none)))
 }
 
 /// The next rows, and those among them that are not known yet, each once.

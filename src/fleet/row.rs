@@ -4,6 +4,7 @@ use super::plan::Entry;
 use crate::check::answer::Verdict;
 use crate::problem::Refusal;
 use crate::quantity::{AmpHours, Celsius, Fraction, Money};
+use crate::remedy::Part;
 use serde::Serialize;
 use std::sync::Arc;
 
@@ -44,6 +45,10 @@ pub struct Outcome {
     pub cost: Option<Money>,
     /// The remedy as `--set` takes it.
     pub set: Vec<String>,
+    /// What the remedy takes to be bought for a machine.
+    pub parts: Vec<Part>,
+    /// What binds with all changed that may be, where no remedy was found.
+    pub binds: Option<String>,
     /// Why there is no verdict.
     pub error: Option<String>,
 }

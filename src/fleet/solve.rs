@@ -3,34 +3,20 @@
 use super::kits::Kits;
 use super::plan::{Entry, Plan};
 use super::row::{Outcome, one_line};
-use crate::build::Build;
 use crate::catalog::Catalogs;
 use crate::check::{Judged, judge};
-use crate::description::{Description, Written, read_file};
+use crate::description::{Written, read_file};
 use crate::problem::Refusal;
-use crate::quantity::Money;
+use crate::remedy::{Asked, Prices, first_remedy};
 use crate::resolve::{resolve, with_kit};
-
-/// What mends a build.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Mend {
-    /// In words.
-    pub text: String,
-    /// What it costs, where that is known.
-    pub cost: Option<Money>,
-    /// As `--set` takes it.
-    pub set: Vec<String>,
-}
-
-/// Finds the first remedy of a build that does not keep up.
-pub type Mender<'a> = dyn Fn(&Description, &Build, &Judged) -> Option<Mend> + Sync + 'a;
 
 /// What all builds of a fleet share.
 pub(super) struct Shop<'a> {
     pub(super) plan: &'a Plan,
     pub(super) catalogs: &'a Catalogs,
     pub(super) kits: Kits,
-    pub(super) mender: Option<&'a Mender<'a>>,
+    /// Remedies are looked for with these prices; none are without.
+    pub(super) prices: Option<&'a Prices>,
 }
 
 impl Shop<'_> {
@@ -49,6 +35,7 @@ impl Shop<'_> {
         let path = self.plan.folder.join(&*entry.build);
         let (mut description, source) =
             read_file(&path, &entry.set).map_err(|refusal| one_line(&refusal))?;
+        let own = description.accessories.len();
         if let Some(kit) = &entry.kit {
             description = with_kit(&description, self.kits.find(kit)?);
         }
@@ -62,10 +49,14 @@ impl Shop<'_> {
         let build = resolve(&description, self.catalogs)
             .map_err(|problems| one_line(&Refusal::new(source.clone(), problems)))?;
         let judged = judge(&build).map_err(|error| format!("{}: {error}", source.name))?;
-        Ok(self.told(&description, &build, &judged))
+        let asked = Asked {
+            own,
+            ..Asked::new(&description, &build, self.catalogs)
+        };
+        Ok(self.told(&asked, &judged))
     }
 
-    fn told(&self, description: &Description, build: &Build, judged: &Judged) -> Outcome {
+    fn told(&self, asked: &Asked<'_>, judged: &Judged) -> Outcome {
         let mut outcome = Outcome {
             verdict: Some(judged.verdict()),
             lacks_ah: judged.lacks(),
@@ -75,12 +66,17 @@ impl Shop<'_> {
             outcome.shifts_carried = ruling.shifts_carried;
             outcome.settles_soc = ruling.settles.map(|(charge, _)| charge.soc);
         }
-        if let (false, Some(mender)) = (judged.keeps_up(), self.mender)
-            && let Some(mend) = mender(description, build, judged)
+        // Without a battery there is no charge to mend.
+        if let (false, Some(prices)) = (judged.keeps_up(), self.prices)
+            && let Ok(found) = first_remedy(asked, prices)
         {
-            outcome.remedy = Some(mend.text);
-            outcome.cost = mend.cost;
-            outcome.set = mend.set;
+            outcome.binds = found.binds;
+            if let Some(first) = found.answers.into_iter().next() {
+                outcome.remedy = Some(first.changes.join("; "));
+                outcome.cost = first.cost;
+                outcome.set = first.set;
+                outcome.parts = first.parts;
+            }
         }
         outcome
     }

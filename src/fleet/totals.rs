@@ -1,12 +1,12 @@
 //! Sums over the fleet, by kit and season: a machine counts once in each.
 
-use super::kits::{Kits, Part};
+use super::kits::Kits;
 use super::row::Row;
 use crate::catalog::Catalogs;
 use crate::check::answer::Verdict;
 use crate::quantity::Money;
+use crate::remedy::{Part, Prices};
 use serde::Serialize;
-use std::collections::BTreeMap;
 use std::sync::Arc;
 
 /// Sums over all rows.
@@ -47,11 +47,13 @@ pub struct Group {
     pub kits_cost: Option<Money>,
     /// What the remedies cost, as far as their prices are known.
     pub remedies_cost: Money,
-    /// Machines that do not keep up and whose remedy has no price, or that have none.
+    /// Machines whose remedy has a part without a price.
     pub unpriced: u64,
+    /// Machines that do not keep up and for which no remedy was found.
+    pub unmended: u64,
     /// Kits and remedies, as far as their prices are known.
     pub cost: Money,
-    /// What to buy: the kits' parts, then the remedies.
+    /// What to buy: the kits' parts, then the remedies'.
     pub parts: Vec<Part>,
 }
 
@@ -59,8 +61,8 @@ pub struct Group {
 #[derive(Default)]
 pub(super) struct Tally {
     totals: Totals,
-    /// Machines by remedy, and its cost each, for each group.
-    remedies: Vec<BTreeMap<String, (u64, Option<Money>)>>,
+    /// What each group's remedies take.
+    remedies: Vec<Vec<Part>>,
 }
 
 impl Tally {
@@ -75,7 +77,7 @@ impl Tally {
                 season: row.season.clone(),
                 ..Group::default()
             });
-            self.remedies.push(BTreeMap::new());
+            self.remedies.push(Vec::new());
             self.totals.groups.len() - 1
         });
         let (group, remedies) = (&mut self.totals.groups[place], &mut self.remedies[place]);
@@ -96,40 +98,47 @@ impl Tally {
         if verdict == Verdict::KeepsUp {
             return;
         }
-        match row.outcome.cost {
-            Some(cost) => group.remedies_cost += cost * f64::from(row.count),
-            None => group.unpriced += count,
+        match (&row.outcome.remedy, row.outcome.cost) {
+            (Some(_), Some(cost)) => group.remedies_cost += cost * f64::from(row.count),
+            (Some(_), None) => group.unpriced += count,
+            (None, _) => group.unmended += count,
         }
-        if let Some(remedy) = &row.outcome.remedy {
-            let entry = remedies
-                .entry(remedy.clone())
-                .or_insert((0, row.outcome.cost));
-            entry.0 += count;
+        for part in row.outcome.parts.iter().cloned() {
+            let all = part.count * count;
+            Part { count: all, ..part }.put_on(remedies);
         }
     }
 
     /// The sums, with the kits' prices and parts.
-    pub(super) fn finish(mut self, kits: &Kits, catalogs: &Catalogs) -> Totals {
+    pub(super) fn finish(mut self, kits: &Kits, catalogs: &Catalogs, prices: &Prices) -> Totals {
         for (group, remedies) in self.totals.groups.iter_mut().zip(self.remedies) {
             if let Some(kit) = &group.kit {
                 let machines = group.machines as f64;
-                group.kits_cost = kits.price(kit, catalogs).map(|price| price * machines);
-                let all = |part: Part| Part {
-                    count: part.count * group.machines,
-                    ..part
-                };
-                group.parts = kits.parts(kit, catalogs).into_iter().map(all).collect();
+                group.kits_cost = kits
+                    .price(kit, catalogs, prices)
+                    .map(|price| price * machines);
+                for part in kits.parts(kit, catalogs, prices) {
+                    let count = part.count * group.machines;
+                    Part { count, ..part }.put_on(&mut group.parts);
+                }
             }
             group.cost = group.kits_cost.unwrap_or(Money::ZERO) + group.remedies_cost;
-            group
-                .parts
-                .extend(remedies.into_iter().map(|(name, (count, each))| Part {
-                    name,
-                    part: None,
-                    count,
-                    each,
-                }));
+            for part in sorted(remedies) {
+                part.put_on(&mut group.parts);
+            }
         }
         self.totals
     }
+}
+
+/// Parts by their names, so that the list does not hang on the order of the machines.
+fn sorted(mut parts: Vec<Part>) -> Vec<Part> {
+    let each = |p: &Part| p.each.map_or(f64::INFINITY, |m| m.0);
+    parts.sort_by(|a, b| {
+        a.name
+            .cmp(&b.name)
+            .then_with(|| a.part.cmp(&b.part))
+            .then(each(a).total_cmp(&each(b)))
+    });
+    parts
 }

@@ -152,11 +152,14 @@ impl Effort {
 
     /// The order in which answers are listed.
     pub(super) fn cmp(&self, other: &Effort) -> Ordering {
-        let counts = |e: &Effort| (e.unpriced, e.things);
+        self.rank(other).then(self.much.total_cmp(&other.much))
+    }
+
+    /// The same but for how far each change goes.
+    pub(super) fn rank(&self, other: &Effort) -> Ordering {
         self.unpriced
             .cmp(&other.unpriced)
             .then(self.cost.total_cmp(&other.cost))
-            .then(counts(self).cmp(&counts(other)))
-            .then(self.much.total_cmp(&other.much))
+            .then(self.things.cmp(&other.things))
     }
 }

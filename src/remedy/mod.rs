@@ -9,6 +9,7 @@ mod asked;
 mod change;
 mod entry;
 mod offer;
+mod part;
 mod prices;
 mod search;
 pub(crate) mod swap;
@@ -17,15 +18,16 @@ mod tests;
 mod tighten;
 
 pub use asked::Asked;
+pub use part::Part;
 pub use prices::{CHARGER, Prices, read_prices};
 
 use crate::check::answer::Verdict;
-use crate::check::{FORMAT, SolveError, rule};
-use crate::quantity::{AmpHours, Fraction, Hours, Money};
+use crate::check::{FORMAT, SolveError, rule, solvable};
+use crate::quantity::{AmpHours, Fraction, Money};
 use crate::size::why_not;
 use change::{Change, Effort, made};
 use offer::{Slot, offers};
-use search::{Candidate, changed, chosen, search};
+use search::{Candidate, Enough, changed, chosen, search};
 use serde::Serialize;
 
 /// Answers listed.
@@ -63,6 +65,8 @@ pub struct Answer {
     pub changes: Vec<String>,
     /// The same as `--set` takes it.
     pub set: Vec<String>,
+    /// What is to be bought.
+    pub parts: Vec<Part>,
     /// What it costs in parts; none where a price is not known.
     pub cost: Option<Money>,
     /// The full verdict on it.
@@ -83,10 +87,27 @@ pub fn remedy(
     prices: &Prices,
     progress: &mut dyn FnMut(usize, usize),
 ) -> Result<Remedy, SolveError> {
+    searched(asked, prices, Enough::Of(MOST), progress)
+}
+
+/// The first of the answers of [`remedy`], and none of the others: what a fleet needs.
+///
+/// # Errors
+/// [`SolveError`]: no battery, or no time in the shift.
+pub fn first_remedy(asked: &Asked<'_>, prices: &Prices) -> Result<Remedy, SolveError> {
+    let mut remedy = searched(asked, prices, Enough::First, &mut |_, _| {})?;
+    remedy.answers.truncate(1);
+    Ok(remedy)
+}
+
+fn searched(
+    asked: &Asked<'_>,
+    prices: &Prices,
+    enough: Enough,
+    progress: &mut dyn FnMut(usize, usize),
+) -> Result<Remedy, SolveError> {
     let build = asked.build;
-    if build.shift.iter().all(|s| s.time.value <= Hours::ZERO) {
-        return Err(SolveError::EmptyShift);
-    }
+    solvable(build)?;
     let ruling = rule(build)?;
     let mut remedy = Remedy {
         format: FORMAT,
@@ -98,21 +119,17 @@ pub fn remedy(
         tried: 0,
         offered: 0,
         binds: None,
-        notes: Vec::new(),
+        notes: prices.notes(asked.catalogs),
     };
-    let unknown = prices.unknown(asked).into_iter();
-    remedy.notes = unknown
-        .map(|id| format!("the price list's `{id}` is in no catalog"))
-        .collect();
     if remedy.keeps_up {
         return Ok(remedy);
     }
     let mut slots = offers(asked, prices, false);
-    let (mut found, tried) = search(asked, &slots, MOST, progress);
+    let (mut found, tried) = search(asked, &slots, enough, progress);
     remedy.tried = tried;
     if found.is_empty() && asked.description.may.is_none() {
         slots = offers(asked, prices, true);
-        let (more, tried) = search(asked, &slots, MOST, progress);
+        let (more, tried) = search(asked, &slots, enough, progress);
         found = more;
         remedy.tried += tried;
         if !found.is_empty() {
@@ -155,6 +172,7 @@ fn answer(asked: &Asked<'_>, slots: &[Slot], candidate: &Candidate) -> Option<(E
         let answer = Answer {
             changes: changes.iter().map(|c| c.words.clone()).collect(),
             set,
+            parts: changes.iter().filter_map(|c| c.part(asked)).collect(),
             cost: effort.cost(),
             verdict: ruling.verdict,
             settles_soc: ruling.settles.map(|(charge, _)| charge.soc),

@@ -1,7 +1,6 @@
 //! What parts cost: the catalogs' own prices, and a list of the user's before them.
 
-use super::Asked;
-use crate::catalog::Kind;
+use crate::catalog::{Catalogs, Kind};
 use crate::description::{bytes_of, read_prices as read_text};
 use crate::problem::Refusal;
 use crate::quantity::Money;
@@ -45,14 +44,22 @@ impl Prices {
         self.by_id.get(id).copied().or(catalog)
     }
 
-    /// Ids of the list that are in no catalog.
+    /// A note on each id of the list that is in no catalog.
     #[must_use]
-    pub fn unknown(&self, asked: &Asked<'_>) -> Vec<&str> {
+    pub fn notes(&self, catalogs: &Catalogs) -> Vec<String> {
+        let unknown = self.unknown(catalogs).into_iter();
+        unknown
+            .map(|id| format!("the price list's `{id}` is in no catalog"))
+            .collect()
+    }
+
+    /// Ids of the list that are in no catalog.
+    fn unknown(&self, catalogs: &Catalogs) -> Vec<&str> {
         let known = |id: &str| {
             id == CHARGER
                 || Kind::ALL
                     .into_iter()
-                    .any(|kind| asked.catalogs.find(kind, id).is_some())
+                    .any(|kind| catalogs.find(kind, id).is_some())
         };
         let ids = self.by_id.keys().map(String::as_str);
         ids.filter(|id| !known(id)).collect()

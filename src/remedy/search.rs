@@ -68,11 +68,34 @@ fn part_of(choice: &Choice, other: &Choice) -> bool {
     pairs.all(|(mine, its)| mine.is_none() || mine == its)
 }
 
-/// The first answers in order of effort, at most so many, and how many combinations were tried.
+/// How many answers are looked for.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Enough {
+    /// So many.
+    Of(usize),
+    /// The first, and those beside it of which one may come before it once no more is changed than
+    /// need be: as many as are listed, of the same cost and number of changes.
+    First,
+}
+
+impl Enough {
+    /// Whether the answers found are enough, the next one tried being this.
+    fn is(self, found: &[Candidate], next: &Candidate) -> bool {
+        match (self, found.first()) {
+            (Enough::Of(most), _) => found.len() >= most,
+            (Enough::First, Some(first)) => {
+                found.len() >= super::MOST || first.effort.rank(&next.effort).is_lt()
+            }
+            (Enough::First, None) => false,
+        }
+    }
+}
+
+/// The first answers in order of effort, until there are enough, and how many combinations were tried.
 pub(super) fn search(
     asked: &Asked<'_>,
     slots: &[Slot],
-    most: usize,
+    enough: Enough,
     progress: &mut dyn FnMut(usize, usize),
 ) -> (Vec<Candidate>, usize) {
     let all = candidates(slots);
@@ -82,7 +105,7 @@ pub(super) fn search(
     let mut completed: Vec<Choice> = Vec::new();
     let steps = all.len();
     for (index, candidate) in all.into_iter().enumerate() {
-        if found.len() >= most {
+        if enough.is(&found, &candidate) {
             break;
         }
         progress(index + 1, steps);
@@ -115,16 +138,17 @@ pub(super) fn search(
 }
 
 /// A choice with all else that has one way only: no combination with the same ways of the rest helps
-/// more.
+/// more. While all of the choice has a price, what has none is left out: combinations with it come after all
+/// that have, and a shop charger, say, would mend most of them and rule out nothing.
 fn completion(slots: &[Slot], choice: &Choice) -> Choice {
+    let priced = |change: &&Change| change.cost.is_some();
+    let all_priced = chosen(slots, choice).iter().all(priced);
+    let one = |slot: &Slot| match slot.ways.as_slice() {
+        [way] if way.cost.is_some() || !all_priced => Some(0),
+        _ => None,
+    };
     let pairs = slots.iter().zip(choice);
-    pairs
-        .map(
-            |(slot, way)| {
-                if slot.ways.len() == 1 { Some(0) } else { *way }
-            },
-        )
-        .collect()
+    pairs.map(|(slot, way)| way.or_else(|| one(slot))).collect()
 }
 
 /// Whether a choice makes the build keep up, by the full verdict.

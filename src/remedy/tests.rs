@@ -3,8 +3,8 @@
 
 use super::change::{Change, Effort, What, made};
 use super::offer::{Slot, offers};
-use super::search::{Candidate, candidates, changed, chosen, search};
-use super::{Asked, Prices, remedy};
+use super::search::{Candidate, Enough, candidates, changed, chosen, search};
+use super::{Asked, Prices, first_remedy, remedy};
 use crate::build::Build;
 use crate::catalog::Catalogs;
 use crate::check::answer::Verdict;
@@ -116,7 +116,7 @@ fn the_search_equals_trying_everything() {
         let slots = own(offers(&asked, &Prices::default(), false));
         assert!(slots.len() >= 4, "{slots:?}");
         let want = by_force(&asked, &slots);
-        let (found, count) = search(&asked, &slots, usize::MAX, &mut |_, _| {});
+        let (found, count) = search(&asked, &slots, Enough::Of(usize::MAX), &mut |_, _| {});
         let choices =
             |list: &[Candidate]| -> Vec<_> { list.iter().map(|c| c.choice.clone()).collect() };
         assert_eq!(choices(&found), choices(&want), "{work} {head} {minutes}");
@@ -151,6 +151,30 @@ fn assignments_make_the_same_builds() {
         }
     }
     assert!(kinds >= 9, "{slots:?}");
+}
+
+/// What a fleet is told is what `remedy` lists first.
+#[test]
+fn the_first_alone_is_the_first_of_the_list() {
+    let catalogs = Catalogs::builtin();
+    let mut found = 0;
+    for (work, head, minutes) in [
+        (120.0, 40.0, 20.0),
+        (150.0, 55.0, 30.0),
+        (170.0, 110.0, 45.0),
+        (400.0, 110.0, 90.0),
+    ] {
+        let text = text(work, head, minutes);
+        let (description, build) = read(&text, &[], &catalogs);
+        let asked = Asked::new(&description, &build, &catalogs);
+        let prices = Prices::default();
+        let all = remedy(&asked, &prices, &mut |_, _| {}).expect("answers");
+        let first = first_remedy(&asked, &prices).expect("answers");
+        assert_eq!(first.answers.first(), all.answers.first(), "{text}");
+        assert!(first.tried <= all.tried);
+        found += first.answers.len();
+    }
+    assert!(found >= 3, "{found}");
 }
 
 #[test]

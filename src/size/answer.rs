@@ -13,9 +13,8 @@ use super::search::{Bound, Found, Search};
 use super::value::written;
 use super::yardstick::Yardstick;
 use crate::build::{Build, State};
-use crate::check::{FORMAT, SolveError};
+use crate::check::{FORMAT, SolveError, solvable};
 use crate::ledger::Machine;
-use crate::quantity::Hours;
 use crate::remedy::Asked;
 use serde::Serialize;
 
@@ -80,9 +79,7 @@ pub fn size(
 ) -> Result<Size, SolveError> {
     let build = asked.build;
     let machine = Machine::new(build).ok_or(SolveError::NoBattery)?;
-    if build.shift.iter().all(|s| s.time.value <= Hours::ZERO) {
-        return Err(SolveError::EmptyShift);
-    }
+    solvable(build)?;
     let knobs = asked_knobs(build);
     let first = knob::windings(build).map(|(index, _, _)| index).next();
     let all = knobs.len() + 3;

@@ -2,8 +2,9 @@
 
 use super::quote;
 use crate::check::answer::Verdict;
-use crate::fleet::{Fleet, Group, Part, Row};
+use crate::fleet::{Fleet, Group, Row};
 use crate::quantity::{Money, format};
+use crate::remedy::Part;
 use crate::report::{Cell, Column, Item, Report, Table, Tone};
 
 /// Kits and seasons that stand side by side; more stand below each other.
@@ -33,12 +34,12 @@ pub fn fleet(answer: &Fleet) -> Report {
     if crossed {
         report = report.table(matrix(answer));
         let short: Vec<&Row> = answer.rows.iter().filter(|r| falls(r)).collect();
-        if short.iter().any(|r| r.outcome.remedy.is_some()) {
-            report = report.table(list("What must change", &short, true));
+        if short.iter().any(|r| looked_for(r)) {
+            report = report.table(list("What must change", &short, true, &answer.currency));
         }
     } else {
         let all: Vec<&Row> = answer.rows.iter().collect();
-        report = report.table(list("Machines", &all, false));
+        report = report.table(list("Machines", &all, false, &answer.currency));
     }
     let failed = answer.rows.iter().filter(|r| r.outcome.error.is_some());
     let item = |row: &Row| {
@@ -47,12 +48,12 @@ pub fn fleet(answer: &Fleet) -> Report {
     };
     report = report.list("Not judged", failed.map(item));
     if !totals.groups.is_empty() {
-        report = report.table(sums(&totals.groups));
+        report = report.table(sums(&totals.groups, &answer.currency));
     }
     for group in totals.groups.iter().filter(|g| !g.parts.is_empty()) {
-        report = report.table(shopping(group));
+        report = report.table(shopping(group, &answer.currency));
     }
-    report
+    report.list("Notes", answer.notes.iter().map(Item::new))
 }
 
 fn subtitle(answer: &Fleet) -> String {
@@ -76,10 +77,8 @@ fn sentence(answer: &Fleet, crossed: bool) -> String {
             format!("{words} {} of {}", g.keeps_up, g.machines)
         };
         let groups: Vec<String> = totals.groups.iter().map(group).collect();
-        return format!("Machines that keep up: {}.", groups.join("; "));
+        return format!("{}.", groups.join("; "));
     }
-    let machines =
-        |n: u64| format::count(u32::try_from(n).unwrap_or(u32::MAX), "machine", "machines");
     let mut said = Vec::new();
     if totals.carries > 0 {
         said.push(format!(
@@ -108,6 +107,11 @@ fn sentence(answer: &Fleet, crossed: bool) -> String {
     } else {
         format!("{}.", said.join(", "))
     }
+}
+
+/// A count of machines.
+fn machines(n: u64) -> String {
+    format::count(u32::try_from(n).unwrap_or(u32::MAX), "machine", "machines")
 }
 
 fn ending(n: u64, one: &'static str, many: &'static str) -> &'static str {
@@ -190,9 +194,9 @@ fn verdict(row: &Row) -> Cell {
 }
 
 /// One line a row, with its remedy.
-fn list(title: &str, rows: &[&Row], crossed: bool) -> Table {
+fn list(title: &str, rows: &[&Row], crossed: bool, currency: &str) -> Table {
     let kits = rows.iter().any(|r| r.kit.is_some() || r.season.is_some());
-    let remedies = rows.iter().any(|r| r.outcome.remedy.is_some());
+    let remedies = rows.iter().any(|r| looked_for(r));
     let costs = rows.iter().any(|r| r.outcome.cost.is_some());
     let mut table = Table::new(title).columns([Column::name("Machine"), Column::figures("Count")]);
     if kits {
@@ -205,7 +209,7 @@ fn list(title: &str, rows: &[&Row], crossed: bool) -> Table {
         table = table.column(Column::text("Remedy"));
     }
     if costs {
-        table = table.column(Column::money("Cost each", ""));
+        table = table.column(Column::money("Cost each", currency));
     }
     let row = |row: &&Row| {
         let mut cells = vec![Cell::name(&*row.machine), Cell::count(u64::from(row.count))];
@@ -219,25 +223,36 @@ fn list(title: &str, rows: &[&Row], crossed: bool) -> Table {
             cells.push(remedy(row));
         }
         if costs {
-            cells.push(Cell::maybe(row.outcome.cost, |cost| Cell::money(cost, "")));
+            cells.push(Cell::maybe(row.outcome.cost, |cost| {
+                Cell::money(cost, currency)
+            }));
         }
         cells
     };
     table.rows(rows.iter().map(row))
 }
 
+/// Whether a remedy was looked for, found or not.
+fn looked_for(row: &Row) -> bool {
+    row.outcome.remedy.is_some() || row.outcome.binds.is_some()
+}
+
 /// The remedy of a row; that none was found is said, and nothing where none is needed.
 fn remedy(row: &Row) -> Cell {
     match &row.outcome.remedy {
         Some(remedy) => Cell::text(remedy),
-        None if falls(row) => Cell::text("none found").dim(),
+        None if falls(row) => Cell::text(match &row.outcome.binds {
+            Some(binds) => format!("none found: {binds}"),
+            None => "none found".to_owned(),
+        })
+        .dim(),
         None => Cell::empty(),
     }
 }
 
 /// Sums by kit and season.
-fn sums(groups: &[Group]) -> Table {
-    let money = |cost: Money| Cell::money(cost, "");
+fn sums(groups: &[Group], currency: &str) -> Table {
+    let money = |cost: Money| Cell::money(cost, currency);
     let row = |g: &Group| {
         [
             Cell::name(words(g.kit.as_deref(), g.season.as_deref())),
@@ -250,7 +265,6 @@ fn sums(groups: &[Group]) -> Table {
             money(g.cost),
         ]
     };
-    let unpriced: u64 = groups.iter().map(|g| g.unpriced).sum();
     let table = Table::new("By kit")
         .columns([
             Column::name("Kit"),
@@ -258,26 +272,33 @@ fn sums(groups: &[Group]) -> Table {
             Column::figures("Keep up"),
             Column::figures("Carry"),
             Column::figures("Short"),
-            Column::money("Kits", ""),
-            Column::money("Remedies", ""),
-            Column::money("Sum", ""),
+            Column::money("Kits", currency),
+            Column::money("Remedies", currency),
+            Column::money("Sum", currency),
         ])
         .rows(groups.iter().map(row));
-    if unpriced == 0 {
-        return table;
+    let sum = |of: fn(&Group) -> u64| groups.iter().map(of).sum::<u64>();
+    let unpriced = match sum(|g| g.unpriced) {
+        0 => None,
+        n => Some(format!(
+            "Without the remedies of {}, which have a part without a price.",
+            machines(n)
+        )),
+    };
+    let unmended = match sum(|g| g.unmended) {
+        0 => None,
+        n => Some(format!("For {} there is no remedy in it.", machines(n))),
+    };
+    let notes: Vec<String> = unpriced.into_iter().chain(unmended).collect();
+    if notes.is_empty() {
+        table
+    } else {
+        table.note(notes.join(" "))
     }
-    let machines = format::count(
-        u32::try_from(unpriced).unwrap_or(u32::MAX),
-        "machine",
-        "machines",
-    );
-    table.note(format!(
-        "Without the remedies of {machines}, which have no price."
-    ))
 }
 
 /// What to buy for a kit on all machines.
-fn shopping(group: &Group) -> Table {
+fn shopping(group: &Group, currency: &str) -> Table {
     let line = |part: &Part| quote::Line {
         name: part.name.clone(),
         count: u32::try_from(part.count).unwrap_or(u32::MAX),
@@ -288,5 +309,5 @@ fn shopping(group: &Group) -> Table {
         "To buy: {}",
         words(group.kit.as_deref(), group.season.as_deref())
     );
-    quote::table(&title, &lines, "")
+    quote::table(&title, &lines, currency)
 }

@@ -121,6 +121,7 @@ fn facts(answer: &Odds) -> Vec<(&'static str, Cell)> {
         return Vec::new(); // judged on volts
     }
     vec![
+        ("5 of 100 lack each shift, at most", cell(lacks.p5)),
         ("Half of them lack each shift, at most", cell(lacks.p50)),
         ("95 of 100 lack each shift, at most", cell(lacks.p95)),
     ]
