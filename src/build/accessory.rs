@@ -128,3 +128,39 @@ impl Duty {
         }
     }
 }
+
+impl Accessory {
+    /// A load of no part: one of them, never parked, no run of wire given, on the battery bus.
+    #[must_use]
+    pub fn plain(name: String, draw: Figure<Draw>, duty: Duty, works: Works) -> Accessory {
+        Accessory {
+            name,
+            path: String::new(),
+            part: None,
+            count: 1,
+            draw,
+            duty,
+            works,
+            inrush: None,
+            circuit: None,
+            parked: Amps::ZERO,
+            coil: None,
+            together: Vec::new(),
+            apart: Vec::new(),
+            price: None,
+            lumens: None,
+            kind: LoadKind::Electronics,
+            accepts_ac: false,
+            wire: Wire {
+                run: None,
+                feed: None,
+                return_wire: false,
+                insulation: Celsius(105.0),
+                engine_space: false,
+                bundle: 1,
+                max_drop: Fraction(0.03),
+                switch: Amps(20.0),
+            },
+        }
+    }
+}

@@ -174,25 +174,11 @@ impl<'a> Scan<'a> {
             return self.key(text, plain, range);
         }
         let range = self.value_only(range, style, anchor > 0);
-        self.places.places.push(Place {
-            span: range,
-            content: Content::Scalar {
-                text: text.to_owned(),
-                plain,
-            },
-            repeated: false,
-        });
-        let place = self.places.places.len() - 1;
-        if anchor > 0 {
-            self.anchors.insert(
-                anchor,
-                Anchor {
-                    place,
-                    size: 1,
-                    height: 0,
-                },
-            );
-        }
+        let content = Content::Scalar {
+            text: text.to_owned(),
+            plain,
+        };
+        let place = self.placed(range, content, anchor, 1, 0);
         self.attach(Child { place, alias: None });
         Ok(())
     }
@@ -325,6 +311,32 @@ impl<'a> Scan<'a> {
         Ok(())
     }
 
+    /// Notes a node's place, and the anchor on it if it bears one (numbers from 1).
+    fn placed(
+        &mut self,
+        span: Range<usize>,
+        content: Content,
+        anchor: usize,
+        size: u64,
+        height: usize,
+    ) -> usize {
+        self.places.places.push(Place {
+            span,
+            content,
+            repeated: false,
+        });
+        let place = self.places.places.len() - 1;
+        if anchor > 0 {
+            let anchored = Anchor {
+                place,
+                size,
+                height,
+            };
+            self.anchors.insert(anchor, anchored);
+        }
+        place
+    }
+
     /// The dash of a list's first entry, which stands on a line of its own after the key; the event tells of the entry.
     fn first_dash(&self, key: &Range<usize>, entry: usize) -> Option<usize> {
         let between = self.text.get(key.end..entry)?;
@@ -369,22 +381,8 @@ impl<'a> Scan<'a> {
             }
             None => start,
         };
-        self.places.places.push(Place {
-            span: start..end.max(start),
-            content,
-            repeated: false,
-        });
-        let place = self.places.places.len() - 1;
-        if anchor > 0 {
-            self.anchors.insert(
-                anchor,
-                Anchor {
-                    place,
-                    size: self.count - before,
-                    height,
-                },
-            );
-        }
+        let size = self.count - before;
+        let place = self.placed(start..end.max(start), content, anchor, size, height);
         if let Some(above) = self.open.last_mut() {
             above.height = above.height.max(height + 1);
         }

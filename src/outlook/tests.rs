@@ -8,7 +8,6 @@ use crate::build::{
     Accessory, BatterySpec, Build, Draw, Duty, Figure, Origin, Regulator, Source, SourceKind,
     Speed, State, Step, WindingSource, Works,
 };
-use crate::description::accessory::LoadKind;
 use crate::description::charging::RegulatorKind;
 use crate::ledger::Machine;
 use crate::quantity::{
@@ -41,43 +40,17 @@ const IDLE: State = State::Running(0);
 const GOVERNED: State = State::Running(1);
 
 fn accessory(k: usize, draw: Draw, running: [f64; 2], stopped: f64) -> Accessory {
-    Accessory {
-        name: format!("load {k}"),
-        path: String::new(),
-        part: None,
-        count: 1,
-        draw: figure(draw),
-        duty: Duty {
-            running: running.iter().map(|d| figure(Fraction(*d))).collect(),
-            stopped: figure(Fraction(stopped)),
-            crank: figure(Fraction::ZERO),
-        },
-        works: Works {
-            low: None,
-            high: None,
-            stated: false,
-        },
-        inrush: None,
-        circuit: None,
-        parked: Amps::ZERO,
-        coil: None,
-        together: Vec::new(),
-        apart: Vec::new(),
-        price: None,
-        lumens: None,
-        kind: LoadKind::Electronics,
-        accepts_ac: false,
-        wire: crate::build::accessory::Wire {
-            run: None,
-            feed: None,
-            return_wire: false,
-            insulation: Celsius(105.0),
-            engine_space: false,
-            bundle: 1,
-            max_drop: Fraction(0.03),
-            switch: Amps(20.0),
-        },
-    }
+    let duty = Duty {
+        running: running.iter().map(|d| figure(Fraction(*d))).collect(),
+        stopped: figure(Fraction(stopped)),
+        crank: figure(Fraction::ZERO),
+    };
+    let works = Works {
+        low: None,
+        high: None,
+        stated: false,
+    };
+    Accessory::plain(format!("load {k}"), figure(draw), duty, works)
 }
 
 impl Case {

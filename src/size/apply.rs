@@ -1,12 +1,10 @@
 //! A build with one number changed, and what follows from it.
 
 use super::knob::Knob;
-use crate::build::accessory::Wire;
 use crate::build::{
     Accessory, BatterySpec, Build, Draw, Duty, Figure, Origin, SourceKind, State, Works,
 };
-use crate::description::accessory::LoadKind;
-use crate::quantity::{AmpHours, Amps, Celsius, Fraction, Hours, Rpm, Volts, Watts};
+use crate::quantity::{AmpHours, Amps, Fraction, Hours, Rpm, Volts, Watts};
 
 /// Volts a cell below which a constant power or current drops out: 10.5 V of a 12 V system, as an
 /// accessory of a build file has without saying so. Common practice, no source.
@@ -153,41 +151,20 @@ fn drawing(draw: Draw, x: f64) -> Draw {
 /// Adds an accessory that is on whenever the engine runs.
 fn add(build: &mut Build, draw: Draw) {
     let low = Volts(DROP_OUT_CELL * f64::from(build.cells()));
-    build.accessories.push(Accessory {
-        name: "more load".to_owned(),
-        path: String::new(),
-        part: None,
-        count: 1,
-        draw: figure(draw),
-        duty: Duty {
-            running: vec![figure(Fraction::ONE); build.speeds.len()],
-            stopped: figure(Fraction::ZERO),
-            crank: figure(Fraction::ZERO),
-        },
-        works: Works {
-            low: Some(low),
-            high: None,
-            stated: false,
-        },
-        inrush: None,
-        circuit: None,
-        parked: Amps::ZERO,
-        coil: None,
-        together: Vec::new(),
-        apart: Vec::new(),
-        price: None,
-        lumens: None,
-        kind: LoadKind::Electronics,
-        accepts_ac: false,
-        wire: Wire {
-            run: None,
-            feed: None,
-            return_wire: false,
-            insulation: Celsius(105.0),
-            engine_space: false,
-            bundle: 1,
-            max_drop: Fraction(0.03),
-            switch: Amps(20.0),
-        },
-    });
+    let duty = Duty {
+        running: vec![figure(Fraction::ONE); build.speeds.len()],
+        stopped: figure(Fraction::ZERO),
+        crank: figure(Fraction::ZERO),
+    };
+    let works = Works {
+        low: Some(low),
+        high: None,
+        stated: false,
+    };
+    build.accessories.push(Accessory::plain(
+        "more load".to_owned(),
+        figure(draw),
+        duty,
+        works,
+    ));
 }
