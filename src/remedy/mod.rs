@@ -145,17 +145,19 @@ fn searched(
         .collect();
     answers.sort_by(|a, b| a.0.cmp(&b.0));
     remedy.answers = answers.into_iter().map(|(_, answer)| answer).collect();
-    let sets = remedy.answers.iter().flat_map(|a| &a.set);
-    let out_of_reach = |set: &String| set.split('=').next().is_some_and(|p| !asked.in_file(p));
-    if sets.into_iter().any(out_of_reach) {
-        let note =
-            "accessories of the kit are out of reach of --set: fit the part in the kit itself";
-        remedy.notes.push(note.to_owned());
-    }
+    remedy.notes.extend(out_of_reach(asked, &remedy.answers));
     if remedy.answers.is_empty() {
         remedy.binds = Some(all_that_may(asked, &slots));
     }
     Ok(remedy)
+}
+
+/// Said where an answer changes what came with a kit.
+fn out_of_reach(asked: &Asked<'_>, answers: &[Answer]) -> Option<String> {
+    let mut sets = answers.iter().flat_map(|a| &a.set);
+    let of_kit = sets.any(|set| set.split('=').next().is_some_and(|p| !asked.in_file(p)));
+    let note = "accessories of the kit are out of reach of --set: fit the part in the kit itself";
+    of_kit.then(|| note.to_owned())
 }
 
 /// The answer of a combination, no further from what there is than it needs be.

@@ -81,7 +81,6 @@ pub fn size(
     let machine = Machine::new(build).ok_or(SolveError::NoBattery)?;
     solvable(build)?;
     let knobs = asked_knobs(build);
-    let first = knob::windings(build).map(|(index, _, _)| index).next();
     let all = knobs.len() + 3;
     let mut done = 0;
     let mut step = || {
@@ -92,12 +91,7 @@ pub fn size(
         None => Yardstick::Stated(build),
         Some(share) => Yardstick::Share(Crowd::new(*asked, share)),
     };
-    let fitted = Offers {
-        batteries: parts::batteries(asked, &yardstick),
-        windings: knob::windings(build)
-            .map(|(index, _, _)| (index, parts::windings(asked, index, &yardstick)))
-            .collect(),
-    };
+    let fitted = Offers::new(asked, &yardstick);
     step();
     let now_keeps = yardstick.now();
     let mut margin = Margin::new(build, machine);
@@ -120,9 +114,8 @@ pub fn size(
     }
     let ranked = influence(build);
     step();
-    let windings = first
-        .and_then(|index| fitted.windings.iter().find(|(i, _)| *i == index))
-        .map_or_else(Vec::new, |(index, fitted)| rebuild::rows(fitted, *index));
+    let first = fitted.windings.first();
+    let windings = first.map_or_else(Vec::new, |(index, fitted)| rebuild::rows(fitted, *index));
     step();
     Ok(Size {
         format: FORMAT,
@@ -141,6 +134,31 @@ pub fn size(
 struct Offers {
     batteries: Vec<Fitted>,
     windings: Vec<(usize, Vec<Fitted>)>,
+}
+
+impl Offers {
+    /// Every catalog battery, and every winding in place of each that feeds the battery.
+    fn new(asked: &Asked<'_>, yardstick: &Yardstick<'_>) -> Offers {
+        Offers {
+            batteries: parts::batteries(asked, yardstick),
+            windings: knob::windings(asked.build)
+                .map(|(index, _, _)| (index, parts::windings(asked, index, yardstick)))
+                .collect(),
+        }
+    }
+
+    /// Those that keep up in place of what a knob varies, in order of size.
+    fn that_qualify(&self, knob: &Knob) -> Vec<String> {
+        match knob {
+            Knob::Winding(index) => self
+                .windings
+                .iter()
+                .find(|(i, _)| i == index)
+                .map_or_else(Vec::new, |(_, fitted)| parts::in_order(fitted, knob)),
+            Knob::Capacity | Knob::ColdCranking => parts::in_order(&self.batteries, knob),
+            _ => Vec::new(),
+        }
+    }
 }
 
 /// The knobs that are asked: of always-on accessories only the largest.
@@ -174,15 +192,6 @@ fn answer(
     yardstick: &Yardstick<'_>,
 ) -> Answer {
     let unit = knob.stated(build, 1.0).1;
-    let parts = match knob {
-        Knob::Winding(index) => offers
-            .windings
-            .iter()
-            .find(|(i, _)| i == index)
-            .map_or_else(Vec::new, |(_, fitted)| parts::in_order(fitted, knob)),
-        Knob::Capacity | Knob::ColdCranking => parts::in_order(&offers.batteries, knob),
-        _ => Vec::new(),
-    };
     let mut answer = Answer {
         what: knob.what(build),
         bound: Bound::Least,
@@ -192,7 +201,7 @@ fn answer(
         set: knob.path(build),
         value: None,
         binds: String::new(),
-        parts,
+        parts: offers.that_qualify(knob),
     };
     match found {
         Found::Edge {

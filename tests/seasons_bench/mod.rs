@@ -101,6 +101,13 @@ pub fn random(seed: u64) -> String {
         r.one_of(&["flooded", "flooded", "agm", "gel"]),
         r.between(75.0, 100.0),
     );
+    accessories(&mut r, &mut text);
+    shift(&mut r, &mut text);
+    text
+}
+
+/// Two to five loads of every law, and a clock that draws while parked.
+fn accessories(r: &mut Seeded, text: &mut String) {
     for k in 0..2 + r.below(4) {
         let draw = match r.below(4) {
             0 => format!("draw: {:.2} A", r.between(1.0, 7.0)),
@@ -122,6 +129,10 @@ pub fn random(seed: u64) -> String {
         text,
         "  - {{name: clock, draw: 0.1 A, parked: {drain:.1} mA, duty: 100 %}}"
     );
+}
+
+/// Two starts, idling and work; now and then days parked, or a charger.
+fn shift(r: &mut Seeded, text: &mut String) {
     let _ = write!(
         text,
         "shift:\n  - crank\n  - idle: {:.0} min\n  - governed: {:.0} min\n  - crank\n  - governed: {:.0} min\nparked: {:.1} h\n",
@@ -131,10 +142,9 @@ pub fn random(seed: u64) -> String {
         r.between(12.0, 22.0),
     );
     if r.below(4) == 0 {
-        text += "days: {shifts: 3, parked: 1}\n";
+        *text += "days: {shifts: 3, parked: 1}\n";
     }
     if r.below(5) == 0 {
-        text += "charger: {amps: 2 A, time: 3 h}\n";
+        *text += "charger: {amps: 2 A, time: 3 h}\n";
     }
-    text
 }

@@ -97,43 +97,10 @@ pub fn build_text(draws: &mut Draws) -> String {
         "engine: {{speeds: {{idle: {idle} rpm, governed: {governed} rpm}}{crank}}}"
     ));
     let half = d.chance(0.15);
-    let known = if d.chance(0.5) {
-        format!(
-            "rated: {:.1} A at 3600 rpm",
-            d.between(if half { 3.0 } else { 10.0 }, if half { 6.0 } else { 22.0 })
-        )
-    } else {
-        format!("inductance: {:.3} mH", d.between(0.25, 0.45))
-    };
-    line("charging:".into());
-    line(format!(
-        "  - winding: {{{known}, open_circuit: {:.1} V at 3600 rpm, resistance: {:.3} ohm, poles: {}}}",
-        d.between(27.0, 33.0),
-        d.between(0.1, 0.2),
-        d.one(&[12, 16, 18])
-    ));
-    line(format!(
-        "    rectifier: {}",
-        if half { "half-wave" } else { "full-wave" }
-    ));
-    if !half || d.chance(0.5) {
-        line(format!(
-            "    regulator: {{holds: {:.2} V, kind: {}}}",
-            d.between(13.9, 14.6),
-            d.one(&["series", "shunt"])
-        ));
+    for part in charging(d, half) {
+        line(part);
     }
-    let (capacity, per_ah) = (d.between(18.0, 60.0), d.between(7.0, 11.0));
-    let reserve = if !starter || d.chance(0.5) {
-        format!(", reserve: {:.0} %", d.between(30.0, 70.0))
-    } else {
-        String::new()
-    };
-    line(format!(
-        "battery: {{capacity: {capacity:.1} Ah, cold_cranking: {:.0} A, type: {}{reserve}}}",
-        capacity * per_ah,
-        d.one(&["flooded", "flooded", "agm", "gel"])
-    ));
+    line(battery(d, starter));
     line("accessories:".into());
     for load in loads(d, half) {
         line(load);
@@ -147,6 +114,52 @@ pub fn build_text(draws: &mut Draws) -> String {
         line("charger: {amps: 3 A, after: 1 h, time: 6 h}".into());
     }
     text
+}
+
+/// A winding by its rating or its inductance, half-wave or bridge.
+fn charging(d: &mut Draws, half: bool) -> Vec<String> {
+    let known = if d.chance(0.5) {
+        format!(
+            "rated: {:.1} A at 3600 rpm",
+            d.between(if half { 3.0 } else { 10.0 }, if half { 6.0 } else { 22.0 })
+        )
+    } else {
+        format!("inductance: {:.3} mH", d.between(0.25, 0.45))
+    };
+    let mut lines = vec!["charging:".to_owned()];
+    lines.push(format!(
+        "  - winding: {{{known}, open_circuit: {:.1} V at 3600 rpm, resistance: {:.3} ohm, poles: {}}}",
+        d.between(27.0, 33.0),
+        d.between(0.1, 0.2),
+        d.one(&[12, 16, 18])
+    ));
+    lines.push(format!(
+        "    rectifier: {}",
+        if half { "half-wave" } else { "full-wave" }
+    ));
+    if !half || d.chance(0.5) {
+        lines.push(format!(
+            "    regulator: {{holds: {:.2} V, kind: {}}}",
+            d.between(13.9, 14.6),
+            d.one(&["series", "shunt"])
+        ));
+    }
+    lines
+}
+
+/// A battery, its reserve stated or left to the cold start.
+fn battery(d: &mut Draws, starter: bool) -> String {
+    let (capacity, per_ah) = (d.between(18.0, 60.0), d.between(7.0, 11.0));
+    let reserve = if !starter || d.chance(0.5) {
+        format!(", reserve: {:.0} %", d.between(30.0, 70.0))
+    } else {
+        String::new()
+    };
+    format!(
+        "battery: {{capacity: {capacity:.1} Ah, cold_cranking: {:.0} A, type: {}{reserve}}}",
+        capacity * per_ah,
+        d.one(&["flooded", "flooded", "agm", "gel"])
+    )
 }
 
 fn loads(d: &mut Draws, small: bool) -> Vec<String> {
