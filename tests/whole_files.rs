@@ -266,48 +266,83 @@ fn a_broken_pipe_is_silent() {
     }
 }
 
-/// A disk that is full: the old file is whole, nothing is left beside it, and the reason is told.
-#[cfg(all(target_os = "linux", feature = "live"))]
+/// A script run with a small disk of its own on `disk`, 64 KiB, which is gone with it; `$0` is the program. None where
+/// this user may mount nothing.
+#[cfg(target_os = "linux")]
+fn with_a_disk(folder: &Folder, script: &str) -> Option<std::process::Output> {
+    std::fs::create_dir(folder.path("disk")).expect("a folder");
+    let script = format!("mount -t tmpfs -o size=64k tmpfs disk || exit 77\n{script}");
+    let output = std::process::Command::new("unshare")
+        .args(["--map-root-user", "--mount", "sh", "-c", &script])
+        .arg(binary())
+        .current_dir(folder.path(""))
+        .output()
+        .ok()?;
+    let ran = !output.stdout.is_empty();
+    assert_eq!(ran, output.status.success(), "{output:?}");
+    ran.then_some(output)
+}
+
+/// A disk that is full: the old file is whole, nothing is left beside it, and the reason is told. Where no disk can be
+/// mounted the device that is always full stands in; it is tried everywhere.
+#[cfg(target_os = "linux")]
 #[test]
 fn a_full_disk_leaves_the_old_file() {
     let folder = Folder::with_good();
-    std::fs::create_dir(folder.path("disk")).expect("a folder");
-    let disk = folder.path("disk");
-    let mounted = std::process::Command::new("mount")
-        .args(["-t", "tmpfs", "-o", "size=64k", "tmpfs"])
-        .arg(&disk)
-        .status();
-    assert!(
-        mounted.is_ok_and(|s| s.success()),
-        "mounting a small disk needs the rights of root"
-    );
-    folder.write("disk/out.html", OLD);
-    folder.write("disk/filler", vec![b'x'; 56 * 1024]);
-    let output = folder
-        .run(&[
-            "parts",
-            "--format",
-            "html",
-            "--force",
-            "-o",
-            "disk/out.html",
-        ])
-        .output();
-    let (kept, names) = (
-        folder.read("disk/out.html"),
-        std::fs::read_dir(&disk).map(Iterator::count),
-    );
-    std::process::Command::new("umount")
-        .arg(&disk)
-        .status()
-        .expect("unmounted");
-    let output = output.expect("it runs");
-    assert_eq!(output.status.code(), Some(2));
-    let told = String::from_utf8_lossy(&output.stderr);
-    assert!(
-        told.starts_with("error: `disk/out.html` cannot be written: no storage space"),
-        "{told}"
-    );
-    assert_eq!(kept, OLD);
-    assert_eq!(names.expect("the disk"), 2);
+    folder
+        .run(&["check", "good.yaml", "-o", "/dev/full"])
+        .assert()
+        .code(2)
+        .stdout_eq("")
+        .stderr_eq("error: `/dev/full` cannot be written: No space left on device (os error 28)\n");
+    let script = "echo what was there before > disk/out.html
+        head -c 57344 /dev/zero > disk/filler
+        \"$0\" parts --format html --force -o disk/out.html
+        echo code $?
+        cat disk/out.html
+        ls -A disk";
+    if let Some(output) = with_a_disk(&folder, script) {
+        let told = String::from_utf8_lossy(&output.stderr);
+        assert!(
+            told.starts_with("error: `disk/out.html` cannot be written: no storage space"),
+            "{told}"
+        );
+        let said = format!("code 2\n{OLD}filler\nout.html\n");
+        assert_eq!(String::from_utf8_lossy(&output.stdout), said);
+    }
+}
+
+/// A disk mounted for reading only stops root too.
+#[cfg(target_os = "linux")]
+#[test]
+fn a_disk_that_is_only_read_is_told() {
+    let folder = Folder::with_good();
+    let script = "echo what was there before > disk/out.txt
+        mount -o remount,ro disk
+        \"$0\" check good.yaml --force -o disk/out.txt
+        echo code $?
+        cat disk/out.txt
+        ls -A disk";
+    if let Some(output) = with_a_disk(&folder, script) {
+        assert_eq!(
+            String::from_utf8_lossy(&output.stderr),
+            "error: `disk/out.txt` cannot be written: read-only filesystem or storage medium\n"
+        );
+        let said = format!("code 2\n{OLD}out.txt\n");
+        assert_eq!(String::from_utf8_lossy(&output.stdout), said);
+    }
+}
+
+/// A file where a folder is named: whoever asks, nothing can be written in it.
+#[test]
+fn a_file_is_no_folder() {
+    let folder = Folder::with_good();
+    folder.write("out.txt", OLD);
+    folder
+        .run(&["check", "good.yaml", "--force", "-o", "out.txt/more.txt"])
+        .assert()
+        .code(2)
+        .stdout_eq("")
+        .stderr_eq("error: `out.txt/more.txt` cannot be written: `out.txt` is no folder\n");
+    assert_eq!(folder.read("out.txt"), OLD);
 }

@@ -126,10 +126,11 @@ pub fn ready(path: &Path, force: bool) -> anyhow::Result<()> {
     }
     match path.parent() {
         Some(folder) if !folder.as_os_str().is_empty() && !folder.is_dir() => {
-            anyhow::bail!(
-                "`{shown}` cannot be written: there is no folder `{}`",
-                folder.display()
-            )
+            let folder_shown = folder.display();
+            if folder.exists() {
+                anyhow::bail!("`{shown}` cannot be written: `{folder_shown}` is no folder");
+            }
+            anyhow::bail!("`{shown}` cannot be written: there is no folder `{folder_shown}`");
         }
         _ => Ok(()),
     }
