@@ -5,6 +5,9 @@ use crate::problem::{Problem, TextProblem};
 use saphyr_parser::ScanError;
 use std::ops::Range;
 
+/// What the YAML reader says where brackets nest beyond its own limit, before it comes to tell of the outer ones.
+const RECURSION: &str = "recursion limit exceeded";
+
 impl Scan<'_> {
     /// A syntax error, told as a tab where it is one.
     pub(super) fn syntax(&self, e: &ScanError) -> Problem {
@@ -16,6 +19,9 @@ impl Scan<'_> {
             .char_indices()
             .nth(1)
             .map_or(self.text.len(), |(i, _)| at + i);
+        if e.info() == RECURSION {
+            return Problem::text(TextProblem::TooDeep, at..end);
+        }
         let what = e.info().replace(['`', '\''], "\"");
         let opened = self
             .open
