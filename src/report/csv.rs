@@ -115,27 +115,40 @@ impl Sheet {
     }
 
     fn table(&mut self, table: &Table) {
-        let shown: Vec<usize> = (0..table.columns.len())
+        let shown: Vec<(usize, bool)> = (0..table.columns.len())
             .filter(|i| table.columns[*i].kind != ColumnKind::Bar)
+            .map(|i| (i, is_of_several_units(table, i)))
             .collect();
-        let header = shown
-            .iter()
-            .map(|i| harmless(&table.columns[*i].full_name()))
-            .collect();
-        let rows = table.rows.iter().map(|row| {
-            let cell = |i: &usize| {
-                row.cells
-                    .get(*i)
-                    .map(|cell| field(cell, &table.columns[*i]))
-            };
-            shown.iter().map(|i| cell(i).unwrap_or_default()).collect()
+        let header = shown.iter().flat_map(|(i, several)| {
+            let name = table.columns[*i].full_name();
+            let unit = several.then(|| format!("{name}, unit"));
+            std::iter::once(harmless(&name)).chain(unit.map(|unit| harmless(&unit)))
         });
-        self.records(std::iter::once(header).chain(rows));
+        let rows = table.rows.iter().map(|row| {
+            let cells = shown.iter().flat_map(|(i, several)| {
+                let cell = row.cells.get(*i).cloned().unwrap_or_default();
+                if *several {
+                    let (value, unit) = full(&cell);
+                    vec![value, unit]
+                } else {
+                    vec![field(&cell, &table.columns[*i])]
+                }
+            });
+            cells.collect()
+        });
+        self.records(std::iter::once(header.collect()).chain(rows));
     }
 
     fn finish(self) -> String {
         String::from_utf8_lossy(&self.bytes).into_owned()
     }
+}
+
+/// Whether a column holds figures of several units: they then stand in a column after it.
+fn is_of_several_units(table: &Table, index: usize) -> bool {
+    let mut cells = table.rows.iter().filter_map(|row| row.cells.get(index));
+    table.columns[index].unit.is_none()
+        && cells.any(|cell| cell.number.is_some() && cell.unit.is_some())
 }
 
 /// A cell in a column: the full number where its unit is the column's, else what the reader sees.
@@ -210,10 +223,11 @@ mod tests {
                 Cell::measured(Volts(12.5)),
                 Cell::measured(Volts(12.5)),
             ])
+            .row([Cell::name("b"), Cell::empty(), Cell::count(3)])
             .main();
         assert_eq!(
             render(&Report::new("").table(table)),
-            "n,Draw (A),Any\na,12.5 V,12.5 V\n"
+            "n,Draw (A),Any,\"Any, unit\"\na,12.5 V,12.5,V\nb,,3,\n"
         );
     }
 

@@ -176,12 +176,15 @@ fn verdict(row: &Row) -> Cell {
         return Cell::text("not judged").bad();
     };
     let lacks = || match outcome.lacks_ah {
-        Some(lacks) => format!("lacks {}", format::text(lacks)),
-        None => "no charging helps".to_owned(),
+        Some(lacks) => Cell {
+            text: format!("lacks {}", format::text(lacks)),
+            ..Cell::measured(lacks)
+        },
+        None => Cell::text("no charging helps"),
     };
     match verdict {
         Verdict::KeepsUp => Cell::text("keeps up").good(),
-        Verdict::Carries => Cell::text(lacks()).warn(),
+        Verdict::Carries => lacks().warn(),
         Verdict::FallsShort
             if outcome.settles_soc.is_none()
                 && outcome.lacks_ah.is_none()
@@ -189,7 +192,7 @@ fn verdict(row: &Row) -> Cell {
         {
             Cell::text("volts out of range").bad() // judged on volts: no battery
         }
-        Verdict::FallsShort => Cell::text(lacks()).bad(),
+        Verdict::FallsShort => lacks().bad(),
     }
 }
 

@@ -248,7 +248,7 @@ fn arrives(answer: &Wires) -> Table {
     if lamps {
         table = table.columns([Column::percent("Light"), Column::percent("At the bus")]);
     }
-    table = table.column(Column::text(""));
+    table = table.column(Column::text("Outcome"));
     table.rows(all.iter().map(|a| {
         let mut cells = vec![
             Cell::name(&a.accessory),
