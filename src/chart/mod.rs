@@ -25,6 +25,7 @@ pub mod svg;
 mod svg_bars;
 mod svg_fill;
 mod svg_labels;
+mod svg_spans;
 pub mod terminal;
 
 pub use plot::Plot;

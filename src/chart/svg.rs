@@ -5,8 +5,7 @@
 
 use super::labels::{self, Obstacles, Rect};
 use super::scale::Scale;
-use super::{Body, Chart, Layer, Plane, Role, Shape, Span, svg_bars, svg_fill};
-use crate::report::Tone;
+use super::{Body, Chart, Layer, Plane, Role, Shape, svg_bars, svg_fill, svg_spans};
 use maud::{Markup, html};
 
 /// The size of a drawing in its own units, one to a pixel.
@@ -94,32 +93,19 @@ pub(super) struct Frame<'a> {
     pub(super) plane: &'a Plane,
     pub(super) size: Size,
     id: &'a str,
-    x: Scale,
+    pub(super) x: Scale,
     pub(super) y: Scale,
     pub(super) area: Rect,
 }
 
 /// Draws lines and areas; gives the height too.
 fn draw_plane(plane: &Plane, size: Size, id: &str) -> (f64, Markup) {
-    let widest = plane
-        .layers
-        .iter()
-        .filter(|l| is_direct(l))
-        .map(|l| l.label.as_str())
-        .chain(
-            plane
-                .references
-                .iter()
-                .filter(|r| !r.upright)
-                .map(|r| r.label.as_str()),
-        )
-        .map(|label| labels::text_width(label, size.text) * BOLD + 12.0)
-        .fold(14.0, f64::max);
-    let above = space_above(plane, size);
+    let margin = label_margin(plane, size);
+    let above = svg_spans::space_above(plane, size);
     let area = Rect {
         left: LEFT,
         top: above,
-        right: size.width - widest.min(size.margin),
+        right: size.width - margin,
         bottom: above + size.plot,
     };
     let frame = Frame {
@@ -144,17 +130,21 @@ fn draw_plane(plane: &Plane, size: Size, id: &str) -> (f64, Markup) {
     (area.bottom + BELOW + keys_height, drawn)
 }
 
-/// Space above the plotted area: for names of spans in one or two lines, or for half a tick's text.
-fn space_above(plane: &Plane, size: Size) -> f64 {
-    let long = |span: &Span| {
-        let share = (span.to - span.from) / (plane.x.high - plane.x.low);
-        span_lines(span, share * (size.width - LEFT - size.margin), size).len() > 1
-    };
-    match plane.spans.as_slice() {
-        [] => 10.0,
-        spans if spans.iter().any(long) => 32.0,
-        _ => 20.0,
+/// Room for the labels at the right end: as wide as the widest needs it, but no more than the size
+/// lets them have, for they wrap; yet never less than the longest word.
+fn label_margin(plane: &Plane, size: Size) -> f64 {
+    let layers = plane.layers.iter().filter(|l| is_direct(l));
+    let level = plane.references.iter().filter(|r| !r.upright);
+    let labels = layers.map(|l| &l.label).chain(level.map(|r| &r.label));
+    let width = |text: &str| labels::text_width(text, size.text) * BOLD + 12.0;
+    let (mut widest, mut longest) = (14.0, 14.0);
+    for label in labels {
+        widest = width(label).max(widest);
+        for word in labels::wrap(label, 0.0, size.text) {
+            longest = width(&word).max(longest);
+        }
     }
+    widest.min(size.margin).max(longest)
 }
 
 /// Whether a layer is labelled at its right end; areas without an edge have a key below instead.
@@ -165,22 +155,6 @@ pub(super) fn is_direct(layer: &Layer) -> bool {
 impl Frame<'_> {
     fn point(&self, x: f64, y: f64) -> (f64, f64) {
         (self.x.place(x), self.y.place(y))
-    }
-
-    /// Named stretches: every other one shaded, its name above where there is room for it.
-    fn spans(&self) -> Markup {
-        html! {
-            @for (index, span) in self.plane.spans.iter().enumerate() {
-                @let (left, right) = (self.x.place(span.from), self.x.place(span.to));
-                rect class=(span_class(index, span.tone)) x=(n(left)) y=(n(self.area.top))
-                    width=(n(right - left)) height=(n(self.area.bottom - self.area.top)) {}
-                @for (line, text) in span_lines(span, right - left, self.size).iter().rev().enumerate() {
-                    @let up = 6.0 + if line == 0 { 0.0 } else { self.size.text };
-                    text class="quiet small" x=(n(f64::midpoint(left, right))) y=(n(self.area.top - up))
-                        text-anchor="middle" { (text) }
-                }
-            }
-        }
     }
 
     /// Ticks of both axes with their lines.
@@ -337,35 +311,6 @@ impl Frame<'_> {
     }
 }
 
-/// The lines of a span's name: one where there is room. What has a meaning is never left to its
-/// colour alone: it takes two lines or runs over its ends.
-fn span_lines(span: &Span, width: f64, size: Size) -> Vec<String> {
-    let text = size.text - 1.0;
-    if labels::text_width(&span.label, text) <= width + 4.0 {
-        return vec![span.label.clone()];
-    }
-    if matches!(span.tone, Tone::Plain | Tone::Dim) {
-        return Vec::new();
-    }
-    let (first, rest) = span.label.split_once(' ').unwrap_or((&span.label, ""));
-    [first, rest]
-        .into_iter()
-        .filter(|l| !l.is_empty())
-        .map(str::to_owned)
-        .collect()
-}
-
-/// Class of a span: by its tone, or shaded by turns.
-fn span_class(index: usize, tone: Tone) -> &'static str {
-    match tone {
-        Tone::Good => "span good",
-        Tone::Warn => "span warn",
-        Tone::Bad => "span bad",
-        Tone::Plain | Tone::Dim if index % 2 == 1 => "span turn",
-        Tone::Plain | Tone::Dim => "span",
-    }
-}
-
 /// The upper edges of an area's pieces: one line for those that meet.
 fn upper_edges(pieces: &[Vec<(f64, f64, f64)>]) -> Vec<Vec<(f64, f64)>> {
     let mut edges: Vec<Vec<(f64, f64)>> = Vec::new();
@@ -388,7 +333,7 @@ fn upper_edges(pieces: &[Vec<(f64, f64, f64)>]) -> Vec<Vec<(f64, f64)>> {
 mod tests {
     use super::*;
     use crate::chart::Plot;
-    use crate::quantity::{Amps, Fraction, Hours};
+    use crate::quantity::{Amps, Hours};
 
     fn drawn(chart: &Chart, size: Size) -> String {
         draw(chart, size, "c").into_string()
@@ -455,23 +400,6 @@ mod tests {
         assert!(svg.contains("clip-path=\"url(#c-pays)\"") && svg.contains(">pays</text>"));
         let svg = drawn(&with(2.0), WIDE);
         assert!(!svg.contains("pays"), "{svg}");
-    }
-
-    #[test]
-    fn a_meaning_is_never_left_to_colour_alone() {
-        let line = [(Hours(0.0), Fraction(0.5)), (Hours(100.0), Fraction(0.6))];
-        let chart = Plot::<Hours, Fraction>::new("t")
-            .span("falls short", Tone::Bad, Hours(0.0), Hours(10.0))
-            .span("idle", Tone::Plain, Hours(10.0), Hours(11.0))
-            .span("keeps up", Tone::Good, Hours(11.0), Hours(100.0))
-            .line("", Role::Charge, line)
-            .finish("d");
-        let svg = drawn(&chart, NARROW);
-        assert!(
-            svg.contains(">falls</text>") && svg.contains(">short</text>"),
-            "{svg}"
-        );
-        assert!(svg.contains(">keeps up</text>") && !svg.contains(">idle<"));
     }
 
     #[test]

@@ -1,5 +1,6 @@
-//! Fillings of areas: plain, hatched or dotted, drawn as strokes within a clip. A pattern would do
-//! the same on a screen, but makes a printed page some megabytes larger.
+//! Fillings of areas: plain, hatched (what the battery pays, what is not in order) or dotted, drawn
+//! as strokes within a clip. A pattern would do the same on a screen, but makes a printed page some
+//! megabytes larger.
 
 use super::Role;
 use super::labels::Rect;
@@ -14,7 +15,7 @@ const DOTS: f64 = 5.0;
 /// Fills an outline by its role. `clip` is an id that nothing else on the page has.
 pub(super) fn fill(role: Role, outline: &str, bounds: Rect, clip: &str) -> Markup {
     let strokes = match role {
-        Role::Pays => hatching(bounds),
+        Role::Pays | Role::Limit => hatching(bounds),
         Role::Band => dots(bounds),
         _ => {
             return html! { path class=(format!("area {}", class(role))) d=(outline) {} };

@@ -1,7 +1,9 @@
 //! The pages that a user gets, by the program itself from the examples.
 #![allow(dead_code)] // each test file uses its own part
 
+use std::collections::BTreeMap;
 use std::process::Command;
+use std::sync::{Mutex, PoisonError};
 
 const DEALER: &str = "examples/dealer-mower-quote.yaml";
 const SHUNT: &str = "examples/shunt-regulated.yaml";
@@ -63,8 +65,20 @@ pub const CASES: [Case; 17] = [
     ),
 ];
 
-/// What the program writes in a format.
+/// What the program writes in a format; the same call runs once.
 pub fn written(call: &[&str], format: &str) -> String {
+    static DONE: Mutex<BTreeMap<String, String>> = Mutex::new(BTreeMap::new());
+    let key = format!("{call:?} {format}");
+    let done = || DONE.lock().unwrap_or_else(PoisonError::into_inner);
+    if let Some(text) = done().get(&key) {
+        return text.clone();
+    }
+    let text = run(call, format);
+    done().insert(key, text.clone());
+    text
+}
+
+fn run(call: &[&str], format: &str) -> String {
     let output = Command::new(env!("CARGO_BIN_EXE_ampledger"))
         .args(call)
         .args(["--format", format])
