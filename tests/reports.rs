@@ -3,6 +3,8 @@
 
 #![allow(missing_docs)]
 
+#[path = "reports/answers.rs"]
+mod answers;
 #[path = "reports/gallery.rs"]
 mod gallery;
 #[path = "reports/sample.rs"]
@@ -13,6 +15,7 @@ use ampledger::report::{Block, Cell, Column, Report, Table, Tone, csv, html, mar
 use ampledger::view::{self, Options};
 use gallery::{check_page, gallery, page, reports};
 use snapbox::{assert_data_eq, file};
+use std::path::Path;
 
 #[test]
 fn snapshots_side_by_side() {
@@ -57,6 +60,29 @@ fn snapshots_side_by_side() {
         text::render(&gallery(), &charts),
         file!["reports/gallery.txt"].raw()
     );
+}
+
+/// What a page shows, without the style that every page has.
+fn body(page: &str) -> &str {
+    page.split_once("<body>").map_or(page, |(_, body)| body)
+}
+
+#[test]
+fn each_command_in_every_format_side_by_side() {
+    let named = ["sheet", "size", "remedy", "fleet", "wire"];
+    for (name, report) in reports()
+        .into_iter()
+        .filter(|(name, _)| named.contains(name))
+    {
+        let file = |ending: &str| {
+            let path = format!("tests/reports/{name}.{ending}");
+            snapbox::Data::read_from(&Path::new(env!("CARGO_MANIFEST_DIR")).join(path), None).raw()
+        };
+        assert_data_eq!(text::render(&report, &text::Style::default()), file("txt"));
+        assert_data_eq!(markdown::render(&report), file("md"));
+        assert_data_eq!(csv::render(&report), file("csv"));
+        assert_data_eq!(body(&html::render(&report)).to_owned(), file("html"));
+    }
 }
 
 #[test]

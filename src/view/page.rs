@@ -97,14 +97,11 @@ pub(super) fn closing(report: Report, answer: &Check, cautions: Vec<String>) -> 
 /// The figures that matter most.
 fn facts(answer: &Check) -> Vec<(&'static str, Cell)> {
     let mut facts = Vec::new();
-    let short = answer.verdict != Verdict::KeepsUp;
-    if let Some(lacks) = answer.lacks_ah.filter(|_| short) {
-        facts.push(("Lacks each shift", Cell::measured(lacks).bad()));
-    }
-    let spare = answer.spare_a.as_ref().filter(|_| !short);
-    if let Some((_, least)) = spare.and_then(|s| s.0.iter().min_by(|a, b| a.1.0.total_cmp(&b.1.0)))
+    if let Some(lacks) = answer
+        .lacks_ah
+        .filter(|_| answer.verdict != Verdict::KeepsUp)
     {
-        facts.push(("Spare at every speed", Cell::measured(*least)));
+        facts.push(("Lacks each shift", Cell::measured(lacks).bad()));
     }
     if let Some(settles) = answer.settles_soc {
         facts.push(("Charge settles at", Cell::percent(settles)));

@@ -91,7 +91,7 @@ fn summed(table: Table, lines: &[Line], bought: &[Bought], currency: &str) -> Ta
         table
     } else {
         table.note(format!(
-            "No price given for: {}. The sum is without it.",
+            "Not in the sum, for want of a price: {}.",
             missing.join(", ")
         ))
     }

@@ -20,7 +20,7 @@ pub fn size(answer: &Size, page: bool) -> Report {
     if answer.answers.iter().any(|a| a.amount.is_some()) {
         report = report.table(answers(&answer.answers));
     }
-    report = report.list("No such edge", edgeless(&answer.answers));
+    report = report.list("What does not decide it", edgeless(&answer.answers));
     let parts = answer
         .answers
         .iter()

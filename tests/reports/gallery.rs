@@ -1,10 +1,13 @@
 //! Reports of the hand-made answers, and a chart of each kind.
 
+use super::answers;
 use super::sample::{MARKUP, falls_short, keeps_up, no_battery, trace};
 use ampledger::check::answer::TraceRow;
-use ampledger::quantity::{Amps, Celsius, Fraction, Rpm};
+use ampledger::curve::Curve;
+use ampledger::quantity::{Amps, Celsius, Fraction, Money, Rpm};
 use ampledger::report::Report;
-use ampledger::view::{self, Options, charts};
+use ampledger::view::sheet::Sheet;
+use ampledger::view::{self, Options, charts, quote};
 
 /// Options of a page, with the trace of the sample.
 pub fn page<'a>(trace: &'a [TraceRow]) -> Options<'a> {
@@ -25,9 +28,45 @@ pub fn reports() -> Vec<(&'static str, Report)> {
         ("after", view::check(&after, &page(&[]))),
         ("compare", view::compare(&before, &after, &page(&[]))),
         ("no battery", view::check(&no_battery(), &page(&[]))),
+        ("sheet", sheet()),
+        ("size", view::size(&answers::size())),
+        ("remedy", view::remedy(&answers::remedy())),
+        ("fleet", view::fleet(&answers::fleet())),
+        ("wire", view::wire(&answers::wires())),
+        ("wire page", view::wire::page(&answers::wires())),
         ("gallery", gallery()),
         ("empty", Report::new("")),
     ]
+}
+
+/// A sheet of them.
+pub fn sheet() -> Report {
+    let (before, after) = (falls_short("Orchard mower"), keeps_up("Orchard mower"));
+    let curve = Curve {
+        format: 1,
+        build: "Orchard mower".to_owned(),
+        speeds: Vec::new(),
+        windings: Vec::new(),
+        demands: Vec::new(),
+        headline_v: None,
+        together: Vec::new(),
+    };
+    let parts = [quote::Line {
+        name: "=1+1 & <i>light</i>".to_owned(),
+        count: 4,
+        each: Some(Money(38.0)),
+    }];
+    view::sheet(&Sheet {
+        before: &before,
+        after: Some(&after),
+        trace: &trace(),
+        remedies: Some(&answers::remedy()),
+        wires: &answers::wires(),
+        curve: &curve,
+        season: None,
+        parts: &parts,
+        currency: "EUR",
+    })
 }
 
 /// A chart of each kind that a check does not have.

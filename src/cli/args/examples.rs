@@ -46,7 +46,8 @@ Examples:
 pub const SHEET: &str = "\
 Examples:
   ampledger sheet mower.yaml -o mower.html
-  ampledger sheet mower.yaml --for 'the orchard' --date '12 March' -o quote.html";
+  ampledger sheet mower.yaml --for 'the orchard' --date '12 March' -o quote.html
+  ampledger sheet mower.yaml --with night-work --prices prices.yaml -o quote.html";
 
 /// Of `identify`.
 pub const IDENTIFY: &str = "\
