@@ -168,7 +168,11 @@ fn pages_fit_and_read_in_light_and_in_dark() {
             assert!(one.scrolled <= one.width, "scrolls sideways: {one:?}");
             // WCAG 2.2, success criterion 1.4.3
             assert!(one.contrast >= 4.5, "dark {dark}: {one:?}");
-            assert_eq!(one.outside, "", "dark {dark}: a label is cut: {one:?}");
+            assert_eq!(
+                one.outside, "",
+                "{} in dark {dark}: a label is cut: {one:?}",
+                one.name
+            );
             assert_eq!(one.overlapping, "", "dark {dark}: labels overlap: {one:?}");
             let least = &mut lowest[usize::from(dark)];
             *least = least.min(one.contrast);

@@ -3,11 +3,11 @@
 
 use ampledger::build::Assumed;
 use ampledger::check::answer::Verdict;
-use ampledger::fleet::{Fleet, Group, Outcome, Part, Row, Totals};
+use ampledger::fleet::{Fleet, Group, Outcome, Row, Totals};
 use ampledger::quantity::{
     AmpHours, Amps, Celsius, Fraction, Metres, Money, Ohms, Rpm, SquareMm, Volts, Watts,
 };
-use ampledger::remedy::{Answer, Remedy};
+use ampledger::remedy::{Answer, Part, Remedy};
 use ampledger::size::{Bound, Guideline, Influence, Size, WindingRow};
 use ampledger::wire::{
     Arrives, Buy, BuyFuse, BuyRelay, BuyWire, Effect, Gauge, NotSized, SourceRow, SwitchRow, Unmet,
@@ -20,6 +20,7 @@ pub fn remedy() -> Remedy {
     let answer = |changes: &[&str], set: &[&str], cost: f64, settles: f64| Answer {
         changes: changes.iter().map(|c| (*c).to_owned()).collect(),
         set: set.iter().map(|s| (*s).to_owned()).collect(),
+        parts: Vec::new(),
         cost: Some(Money(cost)),
         verdict: Verdict::KeepsUp,
         settles_soc: Some(Fraction(settles)),
@@ -70,6 +71,7 @@ pub fn size() -> Size {
         format: 1,
         build: "Orchard mower".to_owned(),
         keeps_up: false,
+        share: None,
         binds: Some("charge at idle: takes 4.5 Ah".to_owned()),
         answers: vec![
             number(
@@ -138,6 +140,8 @@ pub fn fleet() -> Fleet {
     Fleet {
         format: 1,
         fleet: "Quillhaven & sons".to_owned(),
+        currency: "EUR".to_owned(),
+        notes: Vec::new(),
         rows: vec![
             row(
                 "verge <mower>",

@@ -29,7 +29,7 @@ pub fn reports() -> Vec<(&'static str, Report)> {
         ("compare", view::compare(&before, &after, &page(&[]))),
         ("no battery", view::check(&no_battery(), &page(&[]))),
         ("sheet", sheet()),
-        ("size", view::size(&answers::size())),
+        ("size", view::size(&answers::size(), true)),
         ("remedy", view::remedy(&answers::remedy())),
         ("fleet", view::fleet(&answers::fleet())),
         ("wire", view::wire(&answers::wires())),
