@@ -388,7 +388,7 @@ fn names_stay_names_on_every_page_and_in_every_cell() {
 
 /// Text shows as text: the parser sees it whole, and no element that it would have made.
 fn safe_page(command: &str, page: &str, texts: &[&str]) {
-    assert_eq!(errors(&page), Vec::<String>::new(), "{command}");
+    assert_eq!(errors(page), Vec::<String>::new(), "{command}");
     let dom = parse(page);
     let all = text(&dom.document);
     for shown in texts {

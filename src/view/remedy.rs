@@ -85,7 +85,11 @@ fn table(answer: &Remedy) -> Table {
         vec![
             Cell::count(index as u64 + 1),
             Cell::name(a.changes.join("; ")),
-            Cell::maybe(a.cost, |cost| money(cost, &answer.currency)),
+            match a.cost {
+                Some(cost) => money(cost, &answer.currency),
+                None if is_priced(answer) => Cell::text("not known").dim(),
+                None => Cell::empty(),
+            },
             Cell::maybe(a.settles_soc, |soc: Fraction| Cell::percent(soc)),
         ]
     });
