@@ -268,3 +268,61 @@ fn contradictions_are_drawn_again() {
     assert_eq!(answer.runs, 64);
     assert!(answer.contradictory > 0, "{answer:?}");
 }
+
+/// What a dealer adds is drawn as well; its worst draw is no file, and that is said before anything is drawn.
+#[test]
+fn a_kit_is_drawn_too() {
+    let folder = tempfile::tempdir().expect("a folder");
+    let file = folder.path().join("cart.yaml");
+    std::fs::write(&file, CART.replace("172 W", "60 W")).expect("a file");
+    let run = |more: &[&str]| {
+        let mut command = std::process::Command::new(env!("CARGO_BIN_EXE_ampledger"));
+        command.arg("odds").arg(&file).args(more);
+        command.args(["--runs", "64", "--format", "json"]);
+        command.output().expect("the program")
+    };
+    let answer = |more: &[&str]| -> serde_json::Value {
+        serde_json::from_slice(&run(more).stdout).expect("JSON")
+    };
+    let (bare, fitted) = (answer(&[]), answer(&["--with", "night-work"]));
+    assert_eq!(bare["keeps_up_share"], 1.0);
+    assert!(fitted["keeps_up_share"].as_f64() < bare["keeps_up_share"].as_f64());
+    let drawn = |answer: &serde_json::Value| answer["tolerances"].as_array().map_or(0, Vec::len);
+    assert!(drawn(&fitted) > drawn(&bare), "{fitted}");
+    let worst = folder.path().join("worst.yaml");
+    let refused = run(&[
+        "--with",
+        "night-work",
+        "--worst",
+        &worst.display().to_string(),
+    ]);
+    assert_eq!(refused.status.code(), Some(2));
+    assert!(!worst.exists());
+}
+
+/// The worst draw, written as a build file, reads back and lacks what the answer says of it.
+#[test]
+fn the_worst_draw_reads_back() {
+    let folder = tempfile::tempdir().expect("a folder");
+    let (file, worst) = (
+        folder.path().join("cart.yaml"),
+        folder.path().join("worst.yaml"),
+    );
+    std::fs::write(&file, CART).expect("a file");
+    let mut command = std::process::Command::new(env!("CARGO_BIN_EXE_ampledger"));
+    command.arg("odds").arg(&file).arg("--worst").arg(&worst);
+    let output = command.args(["--runs", "64", "--format", "json"]).output();
+    let answer: serde_json::Value =
+        serde_json::from_slice(&output.expect("the program").stdout).expect("JSON");
+    let text = std::fs::read_to_string(&worst).expect("the worst draw");
+    let judged = judge(&built(&text, &[])).expect("a verdict");
+    let lacks = judged.lacks().expect("a charge").0;
+    let told = answer["worst"]["lacks_ah"].as_f64().expect("a charge");
+    // Values are written to six digits.
+    assert!((lacks - told).abs() < 1e-3 * told, "{lacks} for {told}");
+    assert!(told >= answer["lacks_ah"]["p95"].as_f64().expect("a charge"));
+    assert!(
+        text.contains("# as bought"),
+        "what was written stays: {text}"
+    );
+}

@@ -346,3 +346,38 @@ fn a_file_is_no_folder() {
         .stderr_eq("error: `out.txt/more.txt` cannot be written: `out.txt` is no folder\n");
     assert_eq!(folder.read("out.txt"), OLD);
 }
+
+/// A fleet stopped by its owner half way leaves neither the file nor a part of it beside.
+#[cfg(unix)]
+#[test]
+fn an_interrupted_fleet_leaves_nothing() {
+    let folder = Folder::with_good();
+    let mut sheet = "machine,build,count,kit,set\n".to_owned();
+    for k in 0..20_000 {
+        sheet += &format!(
+            "m{k},good.yaml,1,,accessories[0].draw={}.{k:05} W\n",
+            60 + k % 300
+        );
+    }
+    folder.write("fleet.csv", sheet);
+    for format in ["csv", "json"] {
+        let args = ["fleet", "fleet.csv", "--format", format, "-o", "out.txt"];
+        let mut child = std::process::Command::new(binary())
+            .args(args)
+            .current_dir(folder.path(""))
+            .spawn()
+            .expect("it runs");
+        std::thread::sleep(std::time::Duration::from_millis(400));
+        assert!(
+            child.try_wait().expect("a child").is_none(),
+            "still at work"
+        );
+        let script = format!("kill -INT {}", child.id());
+        let stopped = std::process::Command::new("sh")
+            .args(["-c", &script])
+            .status();
+        assert!(stopped.expect("a shell").success());
+        assert!(!child.wait().expect("ended").success());
+        assert_eq!(folder.names(), ["fleet.csv", "good.yaml"]);
+    }
+}

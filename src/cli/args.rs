@@ -221,8 +221,11 @@ pub struct OddsArgs {
     /// Which sequence of draws: the same seed gives the same answer
     #[arg(long, value_name = "NUMBER", default_value_t = 1)]
     pub seed: u64,
-    /// Write the worst draw as a build file
-    #[arg(long, value_name = "FILE.yaml")]
+    /// A kit to add first, by its id or file
+    #[arg(long, value_name = "KIT")]
+    pub with: Option<String>,
+    /// Write the worst draw as a build file; without a kit, which stands in no build file
+    #[arg(long, value_name = "FILE.yaml", conflicts_with = "with")]
     pub worst: Option<PathBuf>,
 }
 

@@ -2,10 +2,11 @@
 """Measures the program against what it must reach, in one run: standard library, cargo and valgrind only.
 
     python3 tests/bench/ratios.py            all
-    python3 tests/bench/ratios.py check fleet …   those named: check, instructions, fleet, threads, odds, simulator
+    python3 tests/bench/ratios.py check fleet …   those named: check, instructions, fleet, threads, odds, input, simulator
 
-Prints one line a figure, its bound beside it; exit 1 where one is missed. The builds are invented. Times are only as
-good as the machine is quiet: run it on one that does nothing else.
+Prints one line a figure, its bound beside it; exit 1 where one is missed. The builds are invented. What is compared is
+run in turn, pair by pair, and the ratio is the median of the pairs' ratios, so that whatever else the machine does
+falls on both alike. The load while it ran is printed with it.
 """
 import json, os, re, shutil, subprocess, sys, tempfile, time
 
@@ -78,14 +79,19 @@ def median(values):
     return sorted(values)[len(values) // 2]
 
 
+def ratio(pairs, over, under, of=0):
+    """Median of the pairs' own ratios of one figure: 0 seconds on the clock, 1 seconds of all cores."""
+    return median([p[over][of] / p[under][of] for p in pairs])
+
+
 def check(folder):
     """`check` of the forty-accessory build against `--version`, whole processes, in turn."""
     path = os.path.join(folder, 'forty.yaml')
     open(path, 'w').write(forty())
     pairs = [(run([PROGRAM, '--version']), run([PROGRAM, 'check', path])) for _ in range(101)]
-    base, one = (median([p[k][0] for p in pairs]) for k in (0, 1))
-    busy = median([p[1][1] for p in pairs]) / median([p[0][1] for p in pairs])
-    said('check against --version', f'{one / base:.1f} × ({one * 1e3:.1f} ms; of the cores {busy:.1f} ×)', 'at most 5 ×', one / base <= 5)
+    base, one = (median([p[k][0] for p in pairs]) * 1e3 for k in (0, 1))
+    times = ratio(pairs, 1, 0)
+    said('check against --version', f'{times:.1f} × ({one:.1f} ms for {base:.1f} ms)', 'at most 5 ×', times <= 5)
 
 
 def instructions(folder):
@@ -118,11 +124,14 @@ def fleet_of(folder, n):
 
 
 def fleet(folder):
-    """Ten times the builds, no two alike, and the memory that takes."""
+    """Ten times the build files, no two alike, and the memory that takes. (Rows that name one file with one kit and the
+    same changes are judged once: a fleet of those says nothing of the speed.)"""
     small, big = ([PROGRAM, 'fleet', fleet_of(folder, n), '--no-remedy', '--format', 'csv'] for n in (1000, 10000))
     pairs = [(run(small), run(big)) for _ in range(3)]
-    a, b = (median([p[k][0] for p in pairs]) for k in (0, 1))
-    said('10 × the builds', f'{b / a:.1f} × the time ({10000 / b:.0f} builds a second)', 'at most 11 ×', b / a <= 11)
+    b, cores, times = median([p[1][0] for p in pairs]), median([p[1][1] for p in pairs]), ratio(pairs, 1, 0)
+    figure = f'{times:.1f} × the time ({10000 / b:.0f} builds a second)'
+    said('10 × the builds', figure, 'at most 11 ×', times <= 11)
+    print(f"        {'time of all cores for one build':34} {cores / 10:.2f} ms")
     most = max(p[1][2] for p in pairs)
     said('memory of 10,000 builds', f'{most:.1f} MiB', 'under 64 MiB', most < 64)
 
@@ -131,9 +140,8 @@ def threads(folder):
     """One thread against two on a thousand builds."""
     args = [PROGRAM, 'fleet', fleet_of(folder, 1000), '--no-remedy', '--format', 'csv']
     pairs = [(run(args, 1), run(args, 2)) for _ in range(7)]
-    one, two = (min(p[k][0] for p in pairs) for k in (0, 1))
-    more = min(p[1][1] for p in pairs) / min(p[0][1] for p in pairs)
-    said('two threads against one', f'{one / two:.2f} × as fast (of the cores {more:.2f} ×)', 'at least 1.8 ×', one / two >= 1.8)
+    times, work = ratio(pairs, 0, 1), ratio(pairs, 1, 0, of=1)
+    said('two threads against one', f'{times:.2f} × as fast ({work:.2f} × the work)', 'at least 1.8 ×', times >= 1.8)
 
 
 def odds(folder):
@@ -142,6 +150,25 @@ def odds(folder):
     open(path, 'w').write(one_of_many(7, ' ± 8 %'))
     took = run([PROGRAM, 'odds', path, '--runs', '10000'])[0]
     print(f"        {'odds of 10,000 draws':34} {took:.1f} s ({10000 / took:.0f} draws a second)")
+
+
+def refused(folder):
+    """What is no build is refused, exit 2, in under 0.1 s: too large, a bomb of aliases, nested too deep, no number."""
+    bomb = 'a: &a [x]\n' + ''.join(f'{chr(98 + k)}: &{chr(98 + k)} [' + ', '.join([f'*{chr(97 + k)}'] * 9) + ']\n' for k in range(9))
+    texts = {'large': 'build: ' + 'x' * (2 << 20), 'bomb': bomb, 'deep': 'build: ' + '[' * 20000, 'number': 'air: .nan\n' * 3}
+    worst = 0
+    for name, text in texts.items():
+        path = os.path.join(folder, f'{name}.yaml')
+        open(path, 'w').write(text)
+        times = []
+        for _ in range(15):
+            begun = time.perf_counter()
+            code = subprocess.run([PROGRAM, 'check', path], capture_output=True).returncode
+            times.append(time.perf_counter() - begun)
+            if code != 2:
+                sys.exit(f'exit {code} for {name}')
+        worst = max(worst, median(times))
+    said('input that is no build refused', f'{worst * 1e3:.0f} ms at most', 'under 100 ms', worst < 0.1)
 
 
 def simulator(_):
@@ -154,7 +181,7 @@ def simulator(_):
     said('winding current against ngspice', (lines or ['no figure printed'])[-1].strip()[:70], 'at least 100,000 ×', r.returncode == 0)
 
 
-ALL = dict(check=check, instructions=instructions, fleet=fleet, threads=threads, odds=odds, simulator=simulator)
+ALL = dict(check=check, instructions=instructions, fleet=fleet, threads=threads, odds=odds, input=refused, simulator=simulator)
 
 if __name__ == '__main__':
     wanted = sys.argv[1:] or list(ALL)
@@ -164,4 +191,5 @@ if __name__ == '__main__':
     with tempfile.TemporaryDirectory() as folder:
         for name in wanted:
             ALL[name](folder)
+    print(f'        load while it ran: {os.getloadavg()[1]:.1f} on {os.cpu_count()} cores')
     sys.exit(bool(missed))

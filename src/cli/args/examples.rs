@@ -98,6 +98,7 @@ Tolerances stand in the build, `55 W ± 8 %`; a figure without one does not vary
 
 Examples:
   ampledger odds mower.yaml
+  ampledger odds mower.yaml --with night-work
   ampledger odds mower.yaml --runs 20000 --seed 7 --format json
   ampledger odds mower.yaml --worst worst.yaml";
 
