@@ -16,7 +16,7 @@ charging:
 battery: {{capacity: {:.1} Ah, cold_cranking: 380 A, type: flooded}}
 accessories:
   - {{name: PTO clutch, draw: 3.1 ohm, duty: {{governed: {:.1} %}}}}
-  - {{name: work lamps, draw: {:.2} W, duty: {{idle: 100 %, governed: 100 %}}}}
+  - {{name: work lamps, draw: {:.6} W, duty: {{idle: 100 %, governed: 100 %}}}}
   - {{name: beacon, draw: 1.2 A, duty: 100 %}}
   - {{name: pump, draw: 6 A, duty: {{governed: 30 %}}}}
 shift: [crank, {{idle: 12 min}}, {{governed: {} min}}, {{stopped: 20 min}}, crank, {{governed: 110 min}}, {{idle: 18 min}}]
@@ -27,7 +27,7 @@ parked: 15 h
         14.0 + 6.0 * share(17),
         24.0 + 12.0 * share(19),
         60.0 + 40.0 * share(23),
-        30.0 + 150.0 * share(29) + 1e-3 * f64::from(number),
+        30.0 + 150.0 * share(29) + 1e-6 * f64::from(number),
         60 + number % 60,
     )
 }

@@ -55,7 +55,7 @@ charging:
 battery: {{capacity: {24 + 12 * share(19):.1f} Ah, cold_cranking: 380 A, type: flooded}}
 accessories:
   - {{name: PTO clutch, draw: 3.1 ohm{tolerance}, duty: {{governed: {60 + 40 * share(23):.1f} %}}}}
-  - {{name: work lamps, draw: {30 + 150 * share(29) + k / 1000:.3f} W, duty: {{idle: 100 %, governed: 100 %}}}}
+  - {{name: work lamps, draw: {30 + 150 * share(29) + k / 1e6:.6f} W, duty: {{idle: 100 %, governed: 100 %}}}}
   - {{name: beacon, draw: 1.2 A{tolerance}, duty: 100 %}}
   - {{name: pump, draw: 6 A, duty: {{governed: 30 %}}}}
 shift: [crank, {{idle: 12 min}}, {{governed: {60 + k % 60} min}}, {{stopped: 20 min}}, crank, {{governed: 110 min}}, {{idle: 18 min}}]
