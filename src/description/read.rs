@@ -43,7 +43,11 @@ pub fn read_set(
     } = outcome;
     match value {
         Some(description) if problems.is_empty() => Ok((description, source)),
-        partial => Err(Refusal::new(source, problems).with_partial(partial)),
+        // with more wrong than is shown, no more is looked for
+        partial => {
+            let partial = partial.filter(|_| problems.left_out() == 0);
+            Err(Refusal::new(source, problems).with_partial(partial))
+        }
     }
 }
 

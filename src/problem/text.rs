@@ -62,7 +62,7 @@ pub const MOST_BYTES: u64 = 1 << 20;
 /// Most lists and mappings inside each other.
 pub const MOST_DEEP: usize = 64;
 /// Most values of a file.
-pub const MOST_VALUES: u64 = 200_000;
+pub const MOST_VALUES: u64 = 100_000;
 
 impl fmt::Display for TextProblem {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {

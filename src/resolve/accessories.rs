@@ -9,6 +9,7 @@ use crate::build::{Accessory, Draw, Inrush, Speed, Works};
 use crate::description::AccessoryText;
 use crate::description::accessory::LoadKind;
 use crate::quantity::{Amps, Volts, format};
+use std::collections::{BTreeMap, BTreeSet};
 
 /// Volts below which electronics and constant currents of a 12 V system drop out. Common practice, no source.
 const DROP_OUT: Volts = Volts(10.5);
@@ -57,7 +58,13 @@ pub(super) fn accessories(
 
 /// A name for each: as written, the part's, the part's title; numbered where parts bring the same one.
 fn names(context: &mut Context, layers: &[Layers<AccessoryText>]) -> Vec<String> {
-    let mut names: Vec<String> = Vec::with_capacity(layers.len());
+    let written = |layer: &Layers<AccessoryText>| layer.own.name.as_ref().map(|n| n.value.clone());
+    let all_written: BTreeSet<String> = layers.iter().filter_map(written).collect();
+    let mut written_before = BTreeSet::new();
+    let mut taken: BTreeSet<String> = BTreeSet::new();
+    // the last number given to each name, so that many alike are not counted through again for each
+    let mut numbers: BTreeMap<String, usize> = BTreeMap::new();
+    let mut names = Vec::with_capacity(layers.len());
     for (index, layer) in layers.iter().enumerate() {
         let written = layer.own.name.as_ref();
         let base = match (written, layer.parts.first()) {
@@ -68,27 +75,23 @@ fn names(context: &mut Context, layers: &[Layers<AccessoryText>]) -> Vec<String>
             },
             (None, None) => format!("accessory {}", index + 1),
         };
-        if let Some(name) = written {
-            let twice = |other: &Layers<AccessoryText>| {
-                other.own.name.as_ref().is_some_and(|n| n.value == base)
-            };
-            if layers.iter().take(index).any(twice) {
-                context.fault(name.path.clone(), Fault::NameTwice { name: base.clone() });
+        if let Some(name) = written
+            && !written_before.insert(base.clone())
+        {
+            context.fault(name.path.clone(), Fault::NameTwice { name: base.clone() });
+        }
+        // a written name is not taken by a part's before its turn
+        let is_taken =
+            |name: &str| taken.contains(name) || (written.is_none() && all_written.contains(name));
+        let mut name = base.clone();
+        if is_taken(&name) {
+            let number = numbers.entry(base.clone()).or_insert(1);
+            while is_taken(&name) {
+                *number += 1;
+                name = format!("{base} ({number})");
             }
         }
-        let taken = |name: &String| {
-            let written = layers
-                .iter()
-                .skip(index + 1)
-                .any(|l| l.own.name.as_ref().is_some_and(|n| n.value == *name));
-            names.contains(name) || (written && layer.own.name.is_none())
-        };
-        let mut name = base.clone();
-        let mut number = 1;
-        while taken(&name) {
-            number += 1;
-            name = format!("{base} ({number})");
-        }
+        taken.insert(name.clone());
         names.push(name);
     }
     names

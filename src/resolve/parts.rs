@@ -4,7 +4,7 @@ use super::Fault;
 use super::context::{Context, Layers, Part};
 use crate::build::Origin;
 use crate::catalog::{Catalogs, Parted};
-use crate::problem::Problem;
+use crate::problem::{MOST_KEPT, Problem};
 
 /// An entry over its parts, nearest first. What is wrong with them is told at the path of the entry's `part`.
 pub(super) fn layers<'a, T: Parted>(
@@ -22,7 +22,7 @@ pub(super) fn layers<'a, T: Parted>(
             faults.push(Fault::PartCycle { ids });
             break;
         }
-        match part(context.catalogs, &id) {
+        match part(context.catalogs, &id, context.faults.len() < MOST_KEPT) {
             Ok(part) => {
                 wanted = T::part(&part.read.text).map(|p| p.value.clone());
                 parts.push(part);
@@ -37,8 +37,8 @@ pub(super) fn layers<'a, T: Parted>(
     Layers { own, parts, broken }
 }
 
-/// The part of an id, read; or what is wrong with it.
-fn part<T: Parted>(catalogs: &Catalogs, id: &str) -> Result<Part<T>, Vec<Fault>> {
+/// The part of an id, read; or what is wrong with it. A suggestion is looked for where it will be `shown`.
+fn part<T: Parted>(catalogs: &Catalogs, id: &str, shown: bool) -> Result<Part<T>, Vec<Fault>> {
     match catalogs.part(id) {
         Some(Ok(read)) => {
             let origin = Origin::Catalog(read.entry.words());
@@ -58,7 +58,7 @@ fn part<T: Parted>(catalogs: &Catalogs, id: &str) -> Result<Part<T>, Vec<Fault>>
         None => Err(vec![Fault::UnknownPart {
             id: id.to_owned(),
             kind: T::KIND,
-            nearest: catalogs.nearest(T::KIND, id),
+            nearest: shown.then(|| catalogs.nearest(T::KIND, id)).flatten(),
         }]),
     }
 }
