@@ -64,8 +64,10 @@ struct Page {
 /// Every page of the program and every report of the gallery, in a folder.
 fn pages(folder: &Path) -> Vec<Page> {
     let reports = gallery::reports().into_iter();
-    let reports =
-        reports.map(|(name, report)| (format!("report {name}"), html::render(&report), 2));
+    let reports = reports.map(|(name, report)| {
+        let sheets = if name == "sheet" { 3 } else { 2 };
+        (format!("report {name}"), html::render(&report), sheets)
+    });
     let cases = CASES.iter().map(|case| {
         (
             case.name.to_owned(),
