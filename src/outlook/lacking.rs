@@ -28,9 +28,9 @@ const CLOSED: f64 = 1e-9;
 const FOUND_TO: f64 = 2e-5;
 
 /// Width, as a share of the current, within which the edge of a build with constant powers is proved.
-const PROVED: f64 = 1e-3;
+const PROVED: f64 = 4e-3;
 /// The same of a current near nought, A.
-const PROVED_AT_NOUGHT: f64 = 2e-5;
+const PROVED_AT_NOUGHT: f64 = 1e-4;
 
 /// Searches for the current of the touching cycle, each from where the last ended.
 const MOST_SEARCHES: u32 = 4;
