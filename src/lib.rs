@@ -27,7 +27,7 @@
 //! | every number present: stated, from a catalog, or assumed | [`resolve`](mod@resolve), [`build`] |
 //! | the physics | [`source`], [`battery`], [`load`], [`circuit`] |
 //! | one instant, one shift, shift after shift | [`bus`], [`ledger`], [`outlook`] |
-//! | answers | [`check`](mod@check), [`curve`](mod@curve), [`fleet`], [`identify`](mod@identify), [`odds`](mod@odds), [`size`], [`wire`](mod@wire) |
+//! | answers | [`check`](mod@check), [`curve`](mod@curve), [`fleet`], [`identify`](mod@identify), [`odds`](mod@odds), [`size`](mod@size), [`remedy`](mod@remedy), [`wire`](mod@wire) |
 //! | wording and layout; renderers, which compute nothing | [`view`], [`chart`], [`report`] |
 //! | used by all | [`quantity`], [`root`] |
 //!

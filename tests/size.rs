@@ -286,7 +286,7 @@ fn influence_is_what_solving_again_gives() {
 
 /// K097: the load of K094 (10.8103 A at 14.0 V) is 71.57 % of what the stator of the inductance
 /// checks gives at 3600 rpm, within the 80 % of AC 43.13-1B §11-35a. K098: supply meets load at
-/// 2847.7 rpm. (Fact sheet, derived there; the machine is invented.)
+/// 2847.7 rpm. (Derived; the machine is invented.)
 #[test]
 fn the_guideline_of_eighty_per_cent() {
     let (_, build) = read(size_builds::STATOR_OF_THE_FACTS, &[]);

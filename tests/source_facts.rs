@@ -1,5 +1,5 @@
-//! Windings and rectifiers against textbook figures. Numbers K… are those of the project's fact sheet; "derived" there
-//! means recomputed in closed form or by summation, apart from this program.
+//! Windings and rectifiers against textbook figures. Numbers K… are told of in DEVELOPERS.md; "derived" means
+//! recomputed in closed form or by summation, apart from this program.
 
 use ampledger::quantity::{Amps, Henries, Ohms, Rpm, Volts, VoltsPerRpm, Watts};
 use ampledger::source::{

@@ -32,8 +32,8 @@ fn aircraft(gauge: &str) -> Conductor {
     }
 }
 
-/// FAA AC 43.13-1B tables 11-7 and 11-8: volts lost by 20 A over whole runs (K012 to K019 of the fact
-/// sheet). Two entries are misprinted there: .366 should be .491, 3.60 should be 3.555.
+/// FAA AC 43.13-1B tables 11-7 and 11-8: volts lost by 20 A over whole runs (K012 to K019).
+/// Two entries are misprinted there: .366 should be .491, 3.60 should be 3.555.
 #[test]
 fn aircraft_voltage_drops() {
     let rows = [
@@ -133,7 +133,7 @@ bundle:
     );
 }
 
-/// K025 of the fact sheet: 10 A over 21 ft out and back on 12 AWG lose 0.3335 V by the law of solid
+/// K025: 10 A over 21 ft out and back on 12 AWG lose 0.3335 V by the law of solid
 /// copper, within 3 % of 12 V; a marine rule of thumb in circular mils (constant from memory) and the
 /// 3 % chart of a reprint ask for 10 AWG. Stranded and warm, the program asks for 10 AWG too.
 #[test]
@@ -358,7 +358,7 @@ fn the_list_to_buy_adds_up_and_rows_from_memory_are_marked() {
     assert_eq!(json["gauge"], "metric");
 }
 
-/// K034 and K035 of the fact sheet: four fifths of 35 A are 28 A, and 26.1 A is over four fifths of 30 A
+/// K034 and K035: four fifths of 35 A are 28 A, and 26.1 A is over four fifths of 30 A
 /// (FAA AC 43.13-1B 11-35a, there of a generator; the same share as a fuse's).
 #[test]
 fn four_fifths() {
@@ -368,7 +368,7 @@ fn four_fifths() {
     assert_eq!((rating(24.0), rating(26.1)), (30.0, 35.0));
 }
 
-/// Lamps at their test volts: K100 and K101 of the fact sheet (UN Regulation 37, limits from memory): 60 W
+/// Lamps at their test volts: K100 and K101 (UN Regulation 37, limits from memory): 60 W
 /// of 12 V takes 69.55 W at 13.2 V, within 75 W; 55 W takes 63.76 W, above the 58 W of one category, so
 /// that rated watts are a label. K093: its sheet for H17, read, gives 700 to 900 lm and 450 to 600 lm
 /// from 12.0 to 13.2 V, exponents 2.64 and 3.02: a halogen lamp dims less than the plain bulb's 3.4 says.

@@ -183,7 +183,7 @@ fn days_until_it_does_not_crank() {
 #[test]
 fn overcharge_splits_water() {
     let b = battery();
-    // K055 of the fact sheet: 6 · 3600/(2 · 96485) · 24.465 L, Faraday's law.
+    // K055: 6 · 3600/(2 · 96485) · 24.465 L, Faraday's law.
     close(b.hydrogen_freed(AmpHours(1.0)).0, 2.738_47);
     // 18.015 g · 3600/(2 · 96485) a cell.
     close(b.water_lost(AmpHours(1.0)).0, 6.0 * 0.336_083);

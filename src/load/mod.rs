@@ -239,7 +239,7 @@ mod tests {
         assert!((a - b).abs() <= tolerance, "{a} for {b}");
     }
 
-    /// K089–K092, K102, K103 and K088 of the fact sheet: filament, LED, relay and clutch laws
+    /// K089–K092, K102, K103 and K088: filament, LED, relay and clutch laws
     /// (encyclopaedia and textbook laws, derived).
     #[test]
     fn laws_of_draw() {

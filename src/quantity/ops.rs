@@ -74,7 +74,7 @@ mod tests {
         assert_eq!(Amps(3.0) * Ohms(4.0), Volts(12.0));
         assert_eq!(Volts(12.0) / Ohms(4.0), Amps(3.0));
         assert_eq!(Watts(48.0) / Volts(12.0), Amps(4.0));
-        // K053 of the fact sheet: 30 mA for 30 days takes 21.6 Ah (arithmetic).
+        // K053: 30 mA for 30 days takes 21.6 Ah (arithmetic).
         let taken = Amps(0.030) * Hours(30.0 * 24.0);
         assert!((taken - AmpHours(21.6)).abs() < AmpHours(1e-9));
         assert_eq!(Amps(10.0) * Fraction(0.25), Amps(2.5));

@@ -292,7 +292,16 @@ fn sums(groups: &[Group], currency: &str) -> Table {
         0 => None,
         n => Some(format!("For {} there is no remedy in it.", machines(n))),
     };
-    let notes: Vec<String> = unpriced.into_iter().chain(unmended).collect();
+    let with_kits = groups.iter().any(|g| g.kit.is_some());
+    let fitting = with_kits.then(|| {
+        "Kits at their own price where they have one, which may include fitting; lists to buy are parts alone."
+            .to_owned()
+    });
+    let notes: Vec<String> = fitting
+        .into_iter()
+        .chain(unpriced)
+        .chain(unmended)
+        .collect();
     if notes.is_empty() {
         table
     } else {

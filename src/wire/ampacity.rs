@@ -199,7 +199,7 @@ mod tests {
         (single * place.share()).0
     }
 
-    /// K027, K028 and K029 of the fact sheet: 33 CFR 183.425 table 5, its note 1, and a derated
+    /// K027, K028 and K029: 33 CFR 183.425 table 5, its note 1, and a derated
     /// table printed beside it.
     #[test]
     fn printed_ampacities() {
@@ -255,7 +255,7 @@ mod tests {
         assert_eq!(table.place(&laid(60.0, 70.0)).unwrap().heat, Fraction::ZERO);
     }
 
-    /// K022 of the fact sheet: FAA AC 43.13-1B 11-66d(6) (formula from memory) puts a wire of 200 °C at
+    /// K022: FAA AC 43.13-1B 11-66d(6) (formula from memory) puts a wire of 200 °C at
     /// 20 A of 26 A in air of 50 °C at 181.6 °C by a root law that it calls conservative; heat in
     /// proportion to I² gives less.
     #[test]

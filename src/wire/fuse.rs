@@ -161,7 +161,7 @@ mod tests {
     use super::*;
     use crate::wire::Tables;
 
-    /// K033 of the fact sheet: 10 A at 125 % asks for 12.5 A, next rating 15 A (general electronics text).
+    /// K033: 10 A at 125 % asks for 12.5 A, next rating 15 A (general electronics text).
     #[test]
     fn a_fuse_carries_its_load_at_four_fifths() {
         let fuses = Tables::builtin().fuses;
@@ -174,7 +174,7 @@ mod tests {
         assert_eq!(rating(80.1), None);
     }
 
-    /// K030 of the fact sheet: 33 CFR 183.455(c)(1), 12 AWG at 105 °C: 1.5 × 45 = 67.5 A.
+    /// K030: 33 CFR 183.455(c)(1), 12 AWG at 105 °C: 1.5 × 45 = 67.5 A.
     #[test]
     fn the_lawful_ceiling() {
         let (ceiling, _) = Tables::builtin().fuses.lawful_ceiling(Amps(45.0)).unwrap();

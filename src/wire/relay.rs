@@ -113,7 +113,7 @@ mod tests {
     use super::*;
     use crate::wire::Tables;
 
-    /// K031 and K032 of the fact sheet: FAA AC 43.13-1B table 11-4 at 12 V and 28 V, 5 A.
+    /// K031 and K032: FAA AC 43.13-1B table 11-4 at 12 V and 28 V, 5 A.
     #[test]
     fn switch_derating_as_printed() {
         let relays = Tables::builtin().relays;

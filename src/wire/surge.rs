@@ -59,7 +59,7 @@ impl Surge {
 mod tests {
     use super::*;
 
-    /// K104 of the fact sheet: 55 W at 12 V takes 4.583 A; twelve times that is 55.0 A (10 to 18 times
+    /// K104: 55 W at 12 V takes 4.583 A; twelve times that is 55.0 A (10 to 18 times
     /// cold in general texts). Its heat against the integral taken in fine steps.
     #[test]
     fn a_lamp_surges() {

@@ -25,7 +25,7 @@ shift: [crank, {idle: 25 min}, {governed: 140 min}, {stopped: 12 min}, crank, {g
 parked: 13 h
 ";
 
-/// The invented machine of the fact sheet's checks K083 and K094: its clutch of 2.9 ohm at 20 °C is
+/// The invented machine's checks K083 and K094: its clutch of 2.9 ohm at 20 °C is
 /// 3.58382 ohm at 80 °C (copper, 0.00393 a degree).
 pub const STATOR_OF_THE_FACTS: &str = "build: stator of the facts
 air: 20 °C
