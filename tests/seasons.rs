@@ -213,7 +213,7 @@ fn morning(text: &str) -> Option<u32> {
     let mut charge = Charge::rested(build.start);
     for day in 1..=30 {
         let volts = machine.battery.crank(charge, &asks, air).starter;
-        // Above -10 °C the starter needs 1.5 V a cell, 9.0 V.
+        // The starter needs 1.5 V a cell, 9.0 V.
         if volts < Volts(9.0) {
             return Some(day);
         }

@@ -48,19 +48,16 @@ fn cold_takes_the_margin_of_a_start() {
             -20.0, -15.0, -10.0, -5.0, 0.0, 5.0, 10.0, 15.0, 20.0, 25.0, 30.0, 35.0, 40.0
         ]
     );
-    // 9.0 V are needed down to -10 °C, 7.2 V below: the margin falls with cold on either side of it.
-    for part in [&rows[..2], &rows[2..11]] {
-        for pair in part.windows(2) {
-            assert!(margin(&pair[0]) < margin(&pair[1]), "{pair:?}");
-            assert!(pair[0].reserve_soc >= pair[1].reserve_soc, "{pair:?}");
-        }
+    for pair in rows[..11].windows(2) {
+        assert!(margin(&pair[0]) < margin(&pair[1]), "{pair:?}");
+        assert!(pair[0].reserve_soc >= pair[1].reserve_soc, "{pair:?}");
     }
-    // What keeps up in the cold keeps up in the mild; the verdict turns once on the way from -10 to 30 °C.
-    let keeps: Vec<bool> = rows[2..11]
+    // What keeps up in the cold keeps up in the mild; the verdict turns once on the way from -20 to 30 °C.
+    let keeps: Vec<bool> = rows[..11]
         .iter()
         .map(|row| row.verdict == Verdict::KeepsUp)
         .collect();
-    assert!(!keeps[0] && keeps[8], "{keeps:?}");
+    assert!(!keeps[0] && keeps[10], "{keeps:?}");
     assert_eq!(
         keeps.windows(2).filter(|p| p[0] != p[1]).count(),
         1,
@@ -115,7 +112,7 @@ parked: 24 h
 #[test]
 fn days_until_it_will_not_crank() {
     // Own calculation of the same equations outside the project: the lowest charge with which it starts is 0.48149 at
-    // 0 °C, 51.395 days from full; 0.48 and 0.65 at 0 and -18 °C, 51 and 35 days. At 25 °C the floor of the equations is
+    // 0 °C, 51.395 days from full; 0.48 and 0.65 at 0 and -18 °C (there with 7.2 V), 51 and 35 days. At 25 °C the floor of the equations is
     // .05 and is held at the least charge trusted, 0.2, so that the 90 days become fewer.
     let at = |air: f64| checked(&made(&swap(SHED, "air: 0 °C", &format!("air: {air} °C")))).check;
     let cold = at(0.0);
@@ -131,7 +128,14 @@ fn days_until_it_will_not_crank() {
         (storage.days_to_reserve.unwrap().0 - 51.395).abs() < 1e-3,
         "{storage:?}"
     );
-    let colder = at(-18.0);
+    // The outside figure at -18 °C is for a starter that works with 7.2 V.
+    let colder = swap(SHED, "air: 0 °C", "air: -18 °C");
+    let colder = swap(
+        &colder,
+        "cable: 4 mohm",
+        "cable: 4 mohm, least_volts: 7.2 V",
+    );
+    let colder = checked(&made(&colder)).check;
     assert!(
         (colder.reserve_soc.unwrap().0 - 0.65).abs() < 0.005,
         "{:?}",

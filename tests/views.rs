@@ -66,6 +66,24 @@ fn the_verdict_stands_once() {
     );
 }
 
+/// A lighting winding without a battery, with nothing that states its volts: no praise, with or
+/// without warnings.
+#[test]
+fn what_is_not_judged_is_not_praised() {
+    let mut answer = sample::keeps_up("lamps");
+    answer.judged = false;
+    answer.sentence = "Not judged: nothing states its volts.".to_owned();
+    let verdict = view::check::verdict(&answer);
+    assert_eq!(
+        (
+            verdict.tone,
+            verdict.lead.as_str(),
+            verdict.sentence.as_str()
+        ),
+        (Tone::Plain, "Not judged", "nothing states its volts.")
+    );
+}
+
 #[test]
 fn parts_come_in_their_order() {
     let written = short(&view::check(

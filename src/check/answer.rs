@@ -68,6 +68,9 @@ pub struct Check {
     pub system_v: Volts,
     /// The verdict.
     pub verdict: Verdict,
+    /// Whether anything was judged: false without a battery where nothing states the volts it
+    /// works within. The verdict is then no praise.
+    pub judged: bool,
     /// The verdict in one sentence.
     pub sentence: String,
     /// Shifts that hold the reserve; none when it keeps up without end.

@@ -45,6 +45,7 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
         air_c: build.air.value,
         system_v: Volts(2.0 * f64::from(machine.cells)),
         verdict: ruling.verdict,
+        judged: true,
         sentence,
         shifts_carried: ruling.shifts_carried,
         lacks_ah: ruling.lacks,

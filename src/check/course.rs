@@ -82,7 +82,7 @@ fn turns(build: &Build, machine: &Machine, charge: Charge, attempts: u32) -> boo
             ..starter.asks()
         };
         let cranked = machine.battery.crank(charge, &asked, build.air.value);
-        cranked.starter >= asked.least_at(build.air.value, machine.cells)
+        cranked.starter >= asked.least_for(machine.cells)
     })
 }
 

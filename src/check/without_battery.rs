@@ -15,6 +15,7 @@ pub(super) fn check(build: &Build, circuits: &[Circuit]) -> Check {
         air_c: build.air.value,
         system_v: Volts(2.0 * f64::from(build.cells())),
         verdict: ruling.verdict,
+        judged: ruling.tightest.is_some(),
         sentence: ruling.sentence,
         shifts_carried: None,
         lacks_ah: None,

@@ -8,7 +8,8 @@ use crate::quantity::{Fraction, Volts, format};
 /// A build without a battery judged on volts.
 #[derive(Clone, Debug)]
 pub struct VoltsVerdict {
-    /// [`Verdict::KeepsUp`] or [`Verdict::FallsShort`].
+    /// [`Verdict::KeepsUp`] or [`Verdict::FallsShort`]. The former where nothing is judged, for
+    /// nothing is known to fall short; the sentence then says that nothing is judged.
     pub verdict: Verdict,
     /// The verdict in one sentence, its own words first.
     pub sentence: String,
@@ -115,7 +116,7 @@ fn sentence(build: &Build, tightest: Option<&Tightest>) -> String {
     let unjudged = build.accessories.iter().filter(|a| !a.works.stated).count();
     let unjudged = u32::try_from(unjudged).unwrap_or(u32::MAX);
     let Some(t) = tightest else {
-        return "Keeps up: nothing states the volts it works within, so nothing is judged."
+        return "Not judged: there is no battery to keep charged, and nothing states the volts it works within."
             .to_owned();
     };
     let name = build

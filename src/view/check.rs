@@ -49,10 +49,11 @@ pub(super) fn setting(answer: &Check) -> String {
     )
 }
 
-/// The verdict's words and tone.
+/// The verdict's words and tone; where nothing was judged, plainly that.
 #[must_use]
 pub fn words(answer: &Check) -> (Tone, String) {
     match answer.verdict {
+        _ if !answer.judged => (Tone::Plain, "Not judged".to_owned()),
         Verdict::KeepsUp => (Tone::Good, "Keeps up".to_owned()),
         Verdict::FallsShort => (Tone::Bad, "Falls short".to_owned()),
         Verdict::Carries => {

@@ -73,6 +73,7 @@ pub fn falls_short(name: &str) -> Check {
         air_c: Celsius(2.0),
         system_v: Volts(12.0),
         verdict: Verdict::FallsShort,
+        judged: true,
         sentence:
             "falls short: lacks 6.31 Ah each shift (1.6 A at every running speed); the first \
                    shift takes the battery to 52 % against a reserve of 60 %"
