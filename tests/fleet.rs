@@ -126,11 +126,18 @@ machines:
         3 * 4 + 1 + 3 * 2
     );
     assert!(totals.keeps_up >= 6, "{totals:?}");
-    let heat = totals
-        .groups
-        .iter()
-        .find(|g| g.kit.as_deref() == Some("heat.yaml"))
-        .expect("the kit");
+    kits_are_priced_and_listed(&answer);
+}
+
+/// Six machines take each kit: its parts are counted, its own price or that of its parts summed.
+fn kits_are_priced_and_listed(answer: &Fleet) {
+    let group = |kit: &str| {
+        let mut groups = answer.totals.groups.iter();
+        groups
+            .find(|g| g.kit.as_deref() == Some(kit))
+            .expect("the kit")
+    };
+    let heat = group("heat.yaml");
     assert_eq!(heat.machines, 6);
     let parts: Vec<_> = heat
         .parts
@@ -150,12 +157,8 @@ machines:
         .and_then(|read| read.text.price.clone());
     let expected = beacon.map(|price| (40.0 + 2.0 * price.value.0) * 6.0);
     assert_eq!(heat.kits_cost.map(|m| m.0), expected);
-    let night = totals
-        .groups
-        .iter()
-        .find(|g| g.kit.as_deref() == Some("night-work"))
-        .expect("the kit");
-    assert_eq!(night.kits_cost.map(|m| m.0), Some(260.0 * 6.0)); // the kit's own price
+    let own_price = group("night-work").kits_cost.map(|m| m.0);
+    assert_eq!(own_price, Some(260.0 * 6.0));
 }
 
 #[test]
@@ -246,38 +249,21 @@ last,cart.yaml,1,,
     );
     let place = format!("{}:9:1: ", folder.path().join("bad.yaml").display());
     assert!(error("bad").starts_with(&place), "{}", error("bad"));
-    assert!(
-        error("bad").contains("unknown key `perked`"),
-        "{}",
-        error("bad")
-    );
-    assert!(error("gone").contains("no such file"), "{}", error("gone"));
-    assert!(
-        error("many").starts_with("fleet.csv:5: ") && error("many").contains("`-3`"),
-        "{}",
-        error("many")
-    );
-    assert!(
-        error("kit").contains("did you mean `night-work`"),
-        "{}",
-        error("kit")
-    );
-    assert!(error("set").contains("cart.yaml:9:"), "{}", error("set"));
-    assert!(
-        error("path").starts_with("fleet.csv:8: "),
-        "{}",
-        error("path")
-    );
-    assert!(
-        error("comma").starts_with("fleet.csv:9: ") && error("comma").contains("quotation"),
-        "{}",
-        error("comma")
-    );
-    assert!(
-        error("nothing").contains("no `build`"),
-        "{}",
-        error("nothing")
-    );
+    let told = [
+        ("bad", "unknown key `perked`"),
+        ("gone", "no such file"),
+        ("many", "fleet.csv:5: "),
+        ("many", "`-3`"),
+        ("kit", "did you mean `night-work`"),
+        ("set", "cart.yaml:9:"),
+        ("path", "fleet.csv:8: "),
+        ("comma", "fleet.csv:9: "),
+        ("comma", "quotation"),
+        ("nothing", "no `build`"),
+    ];
+    for (machine, words) in told {
+        assert!(error(machine).contains(words), "{}", error(machine));
+    }
     assert_eq!(
         (
             answer.totals.rows,

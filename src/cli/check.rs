@@ -44,16 +44,13 @@ pub fn run(args: &CheckArgs, common: &Common) -> anyhow::Result<u8> {
     let (last, verdict) = match &args.with {
         None => {
             let verdict = before.check.verdict;
-            output::write(
-                common,
-                || {
-                    addressed(view::check(
-                        &before.check,
-                        &options(common, &before.course()),
-                    ))
-                },
-                &before.check,
-            )?;
+            let report = || {
+                addressed(view::check(
+                    &before.check,
+                    &options(common, &before.course()),
+                ))
+            };
+            output::write(common, report, &before.check)?;
             (before, verdict)
         }
         Some(kit) => {
