@@ -112,11 +112,11 @@ fn depth_and_aliases_have_their_limits() {
         ),
         (
             bomb(2),
-            "more than 100000 values, aliases counted at each use",
+            "more than 60000 values, aliases counted at each use",
         ),
         (
             bomb(50),
-            "more than 100000 values, aliases counted at each use",
+            "more than 60000 values, aliases counted at each use",
         ),
     ];
     for (text, said) in inputs {

@@ -39,7 +39,7 @@ impl Cuts {
     #[must_use]
     pub fn class(&self, limit: Option<Volts>) -> usize {
         limit
-            .and_then(|v| self.limits.iter().position(|l| *l == v.0))
+            .and_then(|v| self.limits.binary_search_by(|l| l.total_cmp(&v.0)).ok())
             .map_or(0, |k| k + 1)
     }
 

@@ -5,11 +5,12 @@ use super::first_shift::FirstShift;
 use super::ruling::Ruling;
 use super::{rundown, storage};
 use crate::battery::{Charge, FREEZING_MARGIN};
-use crate::build::{Build, State};
+use crate::build::{Accessory, Build, State};
 use crate::circuit::{Extreme, lamp_findings, range_findings};
 use crate::ledger::{Machine, connect};
 use crate::quantity::format::{duration, percent, temperature, text};
 use crate::quantity::{AmpHours, Amps, Days, Fraction, Hours, Volts};
+use std::collections::BTreeMap;
 
 /// Volts a cell above which a running battery is overcharged, and above which a regulator must
 /// have failed; and below which it is not being charged. Common practice, no source.
@@ -117,47 +118,25 @@ fn overcharge(seen: &Seen<'_>) -> Vec<Finding> {
     all
 }
 
-/// Bus volts and surplus with each cycling load off in turn, or all of them: the highest, and
-/// what is off.
+/// Bus volts and surplus with all loads of a running state off, and what is off.
+///
+/// No load off alone, nor any few of them, lets the bus rise further: a load only ever draws. So
+/// one operating point answers for every choice, however many loads there are.
 fn lightest(seen: &Seen<'_>, state: State) -> Option<(Volts, Amps, String)> {
-    let cycles = |share: Fraction| share > Fraction::ZERO;
-    let on: Vec<usize> = (0..seen.build.accessories.len())
-        .filter(|k| {
-            let accessory = &seen.build.accessories[*k];
-            accessory.circuit.is_none() && cycles(accessory.duty.share(state))
-        })
-        .collect();
-    let without = |off: &[usize]| {
-        let mut build = seen.build.clone();
-        for k in off {
-            let State::Running(speed) = state else {
-                continue;
-            };
-            if let Some(duty) = build.accessories[*k].duty.running.get_mut(speed) {
-                duty.value = Fraction::ZERO;
-            }
-        }
-        let flow = connect(&build, state, None).flow(
-            &seen.machine.climate,
-            Charge::FULL,
-            seen.machine.cells,
-        );
-        (flow.bus, flow.battery)
+    let mut on = seen.build.accessories.iter().filter(|accessory| {
+        accessory.circuit.is_none() && accessory.duty.share(state) > Fraction::ZERO
+    });
+    let off = match (on.next()?, on.next()) {
+        (only, None) => only.name.clone(),
+        _ => "all of them".to_owned(),
     };
-    let mut cases: Vec<(Vec<usize>, String)> = on
-        .iter()
-        .map(|k| (vec![*k], seen.build.accessories[*k].name.clone()))
-        .collect();
-    if on.len() > 1 {
-        cases.push((on, "all of them".to_owned()));
-    }
-    cases
-        .into_iter()
-        .map(|(off, name)| {
-            let (volts, surplus) = without(&off);
-            (volts, surplus, name)
-        })
-        .max_by(|a, b| a.0.0.total_cmp(&b.0.0))
+    let bare = Build {
+        accessories: Vec::new(),
+        ..seen.build.clone()
+    };
+    let flow =
+        connect(&bare, state, None).flow(&seen.machine.climate, Charge::FULL, seen.machine.cells);
+    Some((flow.bus, flow.battery, off))
 }
 
 fn not_charging(seen: &Seen<'_>) -> Vec<Finding> {
@@ -181,8 +160,10 @@ fn not_charging(seen: &Seen<'_>) -> Vec<Finding> {
 /// all on at once that may be.
 fn accessories(seen: &Seen<'_>) -> Vec<Finding> {
     let mut all = Vec::new();
+    let built = seen.build.accessories.iter().rev();
+    let named: BTreeMap<&str, &Accessory> = built.map(|a| (a.name.as_str(), a)).collect();
     for row in seen.accessories {
-        let Some(accessory) = seen.build.accessories.iter().find(|a| a.name == row.name) else {
+        let Some(accessory) = named.get(row.name.as_str()) else {
             continue;
         };
         let worst = row.volts.0.iter().map(|(state, volts)| {

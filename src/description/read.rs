@@ -45,7 +45,7 @@ pub fn read_set(
         Some(description) if problems.is_empty() => Ok((description, source)),
         // with more wrong than is shown, no more is looked for
         partial => {
-            let partial = partial.filter(|_| problems.left_out() == 0);
+            let partial = partial.filter(|_| !problems.more());
             Err(Refusal::new(source, problems).with_partial(partial))
         }
     }
@@ -197,7 +197,7 @@ fn lowered<R: DeserializeOwned, T>(
     lower: impl FnOnce(&mut Lower<'_>, &Map<R>) -> Option<T>,
 ) -> Outcome<T> {
     let mut value = None;
-    if problems.left_out() == 0 {
+    if !problems.more() {
         match serde_yaml::from_str(&source.text) {
             Ok(root) => {
                 let mut low = Lower::new(&source.text, &source.places);

@@ -15,7 +15,7 @@ use std::ops::Range;
 /// Work and memory are bounded by the text's length; nothing recurses.
 ///
 /// # Errors
-/// Not YAML, a second document, `<<`, keys that are not text, too deep, too many values, an alias loop: all problems up to there.
+/// Not YAML, a second document, `<<`, keys that are not text, too deep, too many values, an alias loop: all problems up to there. And more problems than are kept.
 pub(super) fn scan(text: &str) -> Result<(Places, Problems), Problems> {
     let mut scan = Scan::new(text);
     for event in Parser::new_from_str(text) {
@@ -25,6 +25,9 @@ pub(super) fn scan(text: &str) -> Result<(Places, Problems), Problems> {
         };
         if let Err(problem) = step {
             scan.problems.push(*problem);
+            return Err(scan.problems);
+        }
+        if scan.problems.more() {
             return Err(scan.problems);
         }
     }

@@ -92,6 +92,7 @@ pub fn one_line(refusal: &Refusal) -> String {
     let help = help.map_or(String::new(), |help| format!(" ({help})"));
     let more = match problems.len() - 1 {
         0 => String::new(),
+        n if problems.more() => format!("; and more than {n} more"),
         n => format!("; and {n} more"),
     };
     let text = format!("{}{place}: {}{help}{more}", source.name, first.kind);

@@ -8,7 +8,8 @@ use crate::quantity::Fraction;
 
 /// What is always on in a state, by class of lower limit, and what cycles in it.
 ///
-/// `active` are accessories on the bus with some duty in the state, with their index in the build.
+/// `active` are accessories on the bus with some duty in the state, with their index in the build,
+/// in its order.
 pub(super) fn cyclers(
     active: &[(usize, &Accessory)],
     state: State,
@@ -30,9 +31,9 @@ pub(super) fn cyclers(
             continue;
         }
         let mut members = vec![member(accessory, state, cuts)];
-        for (j, (other, companion)) in active.iter().enumerate().skip(k + 1) {
-            let linked = accessory.together.contains(other) || accessory.apart.contains(other);
-            if linked && companion.duty.share(state) < Fraction::ONE {
+        for j in companions(active, k) {
+            let (_, companion) = active[j];
+            if companion.duty.share(state) < Fraction::ONE {
                 done[j] = true;
                 members.push(member(companion, state, cuts));
             }
@@ -44,6 +45,19 @@ pub(super) fn cyclers(
         });
     }
     (steady, cycling)
+}
+
+/// Those after one that its group names, in the order of the build.
+fn companions(active: &[(usize, &Accessory)], k: usize) -> Vec<usize> {
+    let (_, accessory) = active[k];
+    let named = accessory.together.iter().chain(&accessory.apart);
+    let mut found: Vec<usize> = named
+        .filter_map(|other| active.binary_search_by_key(other, |(index, _)| *index).ok())
+        .filter(|j| *j > k)
+        .collect();
+    found.sort_unstable();
+    found.dedup();
+    found
 }
 
 fn sum_of(accessory: &Accessory) -> LoadSum {

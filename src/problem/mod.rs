@@ -177,32 +177,27 @@ impl Problem {
     }
 }
 
-/// Most problems that are kept of one file; the rest are counted.
+/// Most problems that are kept of one file; of further ones is told only that there are some.
 pub const MOST_KEPT: usize = 50;
 
 /// All that is wrong with one input.
 #[derive(Clone, Debug, Default, PartialEq)]
 pub struct Problems {
     list: Vec<Problem>,
-    left_out: usize,
+    more: bool,
 }
 
 impl Problems {
-    /// Adds one; beyond [`MOST_KEPT`] it is only counted.
+    /// Adds one; beyond [`MOST_KEPT`] it is only noted that there are more.
     pub fn push(&mut self, problem: Problem) {
-        if self.list.contains(&problem) {
+        if self.more || self.list.contains(&problem) {
             return;
         }
         if self.list.len() < MOST_KEPT {
             self.list.push(problem);
         } else {
-            self.left_out += 1;
+            self.more = true;
         }
-    }
-
-    /// Counts further ones that are not kept.
-    pub(crate) fn leave_out(&mut self, count: usize) {
-        self.left_out += count;
     }
 
     /// Adds all of another list.
@@ -210,7 +205,7 @@ impl Problems {
         for problem in other.list {
             self.push(problem);
         }
-        self.left_out += other.left_out;
+        self.more |= other.more;
     }
 
     /// Whether nothing is wrong.
@@ -224,16 +219,16 @@ impl Problems {
         self.list.iter()
     }
 
-    /// How many were only counted.
+    /// Whether there are more than are kept: no more need be looked for.
     #[must_use]
-    pub fn left_out(&self) -> usize {
-        self.left_out
+    pub fn more(&self) -> bool {
+        self.more
     }
 
-    /// How many there are, those only counted included.
+    /// How many are kept.
     #[must_use]
     pub fn len(&self) -> usize {
-        self.list.len() + self.left_out
+        self.list.len()
     }
 
     /// In the order of the file.
@@ -247,7 +242,7 @@ impl From<Problem> for Problems {
     fn from(problem: Problem) -> Self {
         Problems {
             list: vec![problem],
-            left_out: 0,
+            more: false,
         }
     }
 }

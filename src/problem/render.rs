@@ -1,6 +1,6 @@
 //! Problems drawn on the lines of their file.
 
-use super::{Part, Problem, ProblemKind, Problems, SenseProblem, TextProblem};
+use super::{MOST_KEPT, Part, Problem, ProblemKind, Problems, SenseProblem, TextProblem};
 use crate::description::places::Places;
 use annotate_snippets::{Annotation, AnnotationKind, Group, Level, Origin, Renderer, Snippet};
 use std::ops::Range;
@@ -173,12 +173,11 @@ pub fn render(source: &Source, problems: &Problems, colour: bool) -> String {
             drawn.push(once);
         }
     }
-    let count = drawn.len() + problems.left_out();
-    if problems.left_out() > 0 {
+    let count = drawn.len();
+    if problems.more() {
         out.push_str(&format!(
-            "{count} problems in {}, the first {} shown\n",
-            source.name,
-            drawn.len()
+            "more than {MOST_KEPT} problems in {}, {count} shown\n",
+            source.name
         ));
     } else if count > 1 {
         out.push_str(&format!("{count} problems in {}\n", source.name));

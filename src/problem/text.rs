@@ -61,8 +61,8 @@ pub enum TextProblem {
 pub const MOST_BYTES: u64 = 1 << 20;
 /// Most lists and mappings inside each other.
 pub const MOST_DEEP: usize = 64;
-/// Most values of a file.
-pub const MOST_VALUES: u64 = 100_000;
+/// Most values of a file: enough for 5,000 accessories with a duty by state, and few enough to be refused at once.
+pub const MOST_VALUES: u64 = 60_000;
 
 impl fmt::Display for TextProblem {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {

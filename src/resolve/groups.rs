@@ -7,7 +7,9 @@ use super::Fault;
 use super::context::Context;
 use crate::build::{Accessory, Duty, Speed, State};
 use crate::description::{AccessoryText, Written};
+use crate::problem::MOST_KEPT;
 use crate::quantity::Fraction;
+use std::collections::BTreeMap;
 
 /// Rounding that a sum of shares may show beyond the whole.
 const ROUNDING: f64 = 1e-9;
@@ -22,6 +24,7 @@ pub(super) fn link(
     let names: Vec<String> = accessories.iter().map(|a| a.name.clone()).collect();
     let together = groups(context, texts, &names, |t| &t.together);
     let apart = groups(context, texts, &names, |t| &t.apart);
+    let (together, apart) = (members(&together), members(&apart));
     for (index, accessory) in accessories.iter_mut().enumerate() {
         accessory.together = others(&together, index);
         accessory.apart = others(&apart, index);
@@ -49,9 +52,12 @@ fn groups(
     list: impl Fn(&AccessoryText) -> &Vec<Written<String>>,
 ) -> Vec<usize> {
     let mut group: Vec<usize> = (0..names.len()).collect();
+    // of a name given twice, the first
+    let numbered = names.iter().enumerate().rev();
+    let places: BTreeMap<&str, usize> = numbered.map(|(i, n)| (n.as_str(), i)).collect();
     for (index, text) in texts.iter().enumerate() {
         for name in list(text) {
-            match names.iter().position(|n| *n == name.value) {
+            match places.get(name.value.as_str()).copied() {
                 Some(other) if other == index => {
                     context.fault(name.path.clone(), Fault::WithItself)
                 }
@@ -63,6 +69,8 @@ fn groups(
                         .filter(|g| **g == high)
                         .for_each(|g| *g = low);
                 }
+                // with more wrong than is shown, no more is told
+                None if context.faults.len() > MOST_KEPT => {}
                 None => context.fault(
                     name.path.clone(),
                     Fault::UnknownName {
@@ -77,12 +85,25 @@ fn groups(
     group
 }
 
-/// The other members of a group.
-fn others(groups: &[usize], index: usize) -> Vec<usize> {
-    let own = groups.get(index);
-    (0..groups.len())
-        .filter(|i| *i != index && groups.get(*i) == own)
-        .collect()
+/// The number of each accessory's group, and the members of each group.
+struct Members<'a> {
+    group: &'a [usize],
+    of: BTreeMap<usize, Vec<usize>>,
+}
+
+fn members(group: &[usize]) -> Members<'_> {
+    let mut of: BTreeMap<usize, Vec<usize>> = BTreeMap::new();
+    for (index, number) in group.iter().enumerate() {
+        of.entry(*number).or_default().push(index);
+    }
+    Members { group, of }
+}
+
+/// The other members of an accessory's group, in the order of the build.
+fn others(members: &Members<'_>, index: usize) -> Vec<usize> {
+    let own = members.group.get(index).and_then(|g| members.of.get(g));
+    let own = own.into_iter().flatten().copied();
+    own.filter(|i| *i != index).collect()
 }
 
 /// Refuses duties that exclude each other and sum to more than the whole time.

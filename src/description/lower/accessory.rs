@@ -38,7 +38,8 @@ impl Lower<'_> {
         at: &str,
     ) -> Vec<AccessoryText> {
         let mut out = Vec::new();
-        for (i, entry) in self.list(node, at).unwrap_or_default().iter().enumerate() {
+        let mut entries = self.list(node, at).unwrap_or_default().iter().enumerate();
+        while let Some((i, entry)) = self.looked_at(&mut entries) {
             let at = path::index(at, i);
             let Some(raw) = self.map(entry, &at) else {
                 continue;
@@ -132,7 +133,8 @@ impl Lower<'_> {
             Node::Absent => None,
             Node::Mapping(names) => {
                 let mut shares = Vec::new();
-                for (state, leaf) in &names.0 {
+                let mut entries = names.0.iter();
+                while let Some((state, leaf)) = self.looked_at(&mut entries) {
                     let path = path::key(&at, state);
                     if let Some(share) = self.quantity_at(path.clone(), leaf, &bounds::DUTY) {
                         shares.push((exact(state.clone(), path), share));
@@ -178,10 +180,12 @@ impl Lower<'_> {
         match node {
             Node::Absent => Vec::new(),
             Node::List(entries) => {
-                let entries = entries.iter().enumerate();
-                entries
-                    .filter_map(|(i, leaf)| self.name_at(path::index(&path, i), leaf))
-                    .collect()
+                let mut entries = entries.iter().enumerate();
+                let mut out = Vec::new();
+                while let Some((i, leaf)) = self.looked_at(&mut entries) {
+                    out.extend(self.name_at(path::index(&path, i), leaf));
+                }
+                out
             }
             single => self.name_at(path, single).into_iter().collect(),
         }

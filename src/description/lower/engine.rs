@@ -80,10 +80,12 @@ impl Lower<'_> {
         if steps.is_empty() {
             self.problem(Problem::value("shift", SenseProblem::EmptyShift));
         }
-        let steps = steps.iter().enumerate();
-        steps
-            .filter_map(|(i, step)| self.step(step, path::index("shift", i)))
-            .collect()
+        let mut steps = steps.iter().enumerate();
+        let mut out = Vec::new();
+        while let Some((i, step)) = self.looked_at(&mut steps) {
+            out.extend(self.step(step, path::index("shift", i)));
+        }
+        out
     }
 
     /// One step: `crank`, or a state and its time.

@@ -3,7 +3,7 @@
 use super::Lower;
 use crate::description::{AccessoryText, DutyText, EngineText, MayText, StepText, Written};
 use crate::problem::{Problem, SenseProblem};
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 
 impl Lower<'_> {
     /// States of steps and duties, names of accessories.
@@ -22,15 +22,20 @@ impl Lower<'_> {
         let speeds = states.clone();
         states.retain(|s| s != "stopped" && s != "crank");
         states.extend(["stopped".to_owned(), "crank".to_owned()]);
-        for step in shift {
+        let mut steps = shift.iter();
+        while let Some(step) = self.looked_at(&mut steps) {
             self.state(&step.state, &states);
         }
-        for accessory in accessories {
+        let mut entries = accessories.iter();
+        while let Some(accessory) = self.looked_at(&mut entries) {
             if let Some(DutyText::ByState { shares, .. }) = &accessory.duty {
                 for (state, _) in shares {
                     self.state(state, &states);
                 }
             }
+        }
+        if self.problems.more() {
+            return;
         }
         let names = self.unique_names(accessories);
         self.company(accessories, &names);
@@ -81,7 +86,9 @@ impl Lower<'_> {
     fn company(&mut self, accessories: &[AccessoryText], names: &[String]) {
         // a part without a name of its own is called by its catalog title, which is not known here
         let all_named = accessories.iter().all(|a| a.name.is_some());
-        for accessory in accessories {
+        let known: BTreeSet<&str> = names.iter().map(String::as_str).collect();
+        let mut entries = accessories.iter();
+        while let Some(accessory) = self.looked_at(&mut entries) {
             let own = accessory
                 .name
                 .as_ref()
@@ -91,13 +98,14 @@ impl Lower<'_> {
                 ("together", &accessory.together),
                 ("apart", &accessory.apart),
             ] {
-                for other in others {
+                let mut others = others.iter();
+                while let Some(other) = self.looked_at(&mut others) {
                     if Some(&other.value) == own {
                         self.problem(Problem::value(
                             other.path.as_str(),
                             SenseProblem::WithItself { key },
                         ));
-                    } else if all_named && !names.contains(&other.value) {
+                    } else if all_named && !known.contains(other.value.as_str()) {
                         self.unknown_accessory(&other.value, Problem::value, &other.path, names);
                     }
                 }

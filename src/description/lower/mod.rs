@@ -50,6 +50,11 @@ impl<'a> Lower<'a> {
         self.problems.push(problem);
     }
 
+    /// Entries of a list or mapping, until more is wrong than is kept.
+    fn looked_at<T>(&self, entries: &mut impl Iterator<Item = T>) -> Option<T> {
+        entries.next().filter(|_| !self.problems.more())
+    }
+
     /// A key that must be there and is not. Where it is misspelt, or has nothing behind it, that has been told.
     fn missing(&mut self, path: &str, key: &'static str, example: &'static str) {
         let misspelt = self
@@ -94,7 +99,8 @@ impl<'a> Lower<'a> {
 
     /// The keys of a mapping; those that are not known are told.
     fn keys<'k, T>(&mut self, keys: &'k Keys<T>, path: &str) -> &'k T {
-        for found in keys.unknown.iter().take(MOST_KEPT) {
+        // one past those that are kept tells that there are more
+        for found in keys.unknown.iter().take(MOST_KEPT + 1) {
             let problem = ShapeProblem::UnknownKey {
                 found: found.clone(),
                 known: keys.known.to_vec(),
@@ -107,8 +113,6 @@ impl<'a> Lower<'a> {
                     .push(meant);
             }
         }
-        self.problems
-            .leave_out(keys.unknown.len().saturating_sub(MOST_KEPT));
         &keys.body
     }
 

@@ -53,7 +53,7 @@ pub(crate) struct Refused;
 #[derive(Clone, Debug)]
 pub(crate) struct Keys<T> {
     /// The known keys.
-    pub(crate) body: T,
+    pub(crate) body: Box<T>,
     /// Keys that are not known.
     pub(crate) unknown: Vec<String>,
     /// The keys that are.
@@ -119,7 +119,7 @@ impl<'de, T: Deserialize<'de>> FromMap<'de> for Keys<T> {
             aside: &mut aside,
         })?;
         Ok(Keys {
-            body,
+            body: Box::new(body),
             unknown: aside.unknown,
             known: aside.known,
         })
