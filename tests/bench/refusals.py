@@ -23,7 +23,7 @@ shift: [{governed: 2 h}]
 
 
 def large():
-    """Name and text of each large file, up to the limits of 1 MiB and 100,000 values; every one is refused."""
+    """Name and text of each large file, up to the limits of 1 MiB and 60,000 values; every one is refused."""
     fill = lambda line: line * ((BYTES - len(GOOD.encode()) - 2000) // len(line.encode()))
     numbered = lambda form, n: ''.join(form.format(k) for k in range(n))
     bomb = 'a0: &a0 [x,x,x,x,x,x,x,x]\n' + ''.join(
@@ -32,16 +32,18 @@ def large():
         'over 1 MiB': '#' * (BYTES + 1),
         'only remarks': '# remark\n' * (BYTES // 9),
         'one long line': GOOD + 'x' * (BYTES - len(GOOD.encode()) - 10),
-        'unknown keys': GOOD + numbered('key{}: 1\n', 49_000),
+        'unknown keys': GOOD + numbered('key{}: 1\n', 29_000),
         'one key many times': GOOD + 'air: 1\n' * 49_000,
         'accessories of nothing': GOOD + 'accessories:\n' + fill('- {}\n'),
-        'accessories, wrong units': GOOD + 'accessories:\n' + numbered('- {{name: a{}, draw: 3 mm}}\n', 19_000),
-        'accessories, one name': GOOD + 'accessories:\n' + '- {name: a, draw: 3 A}\n' * 19_000,
-        'accessories, unknown parts': GOOD + 'accessories:\n' + numbered('- {{part: lamp{}}}\n', 33_000),
-        'accessories, unknown keys': GOOD + 'accessories:\n' + numbered('- {{nom{}: 1}}\n', 33_000),
-        'accessories, unknown states': GOOD + 'accessories:\n' + numbered('- {{name: a{}, draw: 1 A, duty: {{work: 1 %}}}}\n', 10_000),
-        'steps, unknown states': GOOD.replace('{governed: 2 h}', ', '.join('{gov: 1 h}' for _ in range(33_000))),
-        'plain numbers': GOOD + 'accessories: [' + '1,' * 99_000 + '1]\n',
+        'accessories, wrong units': GOOD + 'accessories:\n' + numbered('- {{name: a{}, draw: 3 mm}}\n', 11_500),
+        'accessories, one name': GOOD + 'accessories:\n' + '- {name: a, draw: 3 A}\n' * 11_500,
+        'accessories, unknown parts': GOOD + 'accessories:\n' + numbered('- {{part: lamp{}}}\n', 19_500),
+        'accessories, unknown keys': GOOD + 'accessories:\n' + numbered('- {{nom{}: 1}}\n', 19_500),
+        'accessories, unknown states': GOOD + 'accessories:\n' + numbered('- {{name: a{}, draw: 1 A, duty: {{work: 1 %}}}}\n', 6_500),
+        'accessories, unknown company': GOOD + 'accessories:\n' + numbered('- {{name: a{0}, draw: 1 A, apart: b{0}}}\n', 8_000),
+        'one wrong of many accessories': GOOD + 'accessories:\n' + numbered('- {{name: a{}, draw: 1 A}}\n', 11_500) + '- {name: last, draw: 3 mm}\n',
+        'steps, unknown states': GOOD.replace('{governed: 2 h}', ', '.join('{gov: 1 h}' for _ in range(19_500))),
+        'plain numbers': GOOD + 'accessories: [' + '1,' * 59_000 + '1]\n',
         'brackets': '[' * (BYTES - 1),
         'braces': '{a: ' * (BYTES // 4 - 1),
         'dashes': '- ' * (BYTES // 2 - 1),
@@ -49,8 +51,8 @@ def large():
         'quotes': 'a: "' + 'x\n' * (BYTES // 2 - 10),
         'two documents': GOOD + '---\n' + fill('a: 1\n'),
         'merge keys': GOOD + fill('<<: x\n'),
-        'tags': GOOD + 'accessories:\n' + '- !t x\n' * 99_000,
-        'anchors': GOOD + numbered('k{0}: &a{0} x\n', 49_000),
+        'tags': GOOD + 'accessories:\n' + '- !t x\n' * 59_000,
+        'anchors': GOOD + numbered('k{0}: &a{0} x\n', 29_000),
         'alias bomb': bomb,
         'too many values': GOOD + 'accessories: [' + '1,' * 400_000 + '1]\n',
         'unclosed bracket': GOOD + 'accessories: [' + fill('{name: a, draw: 1 A},\n'),
