@@ -28,14 +28,18 @@ pub fn any_of<S: AsRef<str>>(names: &[S]) -> String {
     }
 }
 
-/// `a, b, c`, plain.
+/// Most names that a message lists.
+const MOST_LISTED: usize = 60;
+
+/// `a, b, c`, plain; of very many the first, and how many more there are.
 #[must_use]
 pub fn list<S: AsRef<str>>(names: &[S]) -> String {
-    names
-        .iter()
-        .map(AsRef::as_ref)
-        .collect::<Vec<_>>()
-        .join(", ")
+    let shown: Vec<&str> = names.iter().take(MOST_LISTED).map(AsRef::as_ref).collect();
+    let shown = shown.join(", ");
+    match names.len().saturating_sub(MOST_LISTED) {
+        0 => shown,
+        more => format!("{shown} and {more} more"),
+    }
 }
 
 #[cfg(test)]
@@ -54,5 +58,7 @@ mod tests {
         assert_eq!(any_of(&["a", "b", "c"]), "`a`, `b` or `c`");
         assert_eq!(any_of(&["a"]), "`a`");
         assert_eq!(list(&["a", "b"]), "a, b");
+        let many = list(&["a"; 8_000]);
+        assert!(many.ends_with("a, a and 7940 more"), "{many}");
     }
 }
