@@ -24,6 +24,7 @@ use ampledger::resolve::resolve;
 use ampledger::root::{RootError, bracketed};
 use builds::{Charging, Draft, Load, draft};
 use proptest::prelude::*;
+use proptest::test_runner::RngSeed;
 use std::path::Path;
 
 /// The build of a text that must be accepted.
@@ -46,15 +47,20 @@ fn finite(answer: &Check, text: &str) {
     assert_eq!(numbers::none_in(&written), None, "{text}\n{written}");
 }
 
-/// Cases of each property: enough to meet every pair of kinds, few enough for every test run. `PROPTEST_CASES` sets
-/// more.
+/// Cases of each property: enough to meet every pair of kinds, few enough for every test run, and the same each time.
+/// `PROPTEST_CASES` sets more, `PROPTEST_RNG_SEED` others.
 fn cases(usual: u32) -> ProptestConfig {
     let cases = std::env::var("PROPTEST_CASES")
         .ok()
         .and_then(|n| n.parse().ok());
+    let config = ProptestConfig::with_cases(cases.unwrap_or(usual));
     ProptestConfig {
         failure_persistence: None,
-        ..ProptestConfig::with_cases(cases.unwrap_or(usual))
+        rng_seed: match config.rng_seed {
+            RngSeed::Random => RngSeed::Fixed(1),
+            chosen => chosen,
+        },
+        ..config
     }
 }
 

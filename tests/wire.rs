@@ -7,6 +7,7 @@ use ampledger::build::{Build, Draw, accessory::Wire as Laid};
 use ampledger::quantity::{Amps, Celsius, Fraction, Metres, Ohms, Volts, Watts};
 use ampledger::wire::{Gauge, Options, Wire, Wires, wires};
 use proptest::prelude::*;
+use proptest::test_runner::RngSeed;
 use wire_bench::*;
 
 /// One random accessory.
@@ -143,7 +144,7 @@ fn holds(row: &Wire, gauge: Gauge, random: &Random) -> Result<(), TestCaseError>
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig { cases: 96, failure_persistence: None, ..ProptestConfig::default() })]
+    #![proptest_config(ProptestConfig { cases: 96, failure_persistence: None, rng_seed: RngSeed::Fixed(1), ..ProptestConfig::default() })]
 
     #[test]
     fn every_answer_holds_all_constraints(random in randoms(), gauge in any::<bool>()) {

@@ -79,24 +79,30 @@ impl Machine {
         })
     }
 
-    /// A current that keeps up from a full battery, raised where the first shifts from a lower
-    /// charge need more; none where no current is enough. (A build that holds itself up at a low
-    /// charge alone, because loads drop out there, has its edge at nought and breaks the reserve.)
+    /// The current at the edge, raised where it does not keep up from the start: where the first shifts from a lower
+    /// charge need more, or the lowest charge lies between two points of the cycle. None where no current is enough.
+    /// (A build that holds itself up at a low charge alone, because loads drop out there, has its edge at nought and
+    /// breaks the reserve.)
     fn enough_from(&self, start: Charge, reserve: Fraction, edge: Amps) -> Option<Amps> {
-        if start.soc >= Fraction::ONE && edge > Amps::ZERO {
-            return Some(edge);
-        }
         let mut machine = self.clone();
         let mut holds = |current: f64| {
             machine.set_extra(Amps(current));
-            machine.outlook(start, reserve).keeps_up()
+            machine.keeps_up(start, reserve)
         };
-        let (mut low, mut high) = (edge.0, edge.0 * (1.0 + FOUND_TO) + CLOSE);
-        while !holds(high) {
+        let mut step = FOUND_TO * edge.0 + CLOSE;
+        let (mut low, mut high) = (edge.0, edge.0 + step);
+        if holds(high) {
+            return Some(if edge > Amps::ZERO { edge } else { Amps(high) });
+        }
+        loop {
+            step *= 4.0;
+            (low, high) = (high, high + step);
+            if holds(high) {
+                break;
+            }
             if high > BEYOND {
                 return None;
             }
-            (low, high) = (high, 2.0 * high + 0.1);
         }
         while high - low > CLOSE.max(FOUND_TO * high) {
             let middle = 0.5 * (low + high);
