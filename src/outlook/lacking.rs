@@ -90,20 +90,21 @@ impl Machine {
             machine.keeps_up(start, reserve)
         };
         let mut step = FOUND_TO * edge.0 + CLOSE;
-        let (mut low, mut high) = (edge.0, edge.0 + step);
+        let mut high = edge.0 + step;
         if holds(high) {
             return Some(if edge > Amps::ZERO { edge } else { Amps(high) });
         }
-        loop {
+        let mut low = loop {
             step *= 4.0;
-            (low, high) = (high, high + step);
+            let below = high;
+            high += step;
             if holds(high) {
-                break;
+                break below;
             }
             if high > BEYOND {
                 return None;
             }
-        }
+        };
         while high - low > CLOSE.max(FOUND_TO * high) {
             let middle = 0.5 * (low + high);
             if holds(middle) {
