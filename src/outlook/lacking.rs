@@ -27,6 +27,9 @@ const CLOSED: f64 = 1e-9;
 /// Width, as a share of the current, to which it is found.
 const FOUND_TO: f64 = 2e-5;
 
+/// Share of full by which a cycle may go under the reserve and count as touching it.
+const TOUCHES: f64 = 1e-7;
+
 /// Width, as a share of the current, within which the edge of a build with constant powers is proved.
 const PROVED: f64 = 4e-3;
 /// The same of a current near nought, A.
@@ -71,8 +74,14 @@ impl Machine {
         if hours <= Hours::ZERO {
             return Lacking::BeyondCharging;
         }
-        let edge = self.edge(reserve, Spread::Everywhere);
-        let current = edge.and_then(|edge| self.enough_from(start, reserve, edge.max(Amps::ZERO)));
+        let current = self
+            .found(reserve, Spread::Everywhere)
+            .and_then(|(edge, touches)| {
+                if touches && start.soc >= Fraction::ONE && edge > Amps::ZERO {
+                    return Some(edge);
+                }
+                self.enough_from(start, reserve, edge.max(Amps::ZERO))
+            });
         current.map_or(Lacking::BeyondCharging, |current| Lacking::Charge {
             charge: current * hours,
             current,
@@ -120,6 +129,11 @@ impl Machine {
     /// None if no current reaches the edge.
     #[must_use]
     pub fn edge(&self, reserve: Fraction, spread: Spread) -> Option<Amps> {
+        self.found(reserve, spread).map(|(edge, _)| edge)
+    }
+
+    /// The edge, and whether it is known to be enough from a full battery.
+    fn found(&self, reserve: Fraction, spread: Spread) -> Option<(Amps, bool)> {
         let mut search = Search {
             machine: self.clone(),
             spread,
@@ -128,10 +142,10 @@ impl Machine {
         };
         let touching = search.touching()?;
         if !self.has_constant_powers() {
-            return Some(Amps(touching));
+            return Some((Amps(touching), search.touches(touching)));
         }
         let least = search.held_up_from_full(touching);
-        Some(Amps(search.proved(least)))
+        Some((Amps(search.proved(least)), true))
     }
 }
 
@@ -155,6 +169,17 @@ impl Search {
     fn gain_touching(&mut self, current: f64) -> f64 {
         self.add(current);
         self.turn.gain(&self.machine, self.reserve).0
+    }
+
+    /// Whether the cycle with a current goes no lower than the reserve, at which it begins.
+    fn touches(&mut self, current: f64) -> bool {
+        self.add(current);
+        let begin = Charge {
+            soc: self.reserve,
+            depletion: self.turn.depletion,
+        };
+        let lowest = self.machine.pass_around(self.turn.from, begin).lowest;
+        self.reserve.0 - lowest.0 <= TOUCHES
     }
 
     /// The current at which the touching cycle closes. A cycle is begun with the depletion that the
