@@ -7,9 +7,12 @@
 mod cases;
 #[path = "pages/parsed.rs"]
 mod parsed;
+#[path = "support/records.rs"]
+mod records;
 
 use cases::{CASES, Case, written};
 use parsed::{attribute, elements, errors, parse, rows, text};
+use records::records;
 use serde_json::Value;
 
 /// Every page.
@@ -197,17 +200,6 @@ fn words(value: &Value) -> String {
         Value::Array(all) => all.iter().map(words).collect::<Vec<_>>().join("; "),
         other => other.as_str().unwrap_or_default().to_owned(),
     }
-}
-
-fn records(written: &str) -> Vec<Vec<String>> {
-    let mut reader = csv::ReaderBuilder::new()
-        .has_headers(false)
-        .flexible(true)
-        .from_reader(written.as_bytes());
-    reader
-        .records()
-        .map(|r| r.expect("a record").iter().map(str::to_owned).collect())
-        .collect()
 }
 
 /// Whether numbers are the same but for the last bit of a conversion.

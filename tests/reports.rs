@@ -7,6 +7,8 @@
 mod answers;
 #[path = "reports/gallery.rs"]
 mod gallery;
+#[path = "support/records.rs"]
+mod records;
 #[path = "reports/sample.rs"]
 mod sample;
 
@@ -14,6 +16,7 @@ use ampledger::quantity::Amps;
 use ampledger::report::{Block, Cell, Column, Report, Table, Tone, csv, html, markdown, text};
 use ampledger::view::{self, Options};
 use gallery::{check_page, gallery, page, reports};
+use records::records;
 use snapbox::{assert_data_eq, file};
 use std::path::Path;
 
@@ -197,18 +200,6 @@ fn csv_holds_no_formula() {
         }
     }
     assert!(written.contains("\n'=SUM(A1:A9) sprayer,"));
-}
-
-/// The records of a CSV text, parsed by the general library.
-fn records(written: &str) -> Vec<Vec<String>> {
-    let mut reader = ::csv::ReaderBuilder::new()
-        .has_headers(false)
-        .flexible(true)
-        .from_reader(written.as_bytes());
-    reader
-        .records()
-        .map(|r| r.expect("a record").iter().map(str::to_owned).collect())
-        .collect()
 }
 
 #[test]

@@ -117,6 +117,13 @@ pub struct Wire {
 }
 
 impl Duty {
+    /// The greatest share of any running state and of standing.
+    #[must_use]
+    pub fn most(&self) -> Fraction {
+        let shares = self.running.iter().chain([&self.stopped]);
+        shares.map(|f| f.value).fold(Fraction::ZERO, Fraction::max)
+    }
+
     /// The share in a state; none while parked.
     #[must_use]
     pub fn share(&self, state: State) -> Fraction {

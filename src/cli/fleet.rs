@@ -6,7 +6,6 @@ use super::{DOES_NOT, KEEPS_UP, WRONG, input, output};
 use ampledger::check::FORMAT;
 use ampledger::description::{bytes_of, bytes_within, read_fleet};
 use ampledger::fleet::{Fleet, MOST_BYTES, Plan, Row, Totals, judge_all, read_sheet};
-use ampledger::remedy::{Prices, read_prices};
 use ampledger::report::csv::harmless;
 use ampledger::view;
 use anyhow::Context;
@@ -20,10 +19,7 @@ use std::path::Path;
 pub fn run(args: &FleetArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
     let plan = plan(&args.fleet)?.with_kits(&args.kit);
-    let prices = match &args.prices {
-        Some(path) => read_prices(path)?,
-        None => Prices::default(),
-    };
+    let prices = input::prices(args.prices.as_ref())?;
     let mend = (!args.no_remedy).then_some(&prices);
     let progress = Progress::new(plan.entries.len() as u64, "Judging builds");
     let judge = |emit: &mut dyn FnMut(Row) -> anyhow::Result<()>| {

@@ -4,14 +4,15 @@ use super::args::{BuildArgs, Common};
 use ampledger::build::Build;
 use ampledger::catalog::Catalogs;
 use ampledger::description::set::Assignment;
-use ampledger::description::{Description, Written, bytes_of, read_file, read_set};
+use ampledger::description::{Description, bytes_of, read_file, read_set};
 use ampledger::problem::{Problem, Refusal, Source};
 use ampledger::quantity::parse::parse;
 use ampledger::quantity::{Celsius, Fraction};
+use ampledger::remedy::{Asked, Prices, read_prices};
 use ampledger::resolve;
 use anyhow::{Context, anyhow};
 use std::io::Read;
-use std::path::Path;
+use std::path::{Path, PathBuf};
 
 /// A build as read, kept so that more can be made of it.
 pub struct Opened {
@@ -21,6 +22,18 @@ pub struct Opened {
     pub source: Source,
     /// The build.
     pub build: Build,
+    /// Accessories that stand in the file; those after them came with a kit.
+    own: usize,
+}
+
+impl Opened {
+    /// What remedies and sizes are asked of.
+    pub fn asked<'a>(&'a self, catalogs: &'a Catalogs) -> Asked<'a> {
+        Asked {
+            own: self.own,
+            ..Asked::new(&self.description, &self.build, catalogs)
+        }
+    }
 }
 
 /// The catalogs: the user's own folder first, where one is given.
@@ -50,25 +63,22 @@ pub fn build(file: &str, args: &BuildArgs, catalogs: &Catalogs) -> anyhow::Resul
     let (mut description, source) =
         describe(file, &assignments).map_err(|refusal| whole(refusal, catalogs))?;
     if let Some(text) = &args.air {
-        description.air = Some(Written {
-            value: value::<Celsius>("--air", text)?,
-            tolerance: None,
-            path: "air".to_owned(),
-        });
+        description.set_air(value::<Celsius>("--air", text)?);
     }
     let build = resolved(&description, &source, args, catalogs)?;
     Ok(Opened {
+        own: description.accessories.len(),
         description,
         source,
         build,
     })
 }
 
-/// Resolves a description, with air and start as the arguments have them.
+/// Resolves a description, with the start as the arguments have it.
 ///
 /// # Errors
 /// [`Refusal`]; arguments that are no values.
-pub fn resolved(
+fn resolved(
     description: &Description,
     source: &Source,
     args: &BuildArgs,
@@ -76,9 +86,6 @@ pub fn resolved(
 ) -> anyhow::Result<Build> {
     let mut build = resolve::resolve(description, catalogs)
         .map_err(|problems| Refusal::new(source.clone(), problems))?;
-    if let Some(text) = &args.air {
-        build = build.in_air(value::<Celsius>("--air", text)?);
-    }
     if let Some(text) = &args.start {
         let charge = value::<Fraction>("--start", text)?;
         if !(0.0..=1.0).contains(&charge.0) {
@@ -144,7 +151,36 @@ pub fn with_kit(
         description,
         source: opened.source.clone(),
         build,
+        own: opened.own,
     })
+}
+
+/// The build of a file, with a kit's accessories added where one is named.
+///
+/// # Errors
+/// Those of [`build`] and [`with_kit`].
+pub fn kitted(
+    file: &str,
+    kit: Option<&String>,
+    args: &BuildArgs,
+    catalogs: &Catalogs,
+) -> anyhow::Result<Opened> {
+    let opened = build(file, args, catalogs)?;
+    match kit {
+        Some(kit) => with_kit(&opened, kit, args, catalogs),
+        None => Ok(opened),
+    }
+}
+
+/// The user's price list; without one, the catalogs' prices.
+///
+/// # Errors
+/// [`Refusal`]: the list is not understood.
+pub fn prices(list: Option<&PathBuf>) -> anyhow::Result<Prices> {
+    match list {
+        Some(path) => Ok(read_prices(path)?),
+        None => Ok(Prices::default()),
+    }
 }
 
 fn describe(file: &str, assignments: &[Assignment]) -> anyhow::Result<(Description, Source)> {

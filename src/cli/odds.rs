@@ -19,10 +19,7 @@ use std::path::Path;
 /// The build has no answer; a file cannot be written.
 pub fn run(args: &OddsArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
-    let mut opened = input::build(&args.build, &args.changes, &catalogs)?;
-    if let Some(kit) = &args.with {
-        opened = input::with_kit(&opened, kit, &args.changes, &catalogs)?;
-    }
+    let opened = input::kitted(&args.build, args.with.as_ref(), &args.changes, &catalogs)?;
     let air = match &args.changes.air {
         Some(text) => Some(input::value::<Celsius>("--air", text)?),
         None => None,

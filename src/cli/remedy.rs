@@ -4,7 +4,7 @@ use super::args::Common;
 use super::args::mend::RemedyArgs;
 use super::progress::Progress;
 use super::{DOES_NOT, KEEPS_UP, input, output};
-use ampledger::remedy::{Asked, Prices, read_prices, remedy};
+use ampledger::remedy::remedy;
 use ampledger::view;
 use anyhow::Context;
 
@@ -15,19 +15,14 @@ use anyhow::Context;
 /// The build has no answer; the price list does not read.
 pub fn run(args: &RemedyArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
-    let mut opened = input::build(&args.file, &args.build, &catalogs)?;
-    let own = opened.description.accessories.len();
-    if let Some(kit) = &args.with {
-        opened = input::with_kit(&opened, kit, &args.build, &catalogs)?;
-    }
-    let prices = match &args.prices {
-        Some(path) => read_prices(path)?,
-        None => Prices::default(),
-    };
-    let asked = Asked {
-        own,
-        ..Asked::new(&opened.description, &opened.build, &catalogs)
-    };
+    let opened = input::kitted(
+        &args.of.file,
+        args.of.with.as_ref(),
+        &args.of.build,
+        &catalogs,
+    )?;
+    let prices = input::prices(args.prices.as_ref())?;
+    let asked = opened.asked(&catalogs);
     let progress = Progress::new(1, "combinations");
     let answer = remedy(&asked, &prices, &mut |done, all| {
         progress.reached(done, all);

@@ -5,12 +5,11 @@ use super::check::{PAGE_SHIFTS, answer, code};
 use super::input::{self, Opened};
 use super::{output, wire};
 use ampledger::build::Build;
-use ampledger::catalog::Catalogs;
 use ampledger::check::answer::Check;
 use ampledger::check::season::{Range, Season, season};
 use ampledger::check::{SolveError, Wanted};
 use ampledger::curve::{Curve, curve};
-use ampledger::remedy::{Asked, Prices, Remedy, read_prices, remedy};
+use ampledger::remedy::{Prices, Remedy, remedy};
 use ampledger::view::{self, quote};
 use ampledger::wire::{Options, Wires, wires};
 use anyhow::Context;
@@ -36,10 +35,7 @@ struct Answers<'a> {
 pub fn run(args: &SheetArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
     let opened = input::build(&args.file, &args.build, &catalogs)?;
-    let prices = match &args.prices {
-        Some(path) => read_prices(path)?,
-        None => Prices::default(),
-    };
+    let prices = input::prices(args.prices.as_ref())?;
     let wanted = Wanted {
         trace: true,
         shifts: PAGE_SHIFTS,
@@ -57,9 +53,8 @@ pub fn run(args: &SheetArgs, common: &Common) -> anyhow::Result<u8> {
     let to_be = kitted.as_ref().unwrap_or(&opened);
     let shown = after.as_ref().unwrap_or(&before);
     let named = || opened.source.name.clone();
-    let own = opened.description.accessories.len();
-    let mended =
-        where_there_is_a_battery(remedies(to_be, own, &prices, &catalogs)).with_context(named)?;
+    let found = remedy(&to_be.asked(&catalogs), &prices, &mut |_, _| {});
+    let mended = where_there_is_a_battery(found).with_context(named)?;
     let year =
         where_there_is_a_battery(season(&to_be.build, Range::default())).with_context(named)?;
     let gauge = wire::gauge(args.gauge);
@@ -92,20 +87,6 @@ pub fn run(args: &SheetArgs, common: &Common) -> anyhow::Result<u8> {
     };
     output::write_as(common, format(common), report, &answers)?;
     Ok(code(shown.check.verdict))
-}
-
-/// Ways to make a build keep up; `own` of its accessories stand in its file.
-fn remedies(
-    opened: &Opened,
-    own: usize,
-    prices: &Prices,
-    catalogs: &Catalogs,
-) -> Result<Remedy, SolveError> {
-    let asked = Asked {
-        own,
-        ..Asked::new(&opened.description, &opened.build, catalogs)
-    };
-    remedy(&asked, prices, &mut |_, _| {})
 }
 
 /// What is asked of builds with a battery alone: nothing of one without.

@@ -5,7 +5,6 @@ use super::args::{Common, Format};
 use super::progress::Progress;
 use super::{DOES_NOT, KEEPS_UP, input, output};
 use ampledger::quantity::Fraction;
-use ampledger::remedy::Asked;
 use ampledger::size::{self, Share};
 use ampledger::view;
 use anyhow::{Context, bail};
@@ -16,15 +15,13 @@ use anyhow::{Context, bail};
 /// The build has no answer.
 pub fn run(args: &SizeArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
-    let mut opened = input::build(&args.file, &args.build, &catalogs)?;
-    let own = opened.description.accessories.len();
-    if let Some(kit) = &args.with {
-        opened = input::with_kit(&opened, kit, &args.build, &catalogs)?;
-    }
-    let asked = Asked {
-        own,
-        ..Asked::new(&opened.description, &opened.build, &catalogs)
-    };
+    let opened = input::kitted(
+        &args.of.file,
+        args.of.with.as_ref(),
+        &args.of.build,
+        &catalogs,
+    )?;
+    let asked = opened.asked(&catalogs);
     let share = share(args)?;
     let progress = Progress::new(1, "sizes");
     let answer = size::size(&asked, share, &mut |done, all| {

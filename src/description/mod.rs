@@ -44,6 +44,18 @@ pub struct Written<T> {
     pub path: String,
 }
 
+impl<T> Written<T> {
+    /// A value without a tolerance.
+    #[must_use]
+    pub fn exact(value: T, path: impl Into<String>) -> Written<T> {
+        Written {
+            value,
+            tolerance: None,
+            path: path.into(),
+        }
+    }
+}
+
 /// A whole build file.
 #[derive(Clone, Debug)]
 pub struct Description {
@@ -71,6 +83,13 @@ pub struct Description {
     pub may: Option<MayText>,
     /// How wires run unless an accessory says otherwise.
     pub wiring: WiringText,
+}
+
+impl Description {
+    /// Puts the machine in other air, as if the file said so.
+    pub fn set_air(&mut self, air: Celsius) {
+        self.air = Some(Written::exact(air, "air"));
+    }
 }
 
 /// `engine:`.

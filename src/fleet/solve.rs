@@ -5,7 +5,7 @@ use super::plan::{Entry, Plan};
 use super::row::{Outcome, one_line};
 use crate::catalog::Catalogs;
 use crate::check::{Judged, judge};
-use crate::description::{Written, read_file};
+use crate::description::read_file;
 use crate::problem::Refusal;
 use crate::remedy::{Asked, Prices, first_remedy};
 use crate::resolve::{resolve, with_kit};
@@ -39,12 +39,8 @@ impl Shop<'_> {
         if let Some(kit) = &entry.kit {
             description = with_kit(&description, self.kits.find(kit)?);
         }
-        if let Some(value) = entry.air {
-            description.air = Some(Written {
-                value,
-                tolerance: None,
-                path: "air".to_owned(),
-            });
+        if let Some(air) = entry.air {
+            description.set_air(air);
         }
         let build = resolve(&description, self.catalogs)
             .map_err(|problems| one_line(&Refusal::new(source.clone(), problems)))?;

@@ -119,7 +119,7 @@ impl<'a> Walk<'a> {
         if let Some(value) = self.one(place, stated, law, bounds, &typed) {
             let path = place.path();
             self.put(|| format!("{path}={}", typed(value)));
-            *own = Some(exact(value, path));
+            *own = Some(Written::exact(value, path));
         }
     }
 
@@ -151,7 +151,7 @@ impl<'a> Walk<'a> {
         if let Some(value) = self.one(place, assumed, Law::Uniform, bounds, &T::typed) {
             let path = place.path();
             self.put(|| format!("{path}={}", value.typed()));
-            *own = Some(exact(value, path));
+            *own = Some(Written::exact(value, path));
         }
     }
 
@@ -219,13 +219,4 @@ impl<'a> Walk<'a> {
 pub(super) fn spread<T>(stated: &Written<T>) -> Option<Fraction> {
     let relative = stated.tolerance?.relative;
     (relative > Fraction::ZERO).then_some(relative)
-}
-
-/// A value as if the user had written it.
-pub(super) fn exact<T>(value: T, path: String) -> Written<T> {
-    Written {
-        value,
-        tolerance: None,
-        path,
-    }
 }

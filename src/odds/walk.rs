@@ -1,6 +1,6 @@
 //! Where the values with a tolerance stand in a description: the engine, the shift, the battery.
 
-use super::toleranced::{Place, Walk, exact};
+use super::toleranced::{Place, Walk};
 use super::{walk_accessory, walk_charging};
 use crate::build::Build;
 use crate::catalog::{Catalogs, Parted, Read};
@@ -210,7 +210,7 @@ fn keep<T: super::amount::Amount>(
     if let (None, Some(part)) = (own.as_ref(), part) {
         let path = path::key(place.at, place.key);
         walk.put(|| format!("{path}={}", part.value.typed()));
-        *own = Some(exact(part.value, path));
+        *own = Some(Written::exact(part.value, path));
     }
 }
 

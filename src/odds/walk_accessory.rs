@@ -96,9 +96,5 @@ fn drawn(
 ) -> Option<Written<Fraction>> {
     spread(share)?;
     let value = walk.one(place, share, Law::Normal, &bounds::DUTY, &Amount::typed)?;
-    Some(Written {
-        value,
-        tolerance: None,
-        path: share.path.clone(),
-    })
+    Some(Written::exact(value, share.path.clone()))
 }

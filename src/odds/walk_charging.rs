@@ -2,7 +2,7 @@
 
 use super::amount::{Amount, typed_factor};
 use super::law::Law;
-use super::toleranced::{Place, Toleranced, Walk, exact, spread};
+use super::toleranced::{Place, Toleranced, Walk, spread};
 use super::walk::{Below, Ground, place};
 use crate::build::{Figure, Origin, SourceKind, WindingSource};
 use crate::description::charging::RectifierKind;
@@ -177,7 +177,7 @@ fn curve(walk: &mut Walk, own: &mut Vec<Written<(Amps, Rpm)>>, entry: Entry, pla
     let drawn = |(index, row): (usize, &Written<(Amps, Rpm)>)| {
         let factor = spread(row).map_or(1.0, |r| law.factor(r, share));
         let value = row.value.drawn(factor, &bounds::CURVE_CURRENT);
-        exact(value, path::index(&at, index))
+        Written::exact(value, path::index(&at, index))
     };
     let rows: Vec<_> = rows.iter().enumerate().map(drawn).collect();
     walk.put(|| format!("{at}={}", listed(&rows)));
@@ -212,7 +212,7 @@ fn rectifier(walk: &mut Walk, own: &mut Option<RectifierText>, entry: Entry) {
     walk.put(|| format!("{at}={{kind: {word}, drop: {}}}", volts.typed()));
     *own = Some(RectifierText {
         kind,
-        drop: Some(exact(volts, path::key(&at, "drop"))),
+        drop: Some(Written::exact(volts, path::key(&at, "drop"))),
     });
 }
 

@@ -43,6 +43,24 @@ fn tolerance(current: f64) -> f64 {
     CLOSE.max(FOUND_TO * current.abs())
 }
 
+/// The least current that holds, between one that does not and one that does, to a width that may hang on it.
+fn halved(
+    mut low: f64,
+    mut high: f64,
+    width: impl Fn(f64) -> f64,
+    mut holds: impl FnMut(f64) -> bool,
+) -> f64 {
+    while high - low > width(high) {
+        let middle = 0.5 * (low + high);
+        if holds(middle) {
+            high = middle
+        } else {
+            low = middle
+        }
+    }
+    high
+}
+
 /// What is lacking.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Lacking {
@@ -103,7 +121,7 @@ impl Machine {
         if holds(high) {
             return Some(if edge > Amps::ZERO { edge } else { Amps(high) });
         }
-        let mut low = loop {
+        let low = loop {
             step *= 4.0;
             let below = high;
             high += step;
@@ -114,15 +132,7 @@ impl Machine {
                 return None;
             }
         };
-        while high - low > CLOSE.max(FOUND_TO * high) {
-            let middle = 0.5 * (low + high);
-            if holds(middle) {
-                high = middle
-            } else {
-                low = middle
-            }
-        }
-        Some(Amps(high))
+        Some(Amps(halved(low, high, tolerance, holds)))
     }
 
     /// The constant current on the edge of keeping up: above zero lacking, below zero to spare.
@@ -294,13 +304,8 @@ impl Search {
             }
             (low, high) = (low - 2.0 * (found - low), low);
         }
-        while high < found && high - low > width {
-            let middle = 0.5 * (low + high);
-            if keeps(middle) {
-                high = middle
-            } else {
-                low = middle
-            }
+        if high < found {
+            high = halved(low, high, |_| width, keeps);
         }
         high
     }

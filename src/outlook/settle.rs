@@ -92,13 +92,7 @@ impl Machine {
         let Some(touching) = self.touching(charge, lowest, reserve) else {
             return false;
         };
-        let gain = |soc: f64| {
-            let begin = Charge {
-                soc: Fraction(soc),
-                depletion: charge.depletion,
-            };
-            self.pass_around(0, begin).end.soc.0 - soc
-        };
+        let gain = |soc: f64| self.gain(soc, charge).0;
         let (mut low, mut high) = (touching, charge.soc.0);
         let mut inner = [high - GOLDEN * (high - low), low + GOLDEN * (high - low)];
         let mut gains = inner.map(gain);

@@ -76,18 +76,10 @@ impl What {
     }
 }
 
-fn exact<T>(value: T, path: &str) -> Written<T> {
-    Written {
-        value,
-        tolerance: None,
-        path: path.to_owned(),
-    }
-}
-
 fn speed(description: &mut Description, index: usize, to: Rpm) -> Option<Vec<String>> {
     let (name, rpm) = description.engine.speeds.get_mut(index)?;
     let path = path::key("engine.speeds", name);
-    *rpm = exact(to, &path);
+    *rpm = Written::exact(to, path.as_str());
     Some(vec![format!("{path}={}", precise(to))])
 }
 
@@ -98,20 +90,20 @@ fn duty(description: &mut Description, index: usize, to: Fraction) -> Option<Vec
         let mut set = Vec::new();
         for (state, share) in shares.iter_mut().filter(|(_, share)| share.value > to) {
             let at = path::key(&at, &state.value);
-            *share = exact(to, &at);
+            *share = Written::exact(to, at.as_str());
             set.push(format!("{at}={}", precise(to)));
         }
         return Some(set);
     }
     // One figure for every running state, written or not.
-    accessory.duty = Some(DutyText::Everywhere(exact(to, &at)));
+    accessory.duty = Some(DutyText::Everywhere(Written::exact(to, at.as_str())));
     Some(vec![format!("{at}={}", precise(to))])
 }
 
 fn charger(description: &mut Description, amps: Amps) -> Option<Vec<String>> {
     description.charger = Some(ChargerText {
         path: "charger".to_owned(),
-        amps: exact(amps, "charger.amps"),
+        amps: Written::exact(amps, "charger.amps"),
         holds: None,
         after: None,
         time: None,

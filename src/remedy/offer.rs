@@ -4,7 +4,7 @@ use super::Asked;
 use super::change::{Change, What};
 use super::prices::{CHARGER, Prices};
 use crate::build::{Build, Draw, State};
-use crate::catalog::Kind;
+use crate::catalog::{Entry, Kind};
 use crate::description::{AccessoryText, BatteryText, ChargingText, DrawText, LawName, MayText};
 use crate::quantity::format::text;
 use crate::quantity::{Amps, Fraction, Money, Rpm};
@@ -75,6 +75,23 @@ fn apart(size: f64, now: f64) -> f64 {
     }
 }
 
+/// A catalog part in place of what there is, and the build with it; none where it does not fit.
+fn fitted(
+    asked: &Asked<'_>,
+    entry: &Entry,
+    cost: Option<Money>,
+    what: What,
+) -> Option<(Change, Build)> {
+    let change = Change {
+        words: entry.title.clone(),
+        cost,
+        much: 0.0,
+        what,
+    };
+    let build = change.alone(asked)?;
+    Some((change, build))
+}
+
 /// Another winding or alternator in place of one.
 fn winding_slot(asked: &Asked<'_>, prices: &Prices, index: usize) -> Slot {
     let now = rated(asked.build, index);
@@ -83,14 +100,9 @@ fn winding_slot(asked: &Asked<'_>, prices: &Prices, index: usize) -> Slot {
     let ways = parts
         .filter(|part| has.as_ref() != Some(&part.entry.id))
         .filter_map(|part| {
+            let price = prices.of(&part.entry.id, part.text.price.as_ref().map(|p| p.value));
             let id = part.entry.id.clone();
-            let change = Change {
-                words: part.entry.title.clone(),
-                cost: prices.of(&id, part.text.price.as_ref().map(|p| p.value)),
-                much: 0.0,
-                what: What::Winding { index, id },
-            };
-            let build = change.alone(asked)?;
+            let (change, build) = fitted(asked, &part.entry, price, What::Winding { index, id })?;
             let source = build.sources.get(index)?;
             let feeds = source.circuit.is_none() && !source.braking;
             let much = apart(rated(&build, index).0, now.0);
@@ -110,14 +122,9 @@ fn battery_slot(asked: &Asked<'_>, prices: &Prices) -> Slot {
     let ways = parts
         .filter(|part| now.part.as_ref() != Some(&part.entry.id))
         .filter_map(|part| {
+            let price = prices.of(&part.entry.id, part.text.price.as_ref().map(|p| p.value));
             let id = part.entry.id.clone();
-            let change = Change {
-                words: part.entry.title.clone(),
-                cost: prices.of(&id, part.text.price.as_ref().map(|p| p.value)),
-                much: 0.0,
-                what: What::Battery { id },
-            };
-            let build = change.alone(asked)?;
+            let (change, build) = fitted(asked, &part.entry, price, What::Battery { id })?;
             let same = build.cells() == asked.build.cells();
             let capacity = build.battery?.label.capacity;
             let much = apart(capacity.0, now.label.capacity.0);
@@ -255,12 +262,7 @@ fn usual_duties(build: &Build) -> Vec<Slot> {
 /// One accessory's duty, nowhere above `to`.
 fn duty_slot(build: &Build, index: usize, to: Fraction) -> Option<Slot> {
     let accessory = build.accessories.get(index)?;
-    let shares = accessory
-        .duty
-        .running
-        .iter()
-        .chain([&accessory.duty.stopped]);
-    let most = shares.map(|f| f.value).fold(Fraction::ZERO, Fraction::max);
+    let most = accessory.duty.most();
     (most > to).then(|| Slot {
         ways: vec![Change {
             words: format!("{} on {} of the time at most", accessory.name, text(to)),

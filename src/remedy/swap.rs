@@ -15,11 +15,7 @@ pub(crate) struct Swapped {
 }
 
 fn written(value: &str, path: &str) -> Option<Written<String>> {
-    Some(Written {
-        value: value.to_owned(),
-        tolerance: None,
-        path: path::key(path, "part"),
-    })
+    Some(Written::exact(value.to_owned(), path::key(path, "part")))
 }
 
 /// A catalog winding or alternator in place of an entry of `charging`.

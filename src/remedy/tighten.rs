@@ -74,12 +74,7 @@ fn degrees(asked: &Asked<'_>, change: &Change) -> Option<Vec<Change>> {
         }
         What::Duty { index, to } => {
             let accessory = asked.build.accessories.get(index)?;
-            let shares = accessory
-                .duty
-                .running
-                .iter()
-                .chain([&accessory.duty.stopped]);
-            let most = shares.map(|f| f.value).fold(Fraction::ZERO, Fraction::max);
+            let most = accessory.duty.most();
             let first = (most.percent() / PERCENT).ceil() as i64 - 1;
             let last = (to.percent() / PERCENT).floor() as i64;
             let steps = (last..=first).rev();

@@ -182,17 +182,4 @@ impl Build {
         self.start = charge.clamp(Fraction::ZERO, Fraction::ONE);
         self
     }
-
-    /// The same build in other air (`--air`): stated now, so no longer assumed.
-    #[must_use]
-    pub fn in_air(mut self, air: Celsius) -> Build {
-        self.assumed.retain(|a| a.what != "air temperature");
-        self.air = Figure {
-            value: air,
-            origin: Origin::Stated,
-            tolerance: None,
-            path: "air".to_owned(),
-        };
-        self
-    }
 }

@@ -105,7 +105,7 @@ impl<'a> Crowd<'a> {
         fewer(&draws, most, keeps_up)
     }
 
-    /// A draw that does not keep up with a knob at an amount; where all do, the weakest.
+    /// A draw that does not keep up with a knob at an amount; where all do, the build as stated.
     pub(super) fn failing(&self, knob: &Knob, x: f64) -> Build {
         let at = |draw: &Build| self.turned(draw, knob, x);
         let mut builds = self.draws.iter().map(at);

@@ -1,10 +1,12 @@
 //! What is assumed where nothing is stated, and where each figure is changed.
 
-use crate::support::{BARE, WHOLE, assumed, made, swap, winding};
+use crate::support::{BARE, WHOLE, assumed, made, read, swap, winding};
 use ampledger::battery::Chemistry;
 use ampledger::build::{Origin, State};
+use ampledger::catalog::Catalogs;
 use ampledger::description::charging::RegulatorKind;
 use ampledger::quantity::{Amps, Celsius, Fraction, Hours, Rpm, Volts};
+use ampledger::resolve::resolve;
 use ampledger::source::{Magnets, Rectifier};
 
 #[test]
@@ -183,7 +185,10 @@ fn a_six_volt_system_has_six_volt_defaults() {
 
 #[test]
 fn the_commands_may_set_air_and_start() {
-    let build = made(BARE).in_air(Celsius(-10.0)).starting_at(Fraction(0.8));
+    let mut description = read(BARE);
+    description.set_air(Celsius(-10.0));
+    let build = resolve(&description, &Catalogs::builtin()).expect("complete");
+    let build = build.starting_at(Fraction(0.8));
     assert_eq!(
         (build.air.value, build.start),
         (Celsius(-10.0), Fraction(0.8))

@@ -4,9 +4,9 @@ use super::{BuildArgs, HandOver};
 use clap::Args;
 use std::path::PathBuf;
 
-/// `size`.
+/// A build, with a kit where one is named.
 #[derive(Args, Debug)]
-pub struct SizeArgs {
+pub struct Kitted {
     /// Build file; `-` is standard input
     #[arg(value_name = "BUILD")]
     pub file: String,
@@ -16,6 +16,14 @@ pub struct SizeArgs {
     /// A kit to add first, by its id or file
     #[arg(long, value_name = "KIT")]
     pub with: Option<String>,
+}
+
+/// `size`.
+#[derive(Args, Debug)]
+pub struct SizeArgs {
+    /// The build.
+    #[command(flatten)]
+    pub of: Kitted,
     /// Ask for what keeps up in this share of the builds within the tolerances, `95 %`
     #[arg(long, value_name = "SHARE")]
     pub odds: Option<String>,
@@ -33,15 +41,9 @@ pub struct SizeArgs {
 /// `remedy`.
 #[derive(Args, Debug)]
 pub struct RemedyArgs {
-    /// Build file; `-` is standard input
-    #[arg(value_name = "BUILD")]
-    pub file: String,
-    /// Changes to the build.
+    /// The build.
     #[command(flatten)]
-    pub build: BuildArgs,
-    /// A kit to add first, by its id or file
-    #[arg(long, value_name = "KIT")]
-    pub with: Option<String>,
+    pub of: Kitted,
     /// Your own prices by part id, before those of the catalogs
     #[arg(long, value_name = "FILE.yaml")]
     pub prices: Option<PathBuf>,

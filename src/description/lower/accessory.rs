@@ -1,7 +1,7 @@
 //! `accessories:`.
 
 use super::Lower;
-use super::leaf::{exact, written};
+use super::leaf::written;
 use crate::description::accessory::LoadKind;
 use crate::description::raw::{self, Leaf, List, Map, Named, Node};
 use crate::description::{
@@ -137,7 +137,7 @@ impl Lower<'_> {
                 while let Some((state, leaf)) = self.looked_at(&mut entries) {
                     let path = path::key(&at, state);
                     if let Some(share) = self.quantity_at(path.clone(), leaf, &bounds::DUTY) {
-                        shares.push((exact(state.clone(), path), share));
+                        shares.push((Written::exact(state.clone(), path), share));
                     }
                 }
                 Some(DutyText::ByState { path: at, shares })
@@ -162,7 +162,7 @@ impl Lower<'_> {
             self.problem(Problem::value(path, reversed));
             return None;
         }
-        Some(exact(WorksText { low, high }, path))
+        Some(Written::exact(WorksText { low, high }, path))
     }
 
     fn inrush(&mut self, raw: &raw::Accessory, at: &str) -> Option<Written<InrushText>> {
@@ -171,7 +171,7 @@ impl Lower<'_> {
             self.parsed(at, "inrush", &raw.inrush, wanted, parse::surge)?;
         self.bounded(&path, &text, times, &bounds::INRUSH)?;
         self.bounded(&path, &text, time, &bounds::INRUSH_TIME)?;
-        Some(exact(InrushText { times, time }, path))
+        Some(Written::exact(InrushText { times, time }, path))
     }
 
     /// A name, or a list of names.

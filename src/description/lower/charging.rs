@@ -1,12 +1,12 @@
 //! `charging:`.
 
 use super::Lower;
-use super::leaf::{exact, written};
+use super::leaf::written;
 use crate::description::charging::{RectifierKind, RegulatorKind};
 use crate::description::raw::{self, List, Map, Node};
 use crate::description::{
     AlternatorText, ChargingText, RatedText, ReadingText, RectifierText, RegulatorText,
-    WindingText, path,
+    WindingText, Written, path,
 };
 use crate::problem::{Problem, SenseProblem};
 use crate::quantity::parse::{self, Measured};
@@ -258,7 +258,7 @@ impl Lower<'_> {
                     },
                 ));
             }
-            let mut row = exact(measured.value, path);
+            let mut row = Written::exact(measured.value, path);
             row.tolerance = measured.tolerance;
             rows.push(row);
         }

@@ -1,7 +1,6 @@
 //! `engine:` and `shift:`.
 
 use super::Lower;
-use super::leaf::exact;
 use crate::description::raw::{self, Leaf, List, Map, Named, Node};
 use crate::description::{EngineText, StarterText, StepText, Written, path};
 use crate::problem::{Problem, SenseProblem};
@@ -114,7 +113,7 @@ impl Lower<'_> {
         };
         let step = StepText {
             path: at,
-            state: exact(state.clone(), place),
+            state: Written::exact(state.clone(), place),
             time,
         };
         if crank { Some(step) } else { self.timed(step) }

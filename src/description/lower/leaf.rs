@@ -4,10 +4,10 @@ use super::Lower;
 use crate::description::raw::Node;
 use crate::description::{Written, path};
 use crate::problem::{Part, Problem, ValueProblem};
+use crate::quantity::Fraction;
 use crate::quantity::bounds::Bounds;
 use crate::quantity::parse::{self, Measured, ParseError};
 use crate::quantity::unit::Unit;
-use crate::quantity::{Fraction, Tolerance};
 use std::borrow::Cow;
 
 /// A list of words and what each means.
@@ -175,7 +175,7 @@ impl Lower<'_> {
             ));
             return None;
         }
-        Some(exact(value, path))
+        Some(Written::exact(value, path))
     }
 
     /// One of a few words.
@@ -188,7 +188,7 @@ impl Lower<'_> {
     ) -> Option<Written<T>> {
         let (text, path) = self.single(at, key, node, "a word")?;
         match words.iter().find(|(word, _)| *word == text.trim()) {
-            Some((_, value)) => Some(exact(*value, path)),
+            Some((_, value)) => Some(Written::exact(*value, path)),
             None => {
                 let words = words.iter().map(|(word, _)| *word).collect();
                 let found = text.trim().to_owned();
@@ -238,23 +238,13 @@ impl Lower<'_> {
             self.problem(Problem::value(path, ValueProblem::EmptyName));
             return None;
         }
-        Some(exact(name.to_owned(), path))
+        Some(Written::exact(name.to_owned(), path))
     }
 }
 
 /// A measured value with its path.
 pub(super) fn written<T>(measured: Measured<T>, path: String) -> Written<T> {
     let Measured { value, tolerance } = measured;
-    Written {
-        value,
-        tolerance,
-        path,
-    }
-}
-
-/// A value without a tolerance.
-pub(super) fn exact<T>(value: T, path: String) -> Written<T> {
-    let tolerance: Option<Tolerance> = None;
     Written {
         value,
         tolerance,

@@ -17,10 +17,10 @@ pub(crate) mod words {
     pub(crate) use super::charging::{MAGNETS, RECTIFIERS, REGULATORS};
 }
 
-use super::Description;
 use super::path;
 use super::places::Places;
 use super::raw::{self, Keys, List, Map, Named, Node};
+use super::{Description, Written};
 use crate::problem::words::nearest;
 use crate::problem::{MOST_KEPT, Problem, Problems, Shape, ShapeProblem};
 use std::collections::BTreeMap;
@@ -182,7 +182,7 @@ impl<'a> Lower<'a> {
             .unwrap_or_default();
         self.fit(&engine, &accessories, &shift, may.as_ref());
         // without a name there is a problem, and the description serves only to find more of them
-        let build = build.unwrap_or_else(|| leaf::exact(String::new(), "build".into()));
+        let build = build.unwrap_or_else(|| Written::exact(String::new(), "build"));
         Some(Description {
             build,
             air,
