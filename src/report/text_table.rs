@@ -9,6 +9,7 @@ use comfy_table::{
     Cell as Painted, CellAlignment, Color, ColumnConstraint, ContentArrangement, LineStyle,
     TableStyle, Width,
 };
+use unicode_width::UnicodeWidthStr;
 
 /// Columns between two columns.
 const GAP: usize = 2;
@@ -137,7 +138,7 @@ fn unit_length(column: &Column) -> usize {
 }
 
 fn length(text: &str) -> usize {
-    text.chars().count()
+    text.width()
 }
 
 /// Gives each column its width: natural where all fit, else the widest shrinks first.
@@ -228,11 +229,14 @@ fn painted(table: &Table, row: &Row, index: usize, width: usize, style: &Style) 
             .unwrap_or_default();
         return (strip, cell.tone);
     }
-    (at_hyphens(&shown(cell, style), width), cell.tone)
+    (at_hyphens(shown(cell, style), width), cell.tone)
 }
 
 /// A text whose longest words are broken after a hyphen: ids wrap where they may be read on.
-fn at_hyphens(text: &str, width: usize) -> String {
+fn at_hyphens(text: String, width: usize) -> String {
+    if length(&text) <= width {
+        return text;
+    }
     let broken = |word: &str| -> String {
         let mut lines = vec![String::new()];
         for piece in word.split_inclusive('-') {
@@ -357,6 +361,9 @@ pub(super) fn wrap(text: &str, width: usize) -> Vec<String> {
     let words = text.split_whitespace().collect::<Vec<_>>().join(" ");
     if words.is_empty() {
         return Vec::new();
+    }
+    if length(&words) <= width {
+        return vec![words];
     }
     let style = Style {
         width,

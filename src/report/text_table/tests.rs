@@ -119,8 +119,11 @@ fn words_wrap_and_a_word_without_end_is_cut() {
 #[test]
 fn long_ids_break_after_a_hyphen() {
     assert_eq!(
-        super::at_hyphens("winding-20a-three-phase fits", 16),
+        super::at_hyphens("winding-20a-three-phase fits".to_owned(), 16),
         "winding-20a-\nthree-phase fits"
     );
-    assert_eq!(super::at_hyphens("no-break here", 16), "no-break here");
+    assert_eq!(
+        super::at_hyphens("no-break here".to_owned(), 16),
+        "no-break here"
+    );
 }
