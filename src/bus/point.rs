@@ -184,12 +184,18 @@ impl<'a> Bus<'a> {
         volts
     }
 
-    /// A first guess of the bus volts: the battery's, carrying what the sources at its rest do not.
+    /// A first guess of the bus volts: the battery's, carrying what sources and loads leave it, both
+    /// taken along their tangents at its rest.
     pub fn guess(&self, draw: &impl Drawn) -> f64 {
         let rest = self.terminals.emf().0;
-        let (give, _) = self.supply.give(rest, Side::Below);
-        let (drawn, _) = draw.drawn(rest, self.filaments);
-        self.terminals.main_branch_volts(Amps(give - drawn)).0
+        let (give, give_slope) = self.supply.give(rest, Side::Below);
+        let (drawn, drawn_slope) = draw.drawn(rest, self.filaments);
+        let (spare, slope) = (give - drawn, give_slope - drawn_slope);
+        let carrying = |volts: f64| {
+            let left = Amps(spare + slope * (volts - rest));
+            self.terminals.main_branch_volts(left).0
+        };
+        carrying(carrying(carrying(rest)))
     }
 
     /// The operating point of one draw, whatever switches on the way.
