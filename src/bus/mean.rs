@@ -100,15 +100,18 @@ impl Sums {
 #[must_use]
 pub fn flow(bus: &Bus<'_>, cases: &Coincidences, cuts: &Cuts, climate: &Climate) -> Flow {
     let mut sums = Sums::default();
-    if cuts
-        .highest()
-        .is_some_and(|limit| !bus.holds(&cases.heaviest_total(), limit))
-    {
+    if cuts_may_act(bus, cases, cuts) {
         with_cuts(bus, cases, cuts, climate, &mut sums);
     } else {
         by_region(bus, cases, climate, &mut sums);
     }
     sums.flow()
+}
+
+/// Whether the heaviest case takes the bus under the highest of the lower working limits.
+pub(super) fn cuts_may_act(bus: &Bus<'_>, cases: &Coincidences, cuts: &Cuts) -> bool {
+    cuts.highest()
+        .is_some_and(|limit| !bus.holds(&cases.heaviest_total(), limit))
 }
 
 /// Every case by itself, accessories dropping out below their limits.

@@ -51,6 +51,14 @@ impl Connected {
         mean::flow(&bus, &self.loads, &self.cuts, climate)
     }
 
+    /// Whether the bus goes under a lower working limit when everything is on that may be on at once.
+    #[must_use]
+    pub fn may_drop_out(&self, climate: &Climate, charge: Charge, cells: u32) -> bool {
+        let terminals = climate.at(charge);
+        let bus = Bus::new(&self.supply, &terminals, self.loads.has_filaments(), cells);
+        mean::cuts_may_act(&bus, &self.loads, &self.cuts)
+    }
+
     /// The operating point when everything is on that may be on at once.
     #[must_use]
     pub fn worst(&self, climate: &Climate, charge: Charge, cells: u32) -> Point {

@@ -169,6 +169,21 @@ impl Machine {
             .any(|w| w.runs && w.bus.loads.heaviest_total().has_constant_powers())
     }
 
+    /// Whether an accessory may drop out in a cycle all at one charge, cranking apart, which takes seconds.
+    #[must_use]
+    pub fn may_drop_out(&self, soc: Fraction) -> bool {
+        let mut charge = Charge::rested(soc);
+        let mut legs = self.cycle.iter().filter(|leg| leg.state != State::Crank);
+        legs.any(|leg| {
+            let target = self.flow(leg.wired, charge).depletion;
+            charge.depletion = self
+                .climate
+                .depletion_after(charge.depletion, target, leg.time);
+            let bus = &self.connected[leg.wired].bus;
+            bus.may_drop_out(&self.climate, charge, self.cells)
+        })
+    }
+
     /// Adds a constant current on the bus in every running state, or takes one.
     pub fn set_extra(&mut self, extra: Amps) {
         for wired in self.connected.iter_mut().filter(|w| w.runs) {
@@ -201,9 +216,8 @@ pub fn connect(build: &Build, state: State, charger: Option<&Charger>) -> Connec
         _ => Supply::none(cells),
     };
     let reference = Volts(REFERENCE_CELL_VOLTS * f64::from(cells));
-    let on_bus: Vec<(usize, &Accessory)> = build
-        .accessories
-        .iter()
+    let all = build.accessories.iter().map(|a| &**a);
+    let on_bus: Vec<(usize, &Accessory)> = all
         .enumerate()
         .filter(|(_, a)| a.circuit.is_none())
         .collect();

@@ -25,6 +25,10 @@ const PEAK: f64 = 2e-4;
 const MOST_ROUNDS: u32 = 60;
 /// Most cycles counted one by one towards a break.
 const MOST_CYCLES: u32 = 20_000;
+/// The same where loads that drop out make the charge go up and down: it neither falls slowly nor settles late.
+const MOST_UNSTEADY: u32 = 1000;
+/// Share of full by which a settled cycle may go under the reserve and count as touching it.
+const UNDER: f64 = 1e-7;
 
 /// What repeating the cycle without end comes to.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -56,6 +60,25 @@ enum Approach {
         /// Lowest of the cycle that led to it.
         lowest: Fraction,
     },
+    /// Loads drop out before the charge is down at the reserve, and more of it is left from a low charge than from a
+    /// higher one. Only repetition tells.
+    Unsteady {
+        /// Charge reached.
+        charge: Charge,
+    },
+}
+
+/// A charge at which a cycle ends as it began.
+enum Closed {
+    /// Its cycle holds the reserve.
+    Holds {
+        /// Charge at its beginning.
+        charge: Charge,
+        /// Lowest charge in it.
+        lowest: Fraction,
+    },
+    /// It does not.
+    Under,
 }
 
 impl Outlook {
@@ -72,7 +95,8 @@ impl Machine {
     pub fn outlook(&self, start: Charge, reserve: Fraction) -> Outlook {
         match self.approach(start, reserve) {
             Approach::Decided(outlook) => outlook,
-            Approach::Falls { charge, .. } => self.count(charge, reserve, PLAIN),
+            Approach::Falls { charge, .. } => self.count(charge, reserve, MOST_CYCLES),
+            Approach::Unsteady { charge } => self.count(charge, reserve, MOST_UNSTEADY),
         }
     }
 
@@ -83,6 +107,7 @@ impl Machine {
         match self.approach(start, reserve) {
             Approach::Decided(outlook) => outlook.keeps_up(),
             Approach::Falls { charge, lowest } => self.held_under(charge, lowest, reserve),
+            Approach::Unsteady { charge } => self.count(charge, reserve, MOST_UNSTEADY).keeps_up(),
         }
     }
 
@@ -143,8 +168,14 @@ impl Machine {
             }
             charge = passed.end;
         }
+        if self.may_drop_out(reserve) {
+            return Approach::Unsteady { charge };
+        }
         match self.fixed_point(charge, lowest, reserve, limit(charge, changes)) {
-            Some((charge, lowest)) => Approach::Decided(Outlook::Settles { charge, lowest }),
+            Some(Closed::Holds { charge, lowest }) => {
+                Approach::Decided(Outlook::Settles { charge, lowest })
+            }
+            Some(Closed::Under) => Approach::Unsteady { charge },
             None => Approach::Falls { charge, lowest },
         }
     }
@@ -153,7 +184,8 @@ impl Machine {
     #[must_use]
     pub fn repeat(&self, start: Charge, reserve: Fraction, cycles: u32) -> Outlook {
         let mut charge = start;
-        let mut lowest = start.soc;
+        let mut lowest = [start.soc; 2];
+        let mut before = Fraction(f64::NAN);
         for cycle in 0..cycles {
             let passed = self.pass(charge, reserve);
             if let Some(shift) = passed.broke {
@@ -162,27 +194,34 @@ impl Machine {
                     begins: charge,
                 };
             }
-            let still = (passed.end.soc - charge.soc).abs() < Fraction(1e-12);
+            // As it was one cycle ago, or two, where the charge goes up and down.
+            let as_at = |soc: Fraction| (passed.end.soc - soc).abs() < Fraction(1e-12);
+            let still = as_at(charge.soc) || as_at(before);
+            before = charge.soc;
             charge = passed.end;
-            lowest = passed.lowest;
+            lowest = [lowest[1], passed.lowest];
             if still {
                 break;
             }
         }
-        Outlook::Settles { charge, lowest }
+        Outlook::Settles {
+            charge,
+            lowest: lowest[0].min(lowest[1]),
+        }
     }
 
-    fn count(&self, charge: Charge, reserve: Fraction, before: u32) -> Outlook {
-        match self.repeat(charge, reserve, MOST_CYCLES) {
+    /// Repetition from the charge that the first cycles led to.
+    fn count(&self, charge: Charge, reserve: Fraction, most: u32) -> Outlook {
+        match self.repeat(charge, reserve, most) {
             Outlook::Breaks { shifts, begins } => Outlook::Breaks {
-                shifts: before * self.shifts + shifts,
+                shifts: PLAIN * self.shifts + shifts,
                 begins,
             },
             settled => settled,
         }
     }
 
-    /// A fixed point whose cycle holds the reserve, if one is found.
+    /// A fixed point, and whether its cycle holds the reserve, if one is found.
     ///
     /// `charge` has been reached by repetition, `lowest` is the lowest of the cycle before it.
     /// While the charge falls, a fixed point lies below it if some cycle between here and the
@@ -195,7 +234,7 @@ impl Machine {
         lowest: Fraction,
         reserve: Fraction,
         limit: Option<f64>,
-    ) -> Option<(Charge, Fraction)> {
+    ) -> Option<Closed> {
         let at = |soc: f64| self.gain(soc, charge);
         let (here, passed) = at(charge.soc.0);
         let (low, high) = if here >= 0.0 {
@@ -226,13 +265,16 @@ impl Machine {
             bracketed(gain, low.0, high.0, STILL).ok()?
         };
         let (_, passed) = at(soc);
-        Some((
-            Charge {
+        if passed.lowest.0 < reserve.0 - UNDER {
+            return Some(Closed::Under);
+        }
+        Some(Closed::Holds {
+            charge: Charge {
                 soc: Fraction(soc),
                 ..passed.end
             },
-            passed.lowest.max(reserve),
-        ))
+            lowest: passed.lowest.max(reserve),
+        })
     }
 
     /// What a cycle begun at a charge gains, and how it passed; the depletion is that of `like`.

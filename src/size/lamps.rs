@@ -49,7 +49,7 @@ fn with_led(build: &Build, lamps: &[usize]) -> Build {
     let mut changed = build.clone();
     let low = Volts(1.75 * f64::from(build.cells()));
     for index in lamps {
-        if let Some(accessory) = changed.accessories.get_mut(*index)
+        if let Some(accessory) = changed.accessory_mut(*index)
             && let Some(power) = led_power(accessory)
         {
             accessory.draw.value = Draw::Power(power);
@@ -71,7 +71,7 @@ pub(super) fn led(
     let lamps: Vec<usize> = largest(build)
         .into_iter()
         .map(|(index, _)| index)
-        .filter(|i| build.accessories.get(*i).and_then(led_power).is_some())
+        .filter(|i| build.accessory(*i).and_then(led_power).is_some())
         .collect();
     let mut holds = |lamps: &[usize]| {
         worth.of_led(lamps).0 > NOT_NEARLY * wanted.0 && margin.of(&with_led(build, lamps)) >= 0.0
@@ -83,7 +83,7 @@ pub(super) fn led(
         _ => return None,
     };
     let changed = with_led(build, enough);
-    if build.start < Fraction::ONE && !super::keeps_up(&changed) {
+    if !margin.decides && !super::keeps_up(&changed) {
         return None;
     }
     let words = match enough {

@@ -29,6 +29,9 @@ pub(super) struct Margin<'b> {
     machine: Machine,
     reserve: Fraction,
     turn: Turn,
+    /// Whether a margin at or above nought is proof that a build keeps up: from a full battery, and where nothing
+    /// drops out at a low charge. From less the first shifts may need more.
+    pub(super) decides: bool,
     /// The margin of the build as it is: charge gained over the cycle that just touches the
     /// reserve, as a share of full. At zero or above a build keeps up from a full battery. −1 where
     /// even a full battery does not start.
@@ -40,11 +43,16 @@ impl<'b> Margin<'b> {
     pub(super) fn new(build: &'b Build, machine: Machine) -> Margin<'b> {
         let mut margin = Margin {
             reserve: reserve(build, &machine).soc,
+            decides: false,
             build,
             machine,
             turn: Turn::default(),
             now: 0.0,
         };
+        margin.decides = build.start >= Fraction::ONE
+            && !margin
+                .machine
+                .may_drop_out(margin.reserve.min(Fraction::ONE));
         let machine = margin.machine.clone();
         // Twice: the second begins at the cycle's lowest point as the first found it.
         margin.gain(&machine, margin.reserve);
@@ -180,8 +188,7 @@ impl<'b> Margin<'b> {
         let mut amount = rounded(x, digits, side);
         for _ in 0..MOST_NUDGES {
             let build = knob.apply(self.build, amount);
-            // From a full battery the margin decides; from less the first shifts may need more.
-            if self.of(&build) >= 0.0 && (build.start >= Fraction::ONE || keeps_up(&build)) {
+            if self.of(&build) >= 0.0 && (self.decides || keeps_up(&build)) {
                 return Some(amount);
             }
             let step = 1.5 * 10f64.powi(1 - digits) * amount;

@@ -44,16 +44,13 @@ const HARDLY_ON: f64 = 5.0;
 const HARDLY_ROOM: f64 = 1.0;
 
 /// The nearest single changes with which a build keeps up, each with its figure; when it keeps up
-/// already, what could still be added. At most six.
+/// already, what could still be added. At most six. `machine` is the build's own.
 #[must_use]
-pub fn nearest(build: &Build, ruling: &Ruling) -> Vec<Change> {
-    let Some(machine) = Machine::new(build) else {
-        return Vec::new();
-    };
+pub fn nearest(build: &Build, machine: &Machine, ruling: &Ruling) -> Vec<Change> {
     let edge = ruling.lacks_current.unwrap_or(Amps::ZERO);
-    let worth = Worth::new(build, &machine, ruling.reserve.soc, edge);
+    let worth = Worth::new(build, machine, ruling.reserve.soc, edge);
     let full = machine.battery.cmax() / f64::from(machine.shifts.max(1));
-    let margin = Margin::new(build, machine);
+    let margin = Margin::new(build, machine.clone());
     // What the cycle on the edge loses or gains is lacking or to spare, to first order.
     let wanted = match ruling.lacks {
         Some(lacks) if ruling.verdict != Verdict::KeepsUp => lacks,
@@ -135,12 +132,12 @@ impl Near<'_> {
         let x = self
             .margin
             .by_worth(&self.worth, self.wanted, knob, (now, limit))?;
-        if x == limit {
-            return Some(x);
-        }
-        let x = rounded(x, DIGITS, side);
-        let proved =
-            self.build.start >= Fraction::ONE || super::keeps_up(&knob.apply(self.build, x));
+        let x = if x == limit {
+            x
+        } else {
+            rounded(x, DIGITS, side)
+        };
+        let proved = self.margin.decides || super::keeps_up(&knob.apply(self.build, x));
         proved.then_some(x)
     }
 
