@@ -11,7 +11,7 @@ mod numbers;
 mod tried;
 
 use ampledger::battery::Charge;
-use ampledger::build::{Build, Draw};
+use ampledger::build::{Accessory, Build, Draw};
 use ampledger::catalog::Catalogs;
 use ampledger::check::answer::{Check, Verdict};
 use ampledger::check::{Passage, SolveError, Wanted, check, first_shift, judge, rule_on};
@@ -255,6 +255,11 @@ fn a_search_that_does_not_end_is_an_error() {
     );
 }
 
+/// The first accessory of a build.
+fn first(build: &mut Build) -> &mut Accessory {
+    build.accessory_mut(0).expect("an accessory")
+}
+
 /// A build with a figure that is no number, which no file can give, gets no answer.
 #[test]
 fn figures_that_are_none_get_no_answer() {
@@ -265,10 +270,8 @@ fn figures_that_are_none_get_no_answer() {
         ("time", |b, x| b.shift[1].time.value.0 = x),
         ("parked", |b, x| b.parked.value.0 = x),
         ("start", |b, x| b.start.0 = x),
-        ("duty", |b, x| b.accessories[0].duty.running[0].value.0 = x),
-        ("draw", |b, x| {
-            b.accessories[0].draw.value = Draw::Current(Amps(x))
-        }),
+        ("duty", |b, x| first(b).duty.running[0].value.0 = x),
+        ("draw", |b, x| first(b).draw.value = Draw::Current(Amps(x))),
         ("speed", |b, x| b.speeds[0].rpm.value.0 = x),
         ("starter", |b, x| {
             b.starter.as_mut().expect("a starter").draw.value.0 = x
@@ -299,7 +302,7 @@ fn figures_that_are_none_get_no_answer() {
 #[test]
 fn answers_beyond_all_numbers_are_not_given() {
     let mut build = built(ampledger::starter_build::Kind::SeriesRegulated.text());
-    build.accessories[0].draw.value = Draw::Resistance(Ohms(1e-308));
+    first(&mut build).draw.value = Draw::Resistance(Ohms(1e-308));
     let answer = check(&build, Wanted::default()).map(|checked| checked.check);
     assert!(matches!(answer, Err(SolveError::NotFinite)), "{answer:?}");
 }

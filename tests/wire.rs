@@ -63,7 +63,7 @@ fn bare() -> Build {
 
 fn built(base: &Build, random: &Random) -> Build {
     let mut build = base.clone();
-    let accessory = &mut build.accessories[0];
+    let accessory = build.accessory_mut(0).expect("an accessory");
     accessory.draw.value = random.draw;
     accessory.count = random.count;
     accessory.works.low = matches!(random.draw, Draw::Power(_)).then_some(Volts(10.5));

@@ -11,6 +11,7 @@ pub use source::{Alternator, Regulator, Source, SourceKind, WindingSource};
 use crate::battery::{self, Label};
 use crate::quantity::{Amps, Celsius, Fraction, Hours, Money, Ohms, Rpm, Tolerance, Volts};
 use serde::Serialize;
+use std::sync::Arc;
 
 /// Where a number comes from.
 #[derive(Clone, Debug, PartialEq, Eq, Serialize)]
@@ -62,8 +63,8 @@ pub struct Build {
     pub sources: Vec<Source>,
     /// The battery, where there is one.
     pub battery: Option<BatterySpec>,
-    /// What draws.
-    pub accessories: Vec<Accessory>,
+    /// What draws; each shared with builds that differ in something else.
+    pub accessories: Vec<Arc<Accessory>>,
     /// The shift, in order.
     pub shift: Vec<Step>,
     /// Key off between shifts.
@@ -189,6 +190,18 @@ pub struct Charger {
 }
 
 impl Build {
+    /// An accessory by its index.
+    #[must_use]
+    pub fn accessory(&self, index: usize) -> Option<&Accessory> {
+        self.accessories.get(index).map(|a| &**a)
+    }
+
+    /// An accessory to be changed, in this build alone.
+    #[must_use]
+    pub fn accessory_mut(&mut self, index: usize) -> Option<&mut Accessory> {
+        self.accessories.get_mut(index).map(Arc::make_mut)
+    }
+
     /// The name of a state as the file writes it.
     #[must_use]
     pub fn state_name(&self, state: State) -> &str {

@@ -65,7 +65,7 @@ pub(super) fn check(build: &Build, wanted: Wanted) -> Result<Checked, SolveError
         accessories,
         circuits: Vec::new(),
         spare_a: spare,
-        changes: crate::size::nearest(build, &ruling),
+        changes: crate::size::nearest(build, &machine, &ruling),
         assumed: build.assumed.clone(),
         cautions: cautions(build),
         notes: build.notes.clone(),

@@ -161,7 +161,7 @@ fn not_charging(seen: &Seen<'_>) -> Vec<Finding> {
 fn accessories(seen: &Seen<'_>) -> Vec<Finding> {
     let mut all = Vec::new();
     let built = seen.build.accessories.iter().rev();
-    let named: BTreeMap<&str, &Accessory> = built.map(|a| (a.name.as_str(), a)).collect();
+    let named: BTreeMap<&str, &Accessory> = built.map(|a| (a.name.as_str(), &**a)).collect();
     for row in seen.accessories {
         let Some(accessory) = named.get(row.name.as_str()) else {
             continue;

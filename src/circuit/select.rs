@@ -69,7 +69,7 @@ impl<'a> Active<'a> {
     }
 
     fn get(&self, k: usize) -> Option<&Accessory> {
-        self.build.accessories.get(k)
+        self.build.accessory(k)
     }
 
     fn added_to(&self, mut on: Vec<usize>) -> Vec<usize> {

@@ -86,7 +86,7 @@ impl<'a> Solver<'a> {
     }
 
     fn in_state(&self, state: State, time: Hours) -> Result<InState, CircuitError> {
-        let coils = |k: &usize| self.build.accessories.get(*k).is_some_and(is_coil);
+        let coils = |k: &usize| self.build.accessory(*k).is_some_and(is_coil);
         let everything = Loads::of(self.build, &self.everything, Coils::Cold);
         Ok(InState {
             state,

@@ -126,7 +126,7 @@ impl Case {
                 price: None,
                 part: None,
             }),
-            accessories,
+            accessories: accessories.into_iter().map(Into::into).collect(),
             shift: self
                 .shift
                 .iter()

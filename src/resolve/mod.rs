@@ -33,6 +33,7 @@ use crate::quantity::{Celsius, Fraction, format};
 use accessories::{Circuit, Surroundings};
 use charging::Place;
 use context::{Context, Layers, PRACTICE, figure};
+use std::sync::Arc;
 
 /// Air temperature where none is stated. Common practice, no source.
 const AIR: Celsius = Celsius(20.0);
@@ -110,7 +111,7 @@ fn build(context: &mut Context, description: &Description) -> Option<Build> {
         starter,
         sources: sources?,
         battery: battery?,
-        accessories: accessories?,
+        accessories: accessories?.into_iter().map(Arc::new).collect(),
         shift,
         parked,
         start: Fraction::ONE,

@@ -5,6 +5,7 @@ use crate::build::{
     Accessory, BatterySpec, Build, Draw, Duty, Figure, Origin, SourceKind, State, Works,
 };
 use crate::quantity::{AmpHours, Amps, Fraction, Hours, Rpm, Volts, Watts};
+use std::sync::Arc;
 
 /// Volts a cell below which a constant power or current drops out: 10.5 V of a 12 V system, as an
 /// accessory of a build file has without saying so. Common practice, no source.
@@ -42,7 +43,7 @@ impl Knob {
             }
             Knob::Parked => set(&mut build.parked, Hours(x)),
             Knob::Draw(index) => {
-                if let Some(accessory) = build.accessories.get_mut(*index) {
+                if let Some(accessory) = build.accessory_mut(*index) {
                     let draw = drawing(accessory.draw.value, x);
                     set(&mut accessory.draw, draw);
                 }
@@ -58,7 +59,7 @@ impl Knob {
                 }
             }
             Knob::Duty { accessory, state } => {
-                if let Some(accessory) = build.accessories.get_mut(*accessory) {
+                if let Some(accessory) = build.accessory_mut(*accessory) {
                     set_duty(&mut accessory.duty, *state, Fraction::from_percent(x));
                 }
             }
@@ -161,10 +162,6 @@ fn add(build: &mut Build, draw: Draw) {
         high: None,
         stated: false,
     };
-    build.accessories.push(Accessory::plain(
-        "more load".to_owned(),
-        figure(draw),
-        duty,
-        works,
-    ));
+    let more = Accessory::plain("more load".to_owned(), figure(draw), duty, works);
+    build.accessories.push(Arc::new(more));
 }

@@ -154,7 +154,7 @@ impl Input {
         let mut changed = build.clone();
         match self {
             Input::Ohms(index) => {
-                if let Some(accessory) = changed.accessories.get_mut(*index)
+                if let Some(accessory) = changed.accessory_mut(*index)
                     && let Draw::Resistance(ohms) = &mut accessory.draw.value
                 {
                     *ohms = *ohms * factor;

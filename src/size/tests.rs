@@ -6,9 +6,10 @@ use super::value::written;
 use super::{keeps_up, nearest};
 use crate::build::Build;
 use crate::catalog::Catalogs;
-use crate::check::answer::Verdict;
-use crate::check::rule;
+use crate::check::answer::{Change, Verdict};
+use crate::check::{Ruling, rule};
 use crate::description::{Assignment, read_set};
+use crate::ledger::Machine;
 use crate::resolve::resolve;
 
 /// A build file read with values set.
@@ -20,6 +21,10 @@ pub(super) fn build_of(text: &str, set: &[String]) -> Build {
     let (description, _) =
         read_set("test", text.as_bytes(), &set).unwrap_or_else(|e| panic!("{set:?}: {e}"));
     resolve(&description, &Catalogs::builtin()).unwrap_or_else(|e| panic!("{set:?}: {e:?}"))
+}
+
+fn changes_of(build: &Build, ruling: &Ruling) -> Vec<Change> {
+    nearest(build, &Machine::new(build).expect("a battery"), ruling)
 }
 
 /// An invented cart: lamps of some watts at work, a pump that cycles.
@@ -89,7 +94,7 @@ fn nearest_changes_keep_up() {
         let text = cart(watts);
         let build = build_of(&text, &[]);
         let ruling = rule(&build).expect("an answer");
-        let changes = nearest(&build, &ruling);
+        let changes = changes_of(&build, &ruling);
         assert!(
             changes.len() >= 3 && changes.len() <= 6,
             "{watts} W: {changes:#?}"
@@ -112,7 +117,7 @@ fn nearest_changes_are_near() {
     let ruling = rule(&build).expect("an answer");
     assert_ne!(ruling.verdict, Verdict::KeepsUp);
     let mut tried = 0;
-    for change in nearest(&build, &ruling) {
+    for change in changes_of(&build, &ruling) {
         let Some(set) = change.set else { continue };
         let (path, value) = set.split_once('=').expect("an assignment");
         let knob = knobs(&build)
@@ -141,7 +146,7 @@ fn beyond_charging_names_a_battery() {
     let build = build_of(&text, &[]);
     let ruling = rule(&build).expect("an answer");
     assert_eq!(ruling.lacks, None);
-    let changes = nearest(&build, &ruling);
+    let changes = changes_of(&build, &ruling);
     let all: Vec<&str> = changes.iter().map(|c| c.text.as_str()).collect();
     assert!(all.iter().any(|t| t.starts_with("Stopped for")), "{all:?}");
     for change in &changes {

@@ -226,12 +226,9 @@ pub(super) fn demands(build: &Build) -> (Vec<Demand>, Vec<Unsized>) {
 fn member(build: &Build, supplies: &Supplies, index: usize) -> Result<Member, String> {
     let accessory = &build.accessories[index];
     let feed_has_run = accessory.wire.feed.as_ref().is_some_and(|feed| {
-        let shares = |a: &&Accessory| a.wire.feed.as_ref() == Some(feed);
-        build
-            .accessories
-            .iter()
-            .filter(shares)
-            .any(|a| a.wire.run.is_some())
+        let shares = |a: &Accessory| a.wire.feed.as_ref() == Some(feed);
+        let mut all = build.accessories.iter();
+        all.any(|a| shares(a) && a.wire.run.is_some())
     });
     if accessory.wire.run.is_none() && !feed_has_run {
         return Err("no `run:` is given".to_owned());

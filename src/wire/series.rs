@@ -49,12 +49,8 @@ pub fn series_resistance(build: &Build, wires: &Wires) -> Vec<Option<Ohms>> {
 pub fn in_series(build: &Build, wires: &Wires) -> Build {
     let at = Volts(WORKING_CELL * f64::from(build.cells()));
     let mut with = build.clone();
-    for (accessory, ohms) in with
-        .accessories
-        .iter_mut()
-        .zip(series_resistance(build, wires))
-    {
-        if let Some(ohms) = ohms {
+    for (index, ohms) in series_resistance(build, wires).into_iter().enumerate() {
+        if let (Some(accessory), Some(ohms)) = (with.accessory_mut(index), ohms) {
             let each = ohms * f64::from(accessory.count.max(1));
             accessory.draw.value = behind(accessory.draw.value, each, at);
         }

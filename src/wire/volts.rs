@@ -132,7 +132,7 @@ fn alone(build: &Build, accessory: &Accessory) -> Build {
     only.together.clear();
     only.apart.clear();
     Build {
-        accessories: vec![only],
+        accessories: vec![only.into()],
         ..build.clone()
     }
 }
