@@ -72,34 +72,42 @@ pub enum Draw {
 /// # Errors
 /// [`ParseError`]; of the three readings, that of the one which came furthest.
 pub fn draw(text: &str) -> Result<Measured<Draw>, ParseError> {
-    let mut worst: Option<ParseError> = None;
     let readings = [Dimension::Power, Dimension::Current, Dimension::Resistance];
     let form = |dimension, amount| match dimension {
         Dimension::Current => Draw::Current(Amps(amount)),
         Dimension::Resistance => Draw::Resistance(Ohms(amount)),
         _ => Draw::Power(Watts(amount)),
     };
-    for dimension in readings {
-        match measure(text, dimension) {
-            Ok(measured) => return Ok(measured.map(|x| form(dimension, x))),
-            Err(e) if worst.as_ref().is_none_or(|w| e.range.start > w.range.start) => {
-                worst = Some(e)
-            }
-            Err(_) => {}
-        }
+    let unit = unit::plain(reader::unit_written(text));
+    let named = |dimension: &&Dimension| unit::find(&unit, **dimension).is_some();
+    if let Some(dimension) = readings.iter().find(named) {
+        let measured = measure(text, *dimension).map_err(of_draw)?;
+        return Ok(measured.map(|x| form(*dimension, x)));
     }
-    let mut error = worst.unwrap_or(ParseError {
+    let failed = readings.map(|dimension| measure(text, dimension).err());
+    let furthest = failed.into_iter().flatten().reduce(|worst, e| {
+        if e.range.start > worst.range.start {
+            e
+        } else {
+            worst
+        }
+    });
+    Err(of_draw(furthest.unwrap_or(ParseError {
         range: 0..0,
         kind: ParseErrorKind::Empty,
         wanted: Dimension::Draw,
-    });
+    })))
+}
+
+/// An error of the first of the readings, told of all three.
+fn of_draw(mut error: ParseError) -> ParseError {
     if error.wanted == Dimension::Power {
         error.wanted = Dimension::Draw;
         if let ParseErrorKind::UnknownUnit { found, near } = &mut error.kind {
             *near = unit::nearest(&unit::plain(found), Dimension::Draw);
         }
     }
-    Err(error)
+    error
 }
 
 /// Reads a whole number: poles, a count.

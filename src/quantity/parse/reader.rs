@@ -297,6 +297,13 @@ fn decimal(text: &str) -> (String, usize) {
     (number, text.len() - rest.len())
 }
 
+/// The unit after the number that a text begins with; empty if there is none.
+pub(super) fn unit_written(text: &str) -> &str {
+    let text = text.trim_start();
+    let (_, number) = decimal(text);
+    unit_word(text[number..].trim_start())
+}
+
 /// The unit at the beginning of a text: letters and signs up to a space, a digit or a tolerance; `mm2` keeps its digit.
 fn unit_word(text: &str) -> &str {
     let stop = |c: char| {
