@@ -3,12 +3,15 @@
 /// How alike two words must be for one to be offered for the other (Jaro-Winkler, 1 is equal).
 const ALIKE: f64 = 0.78;
 
+/// Most names that a word is held against: no hand writes more, and a message is not to be waited for.
+const MOST_COMPARED: usize = 2000;
+
 /// The name most like a word, where one is.
 #[must_use]
 pub fn nearest<'a>(word: &str, names: impl IntoIterator<Item = &'a str>) -> Option<&'a str> {
     let lower = word.to_lowercase();
     let mut best: Option<(&str, f64)> = None;
-    for name in names {
+    for name in names.into_iter().take(MOST_COMPARED) {
         let alike = strsim::jaro_winkler(&lower, &name.to_lowercase());
         if alike > ALIKE && best.is_none_or(|(_, most)| alike > most) {
             best = Some((name, alike));

@@ -41,10 +41,10 @@ pub(super) fn accessories(
     texts: &[AccessoryText],
     around: &Surroundings,
 ) -> Option<Vec<Accessory>> {
-    let layers: Vec<Layers<AccessoryText>> = texts
-        .iter()
-        .map(|a| super::parts::layers(context, a, &a.path))
-        .collect();
+    let layers = super::parts::of_each(context, texts);
+    if layers.len() < texts.len() {
+        return None;
+    }
     let names = names(context, &layers);
     let mut all = Vec::with_capacity(layers.len());
     for (layers, name) in layers.iter().zip(names) {

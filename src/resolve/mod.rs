@@ -57,14 +57,16 @@ pub fn resolve(description: &Description, catalogs: &Catalogs) -> Result<Build, 
 #[must_use]
 pub fn more_problems(partial: &Description, catalogs: &Catalogs) -> Problems {
     let mut context = Context::new(catalogs);
-    let _ = build(&mut context, partial);
-    let of_parts = |fault: &Fault| {
-        matches!(
-            fault,
-            Fault::UnknownPart { .. } | Fault::PartCycle { .. } | Fault::BadPart { .. }
-        )
-    };
-    context.faults.retain(|(_, fault)| of_parts(fault));
+    if let Some(starter) = &partial.engine.starter {
+        parts::layers(&mut context, starter, "engine.starter");
+    }
+    for charging in &partial.charging {
+        parts::layers(&mut context, charging, &charging.path);
+    }
+    if let Some(battery) = &partial.battery {
+        parts::layers(&mut context, battery, "battery");
+    }
+    parts::of_each(&mut context, &partial.accessories);
     problems(context.faults)
 }
 

@@ -4,6 +4,7 @@ use super::Fault;
 use super::context::{Context, Layers, Part};
 use crate::build::Origin;
 use crate::catalog::{Catalogs, Parted};
+use crate::description::AccessoryText;
 use crate::problem::{MOST_KEPT, Problem};
 
 /// An entry over its parts, nearest first. What is wrong with them is told at the path of the entry's `part`.
@@ -35,6 +36,21 @@ pub(super) fn layers<'a, T: Parted>(
         context.fault(format!("{path}.part"), fault);
     }
     Layers { own, parts, broken }
+}
+
+/// The accessories over their parts; no more of them once there is more wrong than is shown.
+pub(super) fn of_each<'a>(
+    context: &mut Context,
+    accessories: &'a [AccessoryText],
+) -> Vec<Layers<'a, AccessoryText>> {
+    let mut all = Vec::with_capacity(accessories.len());
+    for accessory in accessories {
+        if context.faults.len() > MOST_KEPT {
+            break;
+        }
+        all.push(layers(context, accessory, &accessory.path));
+    }
+    all
 }
 
 /// The part of an id, read; or what is wrong with it. A suggestion is looked for where it will be `shown`.
