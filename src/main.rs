@@ -21,6 +21,11 @@ fn main() -> ExitCode {
     };
     match cli::run(&arguments) {
         Ok(code) => ExitCode::from(code),
-        Err(problem) => ExitCode::from(cli::told(&problem, &arguments)),
+        Err(problem) => {
+            let code = cli::told(&problem, &arguments);
+            // What was read goes with the process: giving back a large file's values one by one takes longer.
+            std::mem::forget(problem);
+            ExitCode::from(code)
+        }
     }
 }

@@ -1,5 +1,6 @@
 //! One pass over a file's YAML events: where every value stands, and everything that is refused before a key means anything.
 
+mod seen;
 mod syntax;
 
 pub(super) use syntax::tab_near;
@@ -7,6 +8,7 @@ pub(super) use syntax::tab_near;
 use super::places::{Child, Content, Key, Place, Places};
 use crate::problem::{Problem, Problems, TextProblem, text::MOST_DEEP, text::MOST_VALUES};
 use saphyr_parser::{Event, Parser, ScalarStyle, Span};
+use seen::Seen;
 use std::collections::BTreeMap;
 use std::ops::Range;
 
@@ -54,7 +56,7 @@ enum FrameKind {
     List(Vec<Child>),
     Mapping {
         entries: Vec<(Key, Child)>,
-        seen: BTreeMap<String, Range<usize>>,
+        seen: Seen,
         key: Option<(Key, bool)>,
     },
 }
@@ -124,7 +126,7 @@ impl<'a> Scan<'a> {
                     self.problems
                         .push(Problem::text(TextProblem::Tag, range.clone()));
                 }
-                return self.scalar(&text, style, anchor, range);
+                return self.scalar(text.into_owned(), style, anchor, range);
             }
             Event::Alias(anchor) => return self.alias(anchor, range),
             Event::SequenceStart(anchor, tag) => {
@@ -133,7 +135,7 @@ impl<'a> Scan<'a> {
             Event::MappingStart(anchor, tag) => {
                 let kind = FrameKind::Mapping {
                     entries: Vec::new(),
-                    seen: BTreeMap::new(),
+                    seen: Seen::default(),
                     key: None,
                 };
                 return self.begin(kind, anchor, tag.is_some(), range);
@@ -166,7 +168,7 @@ impl<'a> Scan<'a> {
 
     fn scalar(
         &mut self,
-        text: &str,
+        text: String,
         style: ScalarStyle,
         anchor: usize,
         range: Range<usize>,
@@ -177,10 +179,7 @@ impl<'a> Scan<'a> {
             return self.key(text, plain, range);
         }
         let range = self.value_only(range, style, anchor > 0);
-        let content = Content::Scalar {
-            text: text.to_owned(),
-            plain,
-        };
+        let content = Content::Scalar { text, plain };
         let place = self.placed(range, content, anchor, 1, 0);
         self.attach(Child { place, alias: None });
         Ok(())
@@ -204,7 +203,7 @@ impl<'a> Scan<'a> {
         range.start + anchor..range.start + anchor + length
     }
 
-    fn key(&mut self, text: &str, plain: bool, range: Range<usize>) -> Result<(), Box<Problem>> {
+    fn key(&mut self, text: String, plain: bool, range: Range<usize>) -> Result<(), Box<Problem>> {
         if text == "<<" && plain {
             return Err(refused(TextProblem::MergeKey, range));
         }
@@ -212,32 +211,19 @@ impl<'a> Scan<'a> {
             return Err(refused(TextProblem::KeyNotText, range));
         }
         let Some(Frame {
-            kind: FrameKind::Mapping { seen, key, .. },
+            kind: FrameKind::Mapping { entries, seen, key },
             ..
         }) = self.open.last_mut()
         else {
             return Ok(());
         };
-        let first = seen.get(text).cloned();
-        if first.is_none() {
-            seen.insert(text.to_owned(), range.clone());
+        let first = seen.first(&text, entries);
+        if let Some(first) = first.clone() {
+            let key = text.clone();
+            let twice = TextProblem::DuplicateKey { key, first };
+            self.problems.push(Problem::text(twice, range.clone()));
         }
-        *key = Some((
-            Key {
-                text: text.to_owned(),
-                span: range.clone(),
-            },
-            first.is_some(),
-        ));
-        if let Some(first) = first {
-            self.problems.push(Problem::text(
-                TextProblem::DuplicateKey {
-                    key: text.to_owned(),
-                    first,
-                },
-                range,
-            ));
-        }
+        *key = Some((Key { text, span: range }, first.is_some()));
         Ok(())
     }
 

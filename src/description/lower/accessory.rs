@@ -37,8 +37,9 @@ impl Lower<'_> {
         node: &List<Map<raw::Accessory>>,
         at: &str,
     ) -> Vec<AccessoryText> {
-        let mut out = Vec::new();
-        let mut entries = self.list(node, at).unwrap_or_default().iter().enumerate();
+        let entries = self.list(node, at).unwrap_or_default();
+        let mut out = Vec::with_capacity(entries.len());
+        let mut entries = entries.iter().enumerate();
         while let Some((i, entry)) = self.looked_at(&mut entries) {
             let at = path::index(at, i);
             let Some(raw) = self.map(entry, &at) else {
@@ -76,7 +77,7 @@ impl Lower<'_> {
             draw: self.draw(raw, at),
             law: self.word(at, "law", &raw.law, ("law of a draw", LAWS)),
             at: self.quantity(at, "at", &raw.at, &bounds::STATED_AT),
-            duty: self.duty(&raw.duty, path::key(at, "duty")),
+            duty: self.duty(&raw.duty, at),
             works: self.works(raw, at),
             inrush: self.inrush(raw, at),
             circuit: self.name(at, "circuit", &raw.circuit),
@@ -128,9 +129,12 @@ impl Lower<'_> {
     }
 
     /// One share, or a share by state.
-    fn duty(&mut self, node: &Named<Leaf>, at: String) -> Option<DutyText> {
+    fn duty(&mut self, node: &Named<Leaf>, at: &str) -> Option<DutyText> {
+        if matches!(node, Node::Absent) {
+            return None;
+        }
+        let at = path::key(at, "duty");
         match node {
-            Node::Absent => None,
             Node::Mapping(names) => {
                 let mut shares = Vec::new();
                 let mut entries = names.0.iter();
@@ -176,9 +180,11 @@ impl Lower<'_> {
 
     /// A name, or a list of names.
     pub(super) fn names(&mut self, node: &List<Leaf>, at: &str, key: &str) -> Vec<Written<String>> {
+        if matches!(node, Node::Absent) {
+            return Vec::new();
+        }
         let path = path::key(at, key);
         match node {
-            Node::Absent => Vec::new(),
             Node::List(entries) => {
                 let mut entries = entries.iter().enumerate();
                 let mut out = Vec::new();
