@@ -103,6 +103,12 @@ fn odds_that_are_none() {
     let still = CLUTCH.replace("governed: 1 h", "governed: 0 h");
     let error = odds(&still).expect_err("no time");
     assert_eq!(error, OddsError::Unsolved(SolveError::EmptyShift));
+    let error = odds(CLUTCH).expect_err("nothing to judge");
+    assert_eq!(error, OddsError::NothingJudged);
+    assert!(
+        error.to_string().starts_with("nothing to judge: "),
+        "{error}"
+    );
     let none = OddsError::NothingDrawn {
         contradictory: 3,
         unsolved: 1,

@@ -382,6 +382,34 @@ fn ampledger(args: &[&str]) -> Output {
     command.args(args).output().expect("the program")
 }
 
+/// A machine with no battery and nothing that states its volts neither keeps up nor falls short; one row is told of.
+#[test]
+fn nothing_to_judge_is_no_verdict() {
+    let folder = folder();
+    let build = "build: lamp alone # invented
+engine: {speeds: {governed: 3400 rpm}}
+charging:
+  - winding: {open_circuit: 28 V at 3600 rpm, resistance: 0.14 ohm, inductance: 0.4 mH, poles: 12, feeds: lighting}
+    rectifier: none
+accessories: [{name: lamp, draw: 20 W, law: resistance, circuit: lighting, duty: 100 %}]
+shift: [{governed: 2 h}]
+";
+    std::fs::write(folder.path().join("lamp.yaml"), build).expect("a file");
+    let alone = sheet(folder.path(), b"machine,build,count\nl,lamp.yaml,3\n");
+    assert_eq!(
+        (alone.rows[0].outcome.verdict, alone.totals.unjudged),
+        (None, 3)
+    );
+    assert_eq!(alone.rows[0].outcome.error, None);
+    let report = ampledger::view::fleet(&alone);
+    let text = ampledger::report::text::render(&report, &ampledger::report::text::Style::default());
+    let text = text.replace('\n', " ");
+    let said = "Not judged: 3 machines have no battery and nothing that states its volts.";
+    assert!(text.contains(said), "{text}");
+    let both = sheet(folder.path(), b"machine,build\nl,lamp.yaml\nc,cart.yaml\n");
+    assert_eq!((both.totals.keeps_up, both.totals.unjudged), (1, 1));
+}
+
 /// The command's exit codes: all keep up, one does not, one cannot be read.
 #[test]
 fn the_exit_codes() {

@@ -29,6 +29,12 @@ impl Judged {
         }
     }
 
+    /// Whether anything was judged: not without a battery where nothing states the volts it works within.
+    #[must_use]
+    pub fn is_judged(&self) -> bool {
+        !matches!(self, Judged::OnVolts(_, None))
+    }
+
     /// Whether it keeps up.
     #[must_use]
     pub fn keeps_up(&self) -> bool {

@@ -132,7 +132,11 @@ impl<W: Write> Sheet<W> {
     fn row(&mut self, row: &Row) -> anyhow::Result<()> {
         let outcome = &row.outcome;
         let number = |number: Option<f64>| number.map_or(String::new(), |n| n.to_string());
-        let verdict = outcome.verdict.map_or("", |verdict| verdict.words());
+        let verdict = match (outcome.verdict, &outcome.error) {
+            (Some(verdict), _) => verdict.words(),
+            (None, None) => "not judged",
+            (None, Some(_)) => "",
+        };
         self.line(&[
             &harmless(&row.machine),
             &harmless(&row.build),

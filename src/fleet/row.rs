@@ -31,7 +31,7 @@ pub struct Row {
 /// What came of one build.
 #[derive(Clone, Debug, Default, PartialEq, Serialize)]
 pub struct Outcome {
-    /// The verdict; none where there is an error.
+    /// The verdict; none where there is an error, or nothing to judge.
     pub verdict: Option<Verdict>,
     /// Shifts that hold the reserve; none when it keeps up.
     pub shifts_carried: Option<u32>,
@@ -49,7 +49,7 @@ pub struct Outcome {
     pub parts: Vec<Part>,
     /// What binds with all changed that may be, where no remedy was found.
     pub binds: Option<String>,
-    /// Why there is no verdict.
+    /// Why there is no verdict, where that is an error.
     pub error: Option<String>,
 }
 

@@ -54,7 +54,7 @@ impl Shop<'_> {
 
     fn told(&self, asked: &Asked<'_>, judged: &Judged) -> Outcome {
         let mut outcome = Outcome {
-            verdict: Some(judged.verdict()),
+            verdict: judged.is_judged().then(|| judged.verdict()),
             lacks_ah: judged.lacks(),
             ..Outcome::default()
         };

@@ -22,6 +22,8 @@ pub struct Totals {
     pub carries: u64,
     /// Machines that fall short.
     pub falls_short: u64,
+    /// Machines with nothing to judge: no battery, and nothing that states its volts.
+    pub unjudged: u64,
     /// By kit and season, in the order in which they first occur.
     pub groups: Vec<Group>,
 }
@@ -41,6 +43,8 @@ pub struct Group {
     pub carries: u64,
     /// Machines that fall short.
     pub falls_short: u64,
+    /// Machines with nothing to judge.
+    pub unjudged: u64,
     /// Rows with an error.
     pub errors: u64,
     /// What the kits cost, where their price is known.
@@ -81,13 +85,18 @@ impl Tally {
             self.totals.groups.len() - 1
         });
         let (group, remedies) = (&mut self.totals.groups[place], &mut self.remedies[place]);
-        let Some(verdict) = row.outcome.verdict else {
+        if row.outcome.error.is_some() {
             group.errors += 1;
             self.totals.errors += 1;
             return;
-        };
+        }
         let count = u64::from(row.count);
         group.machines += count;
+        let Some(verdict) = row.outcome.verdict else {
+            group.unjudged += count;
+            self.totals.unjudged += count;
+            return;
+        };
         let (of_group, of_all) = match verdict {
             Verdict::KeepsUp => (&mut group.keeps_up, &mut self.totals.keeps_up),
             Verdict::Carries => (&mut group.carries, &mut self.totals.carries),

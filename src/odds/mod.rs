@@ -139,6 +139,8 @@ pub enum OddsError {
     Refused(Problems),
     /// The build as stated has no answer.
     Unsolved(SolveError),
+    /// There is nothing to judge: no battery, and nothing that states the volts it works within.
+    NothingJudged,
     /// No draw had an answer.
     NothingDrawn {
         /// Draws whose values contradict each other.
@@ -156,6 +158,9 @@ impl fmt::Display for OddsError {
                 None => f.write_str("the build is refused"),
             },
             OddsError::Unsolved(error) => error.fmt(f),
+            OddsError::NothingJudged => f.write_str(
+                "nothing to judge: there is no battery to keep charged, and no accessory states the volts it works within (`works: 10.5 V to 16 V`)",
+            ),
             OddsError::NothingDrawn {
                 contradictory,
                 unsolved,
@@ -182,6 +187,9 @@ pub fn odds(
     let nominal = crate::resolve::resolve(description, catalogs).map_err(OddsError::Refused)?;
     let nominal = nominal.starting_at(wanted.start);
     let verdict = judge(&nominal).map_err(OddsError::Unsolved)?;
+    if !verdict.is_judged() {
+        return Err(OddsError::NothingJudged);
+    }
     let drawing = Drawing::new(description, catalogs, &nominal, wanted);
     if drawing.tolerances().is_empty() {
         return Ok(without_tolerances(&nominal, &verdict, wanted));

@@ -19,6 +19,8 @@ pub fn fleet(answer: &Fleet) -> Report {
         Tone::Bad
     } else if totals.keeps_up < judged {
         Tone::Warn
+    } else if judged == 0 {
+        Tone::Plain
     } else {
         Tone::Good
     };
@@ -62,7 +64,9 @@ fn subtitle(answer: &Fleet) -> String {
 }
 
 fn lead(keeps_up: u64, judged: u64) -> String {
-    if keeps_up == judged {
+    if judged == 0 {
+        "Not judged".to_owned()
+    } else if keeps_up == judged {
         "All keep up".to_owned()
     } else {
         format!("{keeps_up} of {judged} keep up")
@@ -92,6 +96,13 @@ fn sentence(answer: &Fleet, crossed: bool) -> String {
             "{} fall{} short in the first",
             machines(totals.falls_short),
             ending(totals.falls_short, "s", "")
+        ));
+    }
+    if totals.unjudged > 0 {
+        said.push(format!(
+            "{} ha{} no battery and nothing that states its volts",
+            machines(totals.unjudged),
+            ending(totals.unjudged, "s", "ve")
         ));
     }
     if totals.errors > 0 {
@@ -173,7 +184,11 @@ fn matrix(answer: &Fleet) -> Table {
 fn verdict(row: &Row) -> Cell {
     let outcome = &row.outcome;
     let Some(verdict) = outcome.verdict else {
-        return Cell::text("not judged").bad();
+        let cell = Cell::text("not judged");
+        return match outcome.error {
+            Some(_) => cell.bad(),
+            None => cell,
+        };
     };
     let lacks = || match outcome.lacks_ah {
         Some(lacks) => Cell {
