@@ -107,8 +107,8 @@ pub struct Starter {
     pub rest: Figure<Hours>,
     /// Cable resistance, there and back.
     pub cable: Figure<Ohms>,
-    /// Least volts at the starter; the model's own default by temperature where none is stated.
-    pub least_volts: Option<Figure<Volts>>,
+    /// Least volts at the starter with which the engine starts.
+    pub least_volts: Figure<Volts>,
 }
 
 impl Starter {
@@ -121,7 +121,7 @@ impl Starter {
             attempts: self.starts.value,
             rest: self.rest.value,
             cable: self.cable.value,
-            least: self.least_volts.as_ref().map(|v| v.value),
+            least: Some(self.least_volts.value),
         }
     }
 }

@@ -2,6 +2,7 @@
 
 use super::Fault;
 use super::context::{Context, Layers, PRACTICE};
+use crate::battery;
 use crate::build::{Figure, Origin, Speed, Starter};
 use crate::description::path::key;
 use crate::description::{EngineText, StarterText};
@@ -16,6 +17,9 @@ const STARTS: u32 = 3;
 const REST: Hours = Hours::from_seconds(10.0);
 /// Resistance of the starter's cables, there and back. Common practice, no source.
 const CABLE: Ohms = Ohms(0.004);
+
+/// Why the least volts at the starter are what they are: see [`battery::Starter::least_for`].
+const LEAST_VOLTS_GROUND: &str = "own choice, just under what load tests ask";
 
 /// The named speeds, in the order written.
 pub(super) fn speeds(context: &mut Context, engine: &EngineText) -> Vec<Speed> {
@@ -40,7 +44,11 @@ pub(super) fn speeds(context: &mut Context, engine: &EngineText) -> Vec<Speed> {
 }
 
 /// The starter, its open figures assumed.
-pub(super) fn starter(context: &mut Context, layers: &Layers<StarterText>) -> Option<Starter> {
+pub(super) fn starter(
+    context: &mut Context,
+    layers: &Layers<StarterText>,
+    cells: u32,
+) -> Option<Starter> {
     if layers.broken {
         return None;
     }
@@ -83,7 +91,18 @@ pub(super) fn starter(context: &mut Context, layers: &Layers<StarterText>) -> Op
             PRACTICE,
         ),
     );
+    let usual = battery::Starter::new(draw.value).least_for(cells);
     let least_volts = layers.figure(&path("least_volts"), |s| s.least_volts.as_ref());
+    let least_volts = context.figure_or(
+        least_volts,
+        path("least_volts"),
+        usual,
+        (
+            "least volts at the starter",
+            format::text(usual),
+            LEAST_VOLTS_GROUND,
+        ),
+    );
     Some(Starter {
         draw,
         time,

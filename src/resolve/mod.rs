@@ -85,10 +85,10 @@ fn build(context: &mut Context, description: &Description) -> Option<Build> {
     let starter = description.engine.starter.as_ref();
     let starter = starter.map(|s| parts::layers(context, s, "engine.starter"));
     let has_starter = starter.is_some();
-    let starter = starter.and_then(|s| engine::starter(context, &s));
     let battery = description.battery.as_ref();
     let battery = battery.map(|b| parts::layers(context, b, "battery"));
     let cells = cells(battery.as_ref());
+    let starter = starter.and_then(|s| engine::starter(context, &s, cells));
     let (sources, circuits) = sources(context, description, cells);
     let battery: Option<Option<BatterySpec>> = match &battery {
         Some(layers) => battery::battery(context, layers, has_starter).map(Some),

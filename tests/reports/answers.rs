@@ -164,7 +164,6 @@ pub fn fleet() -> Fleet {
             errors: 1,
             keeps_up: 4,
             carries: 4,
-            falls_short: 0,
             groups: vec![Group {
                 kit: Some("night-work".into()),
                 machines: 8,
@@ -182,6 +181,7 @@ pub fn fleet() -> Fleet {
                 }],
                 ..Group::default()
             }],
+            ..Totals::default()
         },
     }
 }

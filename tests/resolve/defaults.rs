@@ -88,6 +88,10 @@ fn what_is_not_stated_is_assumed_and_listed() {
     assert_eq!(assumed(&build, "cold cranking amps").unwrap().0, "240 A");
     assert_eq!(assumed(&build, "Peukert exponent").unwrap().0, "1.25");
     assert_eq!(assumed(&build, "cells of the battery").unwrap().0, "6");
+    assert_eq!(
+        assumed(&build, "least volts at the starter").unwrap().0,
+        "9 V"
+    );
     // 2.1 times 14 V, at 3600 rpm (common practice, from memory).
     assert_eq!(
         assumed(&build, "open-circuit volts").unwrap().0,
@@ -98,7 +102,7 @@ fn what_is_not_stated_is_assumed_and_listed() {
         assumed(&build, "charge never to go below").is_none(),
         "the starter sets the reserve"
     );
-    assert_eq!(build.assumed.len(), rows.len() + 8);
+    assert_eq!(build.assumed.len(), rows.len() + 9);
 }
 
 #[test]
