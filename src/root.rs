@@ -180,6 +180,59 @@ pub(crate) fn within(mut f: impl FnMut(f64) -> f64, low: f64, high: f64, toleran
     }
 }
 
+/// Most evaluations of [`rising`]: where it closes in at all it takes half of them.
+const MOST_SECANTS: u32 = 12;
+/// Times the slope to expect that a chord may be.
+const STEEPER: f64 = 8.0;
+/// Times the last step that the next may be: where the function is all but flat the secant leads far off.
+const LONGER: f64 = 8.0;
+
+/// The root of a function that rises, from one point and a slope to expect, by the secant through the last two points,
+/// kept between points of opposite sign once there are any. Ends where a step is within `tolerance` of its point.
+///
+/// ```text
+/// x'' = x' − f(x') (x' − x)/(f(x') − f(x))
+/// ```
+/// Source: secant method, textbook. `None` where it does not close in soon, or finds the function falling or far steeper than expected: then
+/// [`bracketed`] is to be asked, which always ends.
+pub(crate) fn rising(
+    mut f: impl FnMut(f64) -> f64,
+    start: f64,
+    expected: f64,
+    tolerance: impl Fn(f64) -> f64,
+) -> Option<f64> {
+    let (mut low, mut high) = (f64::NEG_INFINITY, f64::INFINITY);
+    let (mut x, mut slope, mut longest) = (start, expected, f64::MAX);
+    let mut fx = f(x);
+    for _ in 1..MOST_SECANTS {
+        if !fx.is_finite() {
+            return None;
+        }
+        if fx < 0.0 {
+            low = x;
+        } else {
+            high = x;
+        }
+        let secant = x + (-fx / slope).clamp(-longest, longest);
+        if (secant - x).abs() <= tolerance(x) {
+            return Some(secant.clamp(low, high));
+        }
+        let next = match secant > low && secant < high {
+            true => secant,
+            false => 0.5 * (low + high),
+        };
+        let f_next = f(next);
+        longest = LONGER * (next - x).abs();
+        slope = (f_next - fx) / (next - x);
+        // A chord across a bend would make a step small far from the root.
+        if slope <= 0.0 || slope > STEEPER * expected || slope.is_nan() {
+            return None;
+        }
+        (x, fx) = (next, f_next);
+    }
+    None
+}
+
 /// The zero of a function that is positive at `low`, negative at `high` and crosses once between, by Newton's steps
 /// from `start`, held in the bracket. `f` gives the value and its true slope. The bracket is halved where a step leaves
 /// it or is more than half the one before, so the steps shrink to nothing whatever the function.
@@ -287,6 +340,28 @@ mod tests {
         assert!((falling(layer, 0.0, 6.0, 3.0) - 2.0_f64.ln() / 1e3).abs() < 1e-17);
         assert_eq!(falling(|_| (-1.0, 0.0), 0.5, 1.0, 0.8), 0.5);
         assert!((falling(|_| (1.0, 0.0), 0.5, 1.0, 0.8) - 1.0).abs() < 1e-15);
+    }
+
+    #[test]
+    fn rising_takes_few_steps_or_none() {
+        let mut evaluations = 0;
+        let f = |x: f64| {
+            evaluations += 1;
+            x * x * x - 2.0 * x - 5.0
+        };
+        // Wallis' equation, from 2 with its slope of 10 there.
+        let root = rising(f, 2.0, 10.0, |x| 1e-10 * x.abs()).expect("a root");
+        assert!((root - 2.094_551_481_542_326_5).abs() < 1e-14, "{root}");
+        assert!(evaluations <= 6, "{evaluations}");
+        // A function that bends off to a ceiling, from above: the root of 1 − e^(−x) − 1/2 is ln 2.
+        let bent = |x: f64| 0.5 - (-x).exp();
+        let root = rising(bent, 3.0, 0.5, |_| 1e-9).expect("a root");
+        assert!((root - 2.0_f64.ln()).abs() < 1e-9, "{root}");
+        // None: from so far out that it is flat, never crosses, falls, is no number.
+        assert_eq!(rising(bent, 9.0, 1.0, |_| 1e-9), None);
+        assert_eq!(rising(|x| -1.0 - (-x).exp(), 0.0, 1.0, |_| 1e-9), None);
+        assert_eq!(rising(|x| 1.0 - x, 0.0, 1.0, |_| 1e-9), None);
+        assert_eq!(rising(|_| f64::NAN, 0.0, 1.0, |_| 1e-9), None);
     }
 
     #[test]

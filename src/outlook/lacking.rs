@@ -10,7 +10,7 @@ use crate::battery::Charge;
 use crate::build::State;
 use crate::ledger::Machine;
 use crate::quantity::{AmpHours, Amps, Fraction, Hours};
-use crate::root::bracketed;
+use crate::root::{bracketed, rising};
 
 /// A current beyond any source's: held at the highest setpoint whatever is drawn.
 const BEYOND: f64 = 1e5;
@@ -192,10 +192,20 @@ impl Search {
         self.reserve.0 - lowest.0 <= TOUCHES
     }
 
-    /// The current at which the touching cycle closes. A cycle is begun with the depletion that the
-    /// one before it ended with, which a search from afar leaves behind its current: so the search
-    /// is repeated from where it ended until the cycle there, its depletion its own, closes.
+    /// The current at which the touching cycle closes.
     fn touching(&mut self) -> Option<f64> {
+        let slope = 1.0 / self.amps_a_cycle();
+        if let Some(current) = rising(|x| self.gain_touching(x), 0.0, slope, tolerance) {
+            return Some(current + tolerance(current));
+        }
+        self.turn = Turn::default();
+        self.touching_in_bracket()
+    }
+
+    /// The same, between bounds. A cycle is begun with the depletion that the one before it ended
+    /// with, which a search from afar leaves behind its current: so the search is repeated from
+    /// where it ended until the cycle there, its depletion its own, closes.
+    fn touching_in_bracket(&mut self) -> Option<f64> {
         let gain = |search: &mut Search, current: f64| search.gain_touching(current);
         let mut current = self.current_for(0.0, gain)?;
         for _ in 0..MOST_SEARCHES {
@@ -330,18 +340,15 @@ impl Search {
         }
     }
 
-    /// Gain over a cycle begun where the touching cycle is lowest, with a charge and the depletion that a cycle from
-    /// there leaves.
+    /// Gain over a cycle begun where the touching cycle is lowest, with a charge. Its depletion there is that which the
+    /// last such cycle left: parking between takes away what the beginning brought.
     fn gain_from(&mut self, soc: f64) -> f64 {
-        let mut begin = Charge {
+        let begin = Charge {
             soc: Fraction(soc),
             depletion: self.turn.depletion,
         };
-        begin.depletion = self
-            .machine
-            .pass_around(self.turn.from, begin)
-            .end
-            .depletion;
-        self.machine.pass_around(self.turn.from, begin).end.soc.0 - soc
+        let passed = self.machine.pass_around(self.turn.from, begin);
+        self.turn.depletion = passed.end.depletion;
+        passed.end.soc.0 - soc
     }
 }

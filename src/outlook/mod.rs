@@ -2,6 +2,7 @@
 //! how much charge is lacking and how much is to spare.
 
 mod lacking;
+mod peak;
 mod settle;
 mod touching;
 

@@ -5,10 +5,11 @@
 //! Plain repetition is the definition ([`Machine::repeat`]); here the fixed point is found by
 //! root search, which gives the same answer in a dozen cycles.
 
+use super::peak::reaches_nought;
 use crate::battery::Charge;
 use crate::ledger::{Machine, Passed};
 use crate::quantity::Fraction;
-use crate::root::bracketed;
+use crate::root::within;
 
 /// Cycles repeated plainly before the fixed point is searched for.
 const PLAIN: u32 = 3;
@@ -17,16 +18,12 @@ const STILL: f64 = 1e-9;
 /// Where between the touching cycle (0) and the charge reached (1) a cycle that holds itself up
 /// is looked for, from the top.
 const PROBES: [f64; 6] = [0.95, 0.8, 0.6, 0.4, 0.2, 0.0];
-/// The golden section's greater part.
-const GOLDEN: f64 = 0.618_033_988_749_894_8;
-/// Width to which the peak of the gain is found.
-const PEAK: f64 = 2e-4;
 /// Most rounds of any search here; each closes in by a fixed factor or stops.
 const MOST_ROUNDS: u32 = 60;
 /// Most cycles counted one by one towards a break.
 const MOST_CYCLES: u32 = 20_000;
 /// The same where loads that drop out make the charge go up and down: it neither falls slowly nor settles late.
-const MOST_UNSTEADY: u32 = 1000;
+const MOST_UNSTEADY: u32 = 300;
 /// Share of full by which a settled cycle may go under the reserve and count as touching it.
 const UNDER: f64 = 1e-7;
 
@@ -57,8 +54,8 @@ enum Approach {
     Falls {
         /// Charge reached.
         charge: Charge,
-        /// Lowest of the cycle that led to it.
-        lowest: Fraction,
+        /// Charges looked at, lowest first, and what a cycle from each gains: all less than nothing.
+        looked_at: Vec<(f64, f64)>,
     },
     /// Loads drop out before the charge is down at the reserve, and more of it is left from a low charge than from a
     /// higher one. Only repetition tells.
@@ -68,18 +65,23 @@ enum Approach {
     },
 }
 
-/// A charge at which a cycle ends as it began.
-enum Closed {
-    /// Its cycle holds the reserve.
+/// What a search for a charge at which a cycle ends as it began comes to.
+enum Found {
+    /// One whose cycle holds the reserve.
     Holds {
         /// Charge at its beginning.
         charge: Charge,
         /// Lowest charge in it.
         lowest: Fraction,
     },
-    /// It does not.
+    /// One whose cycle does not.
     Under,
+    /// None, at these charges with what a cycle from each gains.
+    None(Vec<(f64, f64)>),
 }
+
+/// A bracket of such a charge, each end with what a cycle from it gains; or where none was found.
+type Bracket = Result<((f64, f64), (f64, f64)), Vec<(f64, f64)>>;
 
 impl Outlook {
     /// Whether it keeps up without end.
@@ -106,36 +108,13 @@ impl Machine {
     pub fn keeps_up(&self, start: Charge, reserve: Fraction) -> bool {
         match self.approach(start, reserve) {
             Approach::Decided(outlook) => outlook.keeps_up(),
-            Approach::Falls { charge, lowest } => self.held_under(charge, lowest, reserve),
+            // Without constant powers the touching cycle, which was looked at, tells all.
+            Approach::Falls { charge, looked_at } => {
+                self.has_constant_powers()
+                    && reaches_nought(&looked_at, |soc| self.gain(soc, charge).0)
+            }
             Approach::Unsteady { charge } => self.count(charge, reserve, MOST_UNSTEADY).keeps_up(),
         }
-    }
-
-    /// Whether any cycle between the one that touches the reserve and a charge reached ends no lower
-    /// than it began. The gain has one peak there; it is looked for by golden sections.
-    fn held_under(&self, charge: Charge, lowest: Fraction, reserve: Fraction) -> bool {
-        let Some(touching) = self.touching(charge, lowest, reserve) else {
-            return false;
-        };
-        let gain = |soc: f64| self.gain(soc, charge).0;
-        let (mut low, mut high) = (touching, charge.soc.0);
-        let mut inner = [high - GOLDEN * (high - low), low + GOLDEN * (high - low)];
-        let mut gains = inner.map(gain);
-        if gain(touching) >= 0.0 {
-            return true;
-        }
-        while high - low > PEAK && gains.iter().all(|g| *g < 0.0) {
-            if gains[0] > gains[1] {
-                high = inner[1];
-                inner = [high - GOLDEN * (high - low), inner[0]];
-                gains = [gain(inner[0]), gains[0]];
-            } else {
-                low = inner[0];
-                inner = [inner[1], low + GOLDEN * (high - low)];
-                gains = [gains[1], gain(inner[1])];
-            }
-        }
-        gains.iter().any(|g| *g >= 0.0)
     }
 
     /// A few cycles run, then the charge they tend to looked for.
@@ -172,11 +151,11 @@ impl Machine {
             return Approach::Unsteady { charge };
         }
         match self.fixed_point(charge, lowest, reserve, limit(charge, changes)) {
-            Some(Closed::Holds { charge, lowest }) => {
+            Found::Holds { charge, lowest } => {
                 Approach::Decided(Outlook::Settles { charge, lowest })
             }
-            Some(Closed::Under) => Approach::Unsteady { charge },
-            None => Approach::Falls { charge, lowest },
+            Found::Under => Approach::Unsteady { charge },
+            Found::None(looked_at) => Approach::Falls { charge, looked_at },
         }
     }
 
@@ -184,8 +163,9 @@ impl Machine {
     #[must_use]
     pub fn repeat(&self, start: Charge, reserve: Fraction, cycles: u32) -> Outlook {
         let mut charge = start;
-        let mut lowest = [start.soc; 2];
-        let mut before = Fraction(f64::NAN);
+        // A charge that goes up and down comes back to one it had: the one after 1, 2, 4, 8 … cycles.
+        let (mut mark, mut next_mark) = (start.soc, 1);
+        let mut lowest = start.soc;
         for cycle in 0..cycles {
             let passed = self.pass(charge, reserve);
             if let Some(shift) = passed.broke {
@@ -194,20 +174,22 @@ impl Machine {
                     begins: charge,
                 };
             }
-            // As it was one cycle ago, or two, where the charge goes up and down.
-            let as_at = |soc: Fraction| (passed.end.soc - soc).abs() < Fraction(1e-12);
-            let still = as_at(charge.soc) || as_at(before);
-            before = charge.soc;
+            let as_at = |soc: Fraction| (passed.end.soc - soc).abs() < Fraction(STILL);
+            let (still, back) = (as_at(charge.soc), as_at(mark));
             charge = passed.end;
-            lowest = [lowest[1], passed.lowest];
-            if still {
+            lowest = match still {
+                true => passed.lowest,
+                false => lowest.min(passed.lowest),
+            };
+            if still || back {
                 break;
             }
+            if cycle + 1 == next_mark {
+                (mark, lowest) = (charge.soc, charge.soc);
+                next_mark *= 2;
+            }
         }
-        Outlook::Settles {
-            charge,
-            lowest: lowest[0].min(lowest[1]),
-        }
+        Outlook::Settles { charge, lowest }
     }
 
     /// Repetition from the charge that the first cycles led to.
@@ -234,47 +216,40 @@ impl Machine {
         lowest: Fraction,
         reserve: Fraction,
         limit: Option<f64>,
-    ) -> Option<Closed> {
+    ) -> Found {
         let at = |soc: f64| self.gain(soc, charge);
         let (here, passed) = at(charge.soc.0);
-        let (low, high) = if here >= 0.0 {
-            if passed.lowest < reserve {
-                return None;
+        let near = limit.filter(|_| here < 0.0).map(|soc| (soc, at(soc)));
+        let (low, high) = match near {
+            _ if here >= 0.0 && passed.lowest < reserve => return Found::None(Vec::new()),
+            _ if here >= 0.0 => ((charge.soc.0, here), (1.0, at(1.0).0)),
+            Some((soc, (gain, passed))) if gain >= 0.0 && passed.lowest >= reserve => {
+                ((soc, gain), (charge.soc.0, here))
             }
-            ((charge.soc.0, here), (1.0, at(1.0).0))
-        } else if let Some(near) = limit
-            .map(|soc| (soc, at(soc)))
-            .filter(|(_, (gain, _))| *gain >= 0.0)
-        {
-            if near.1.1.lowest < reserve {
-                return None;
-            }
-            ((near.0, near.1.0), (charge.soc.0, here))
-        } else {
-            self.bracket_below((charge, here), lowest, reserve)?
+            _ => match self.bracket_below((charge, here), lowest, reserve) {
+                Ok(bracket) => bracket,
+                Err(looked_at) => return Found::None(looked_at),
+            },
         };
         let soc = if high.1 >= 0.0 {
             high.0
         } else {
             let ends = [low, high];
-            let gain = |x: f64| {
-                ends.iter()
-                    .find(|end| end.0 == x)
-                    .map_or_else(|| at(x).0, |end| end.1)
-            };
-            bracketed(gain, low.0, high.0, STILL).ok()?
+            let known = |x: f64| ends.iter().find(|end| end.0 == x).map(|end| end.1);
+            let gain = |x: f64| known(x).unwrap_or_else(|| at(x).0);
+            within(gain, low.0, high.0, STILL)
         };
         let (_, passed) = at(soc);
         if passed.lowest.0 < reserve.0 - UNDER {
-            return Some(Closed::Under);
+            return Found::Under;
         }
-        Some(Closed::Holds {
+        Found::Holds {
             charge: Charge {
                 soc: Fraction(soc),
                 ..passed.end
             },
             lowest: passed.lowest.max(reserve),
-        })
+        }
     }
 
     /// What a cycle begun at a charge gains, and how it passed; the depletion is that of `like`.
@@ -294,24 +269,26 @@ impl Machine {
         (charge, here): (Charge, f64),
         lowest: Fraction,
         reserve: Fraction,
-    ) -> Option<((f64, f64), (f64, f64))> {
-        let touching = self.touching(charge, lowest, reserve)?;
+    ) -> Bracket {
+        let Some(touching) = self.touching(charge, lowest, reserve) else {
+            return Err(Vec::new());
+        };
         let span = charge.soc.0 - touching;
-        let mut high = (charge.soc.0, here);
+        let mut looked_at = vec![(charge.soc.0, here)];
         let probes = if self.has_constant_powers() {
             &PROBES[..]
         } else {
             &PROBES[PROBES.len() - 1..]
         };
-        let held = probes.iter().find_map(|share| {
+        for share in probes {
             let soc = touching + share * span;
-            let gain = self.gain(soc, charge).0;
-            if gain < 0.0 {
-                high = (soc, gain);
+            let point = (soc, self.gain(soc, charge).0);
+            if point.1 >= 0.0 {
+                return Ok((point, looked_at[0]));
             }
-            (gain >= 0.0).then_some((soc, gain))
-        });
-        Some((held?, high))
+            looked_at.insert(0, point);
+        }
+        Err(looked_at)
     }
 
     /// The charge at the beginning of the cycle whose lowest charge is the reserve; none if that
