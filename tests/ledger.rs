@@ -411,3 +411,37 @@ parked: 13 h
         );
     }
 }
+
+/// A build that keeps up only because lamps drop out says so in its sentence. The machine is invented.
+#[test]
+fn what_drops_out_is_told_where_it_keeps_up() {
+    let text = "build: cart
+engine: {speeds: {idle: 1700 rpm, governed: 3300 rpm}}
+charging:
+  - winding: {open_circuit: 28.6834 V at 3600 rpm, resistance: 0.16 ohm, inductance: 0.33 mH, poles: 16}
+    rectifier: full-wave
+    regulator: {holds: 14.3 V}
+battery: {capacity: 32 Ah, cold_cranking: 290 A, type: flooded, reserve: 20 %}
+accessories:
+  - {name: lamps, draw: 13.4 A, duty: {governed: 100 %, idle: 100 %}}
+shift: [{idle: 30 min}, {governed: 2 h}]
+parked: 13 h
+";
+    let told = |text: &str| {
+        check(&made(text), Wanted::default())
+            .expect("an answer")
+            .check
+            .sentence
+    };
+    let said = told(text);
+    assert!(said.starts_with("Keeps up: "), "{said}");
+    assert!(
+        said.contains("; lamps drops out while at idle in the "),
+        "{said}"
+    );
+    let light = told(&text.replace("13.4 A", "8 A"));
+    assert!(
+        light.starts_with("Keeps up: ") && !light.contains("drops out"),
+        "{light}"
+    );
+}

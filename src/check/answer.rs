@@ -81,7 +81,8 @@ pub struct Check {
     pub lacks_a: Option<Amps>,
     /// Why no charging can help, where that is so, and the battery that would.
     pub beyond_charging: Option<String>,
-    /// What fails first when it is worked all the same, as a clause; none when it keeps up.
+    /// What fails first when it is worked all the same, as a clause; of one that keeps up, the accessory that drops out
+    /// on the way, if one does.
     pub fails: Option<String>,
     /// Put away: how long it still cranks, when to recharge.
     pub storage: Option<super::Storage>,

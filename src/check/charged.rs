@@ -86,9 +86,12 @@ fn later(build: &Build, machine: &Machine, shift: &FirstShift, wanted: Wanted) -
     })
 }
 
-/// What fails first when a build that does not keep up is worked all the same.
+/// What fails first when a build that does not keep up is worked all the same; of one that keeps up, the accessory that
+/// drops out on the way, without which it might not.
 fn fails(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<String> {
-    if ruling.verdict == Verdict::KeepsUp {
+    let keeps_up = ruling.verdict == Verdict::KeepsUp;
+    let lowest = ruling.settles.map_or(Fraction::ONE, |(_, lowest)| lowest);
+    if keeps_up && !machine.may_drop_out(lowest) {
         return None;
     }
     let course = course(
@@ -97,9 +100,10 @@ fn fails(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<String> {
         Charge::rested(build.start),
         ruling.reserve.soc,
     );
-    course
-        .clause(build)
-        .or_else(|| course.reserve_clause(build))
+    course.clause(build).or_else(|| {
+        let broken = (!keeps_up).then(|| course.reserve_clause(build));
+        broken.flatten()
+    })
 }
 
 /// What may still be drawn at every running speed at once.

@@ -20,7 +20,7 @@ pub fn sentence(
     let reserve = format!("the reserve of {}", percent(ruling.reserve.soc));
     match (ruling.verdict, ruling.settles) {
         (Verdict::KeepsUp, Some((charge, least))) => {
-            let spare = spare.map_or(String::new(), |amps| {
+            let spare = spare.filter(|_| fails.is_empty()).map_or(fails, |amps| {
                 format!("; {} to spare while the engine runs", text(amps))
             });
             let (begins, least) = (percent(charge.soc), percent(least));
