@@ -155,7 +155,12 @@ impl Machine {
             return Some((Amps(touching), search.touches(touching)));
         }
         let least = search.held_up_from_full(touching);
-        Some((Amps(search.proved(least)), true))
+        // At one speed alone it tells what is to spare there: were less current enough, that would be more.
+        let edge = match spread {
+            Spread::Everywhere => search.proved(least),
+            Spread::In(_) => least,
+        };
+        Some((Amps(edge), true))
     }
 }
 
