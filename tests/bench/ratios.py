@@ -85,15 +85,21 @@ def ratio(pairs, over, under, of=0):
 
 
 def check(folder):
-    """`check` of the forty-accessory build against `--version`, whole processes, in turn."""
-    path = os.path.join(folder, 'forty.yaml')
-    open(path, 'w').write(forty())
-    pairs = [(run([PROGRAM, '--version']), run([PROGRAM, 'check', path])) for _ in range(101)]
-    base, one = (median([p[k][0] for p in pairs]) * 1e3 for k in (0, 1))
-    times = ratio(pairs, 1, 0)
-    cores = median([p[1][1] for p in pairs]) / median([p[0][1] for p in pairs])
-    figure = f'{times:.1f} × ({one:.1f} ms for {base:.1f} ms; of the cores {cores:.1f} ×)'
-    said('check against --version', figure, 'at most 5 ×', times <= 5)
+    """`check` of the forty-accessory build against `--version`, whole processes, in turn; beside it the same with constant
+    powers of as many watts at 12 V, which the bound does not name and which take longer."""
+    powers = re.sub(r'draw: ([0-9.]+) A, duty', lambda m: f'draw: {12 * float(m[1]):.2f} W, duty', forty())
+    for name, text in {'currents': forty(), 'powers': powers}.items():
+        path = os.path.join(folder, f'forty-{name}.yaml')
+        open(path, 'w').write(text)
+        pairs = [(run([PROGRAM, '--version']), run([PROGRAM, 'check', path])) for _ in range(101)]
+        base, one = (median([p[k][0] for p in pairs]) * 1e3 for k in (0, 1))
+        times = ratio(pairs, 1, 0)
+        cores = median([p[1][1] for p in pairs]) / median([p[0][1] for p in pairs])
+        figure = f'{times:.1f} × ({one:.1f} ms for {base:.1f} ms; of the cores {cores:.1f} ×)'
+        if name == 'currents':
+            said('check against --version', figure, 'at most 5 ×', times <= 5)
+        else:
+            print(f"        {'check of constant powers':34} {figure}", flush=True)
 
 
 def instructions(folder):
