@@ -40,6 +40,7 @@ kinds! {
     K::Text(TextProblem::Syntax { .. }) => "syntax",
     K::Text(TextProblem::TooDeep) => "too deep",
     K::Text(TextProblem::TooMany) => "too many",
+    K::Text(TextProblem::TooManyAnchors) => "too many anchors",
     K::Text(TextProblem::DuplicateKey { .. }) => "duplicate key",
     K::Text(TextProblem::MergeKey) => "merge key",
     K::Text(TextProblem::KeyNotText) => "key not text",

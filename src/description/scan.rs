@@ -6,7 +6,8 @@ mod syntax;
 pub(super) use syntax::tab_near;
 
 use super::places::{Child, Content, Key, Place, Places};
-use crate::problem::{Problem, Problems, TextProblem, text::MOST_DEEP, text::MOST_VALUES};
+use crate::problem::text::{MOST_ANCHORS, MOST_DEEP, MOST_VALUES};
+use crate::problem::{Problem, Problems, TextProblem};
 use saphyr_parser::{Event, Parser, ScalarStyle, Span};
 use seen::Seen;
 use std::collections::BTreeMap;
@@ -114,6 +115,9 @@ impl<'a> Scan<'a> {
 
     fn event(&mut self, event: Event<'_>, span: Span) -> Result<(), Box<Problem>> {
         let range = self.range(span);
+        if anchor_of(&event) > MOST_ANCHORS {
+            return Err(refused(TextProblem::TooManyAnchors, range));
+        }
         match event {
             Event::DocumentStart(_) => {
                 self.documents += 1;
@@ -389,6 +393,16 @@ impl<'a> Scan<'a> {
                 }
             }
         }
+    }
+}
+
+/// The number of the anchor on a value, from 1; 0 without one.
+fn anchor_of(event: &Event<'_>) -> usize {
+    match event {
+        Event::Scalar(_, _, anchor, _)
+        | Event::SequenceStart(anchor, _)
+        | Event::MappingStart(anchor, _) => *anchor,
+        _ => 0,
     }
 }
 

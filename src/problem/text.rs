@@ -38,6 +38,8 @@ pub enum TextProblem {
     TooDeep,
     /// More values than the limit, aliases counted as often as they are used.
     TooMany,
+    /// More anchors than the limit.
+    TooManyAnchors,
     /// A key given twice in a mapping.
     DuplicateKey {
         /// The key.
@@ -64,6 +66,9 @@ pub const MOST_DEEP: usize = 64;
 /// Most values of a file: enough for 5,000 accessories with a duty by state, and few enough to be refused at once.
 pub const MOST_VALUES: u64 = 60_000;
 
+/// Most anchors of a file.
+pub const MOST_ANCHORS: usize = 1000;
+
 impl fmt::Display for TextProblem {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         use TextProblem as P;
@@ -84,6 +89,7 @@ impl fmt::Display for TextProblem {
                 f,
                 "more than {MOST_VALUES} values, aliases counted at each use"
             ),
+            P::TooManyAnchors => write!(f, "more than {MOST_ANCHORS} anchors"),
             P::DuplicateKey { key, .. } => write!(f, "`{key}` is given twice"),
             P::MergeKey => f.write_str("merge key `<<` is not understood"),
             P::KeyNotText => f.write_str("a key must be a single word or text"),
@@ -101,7 +107,7 @@ impl TextProblem {
         match self {
             P::NotUtf8 { .. } => "from here on",
             P::Tab => "a tab",
-            P::TooDeep | P::TooMany => "the limit is passed here",
+            P::TooDeep | P::TooMany | P::TooManyAnchors => "the limit is passed here",
             P::SecondDocument => "the second begins here",
             P::Tag => "a tag",
             _ => "here",
@@ -120,6 +126,7 @@ impl TextProblem {
             P::Syntax { hint, .. } => return *hint,
             P::TooDeep => "a build file needs less than ten levels",
             P::TooMany => "write the entries out, or split the build",
+            P::TooManyAnchors => "put what is repeated into a catalog part, or split the build",
             P::DuplicateKey { .. } => "keep one of the two",
             P::MergeKey => "write the keys out in each entry, or put them into a catalog part",
             P::KeyNotText => "write `key: value`",

@@ -4,7 +4,7 @@
 const ALIKE: f64 = 0.78;
 
 /// Most names that a word is held against: no hand writes more, and a message is not to be waited for.
-const MOST_COMPARED: usize = 2000;
+const MOST_COMPARED: usize = 500;
 
 /// The name most like a word, where one is.
 #[must_use]
