@@ -6,7 +6,7 @@ use ampledger::catalog::Catalogs;
 use ampledger::check::{reserve, rule_on};
 use ampledger::description::read;
 use ampledger::ledger::Machine;
-use ampledger::outlook::Spread;
+use ampledger::outlook::{Lacking, Spread};
 use ampledger::quantity::Amps;
 use ampledger::resolve::resolve;
 
@@ -141,4 +141,49 @@ fn what_is_lacking_is_enough() {
             .keeps_up()
     };
     assert!(keeps(1.0001) && !keeps(0.999), "{current:?}");
+}
+
+/// An invented machine that falls short, whose lamps drop out on the way there: with a little more charge they hold on
+/// for longer, and more of it may not be enough.
+const DROPS: &str = "\
+build: mower
+air: 13.8 °C
+engine: {speeds: {idle: 1739 rpm, governed: 3400 rpm}, starter: {draw: 150 A, time: 2.5 s}}
+charging:
+  - winding: {rated: 16.73 A at 3600 rpm, open_circuit: 28 V at 3600 rpm, resistance: 0.14 ohm, poles: 12}
+    rectifier: full-wave
+    regulator: {holds: 14.4 V}
+battery: {capacity: 30.1 Ah, cold_cranking: 380 A, type: flooded}
+accessories:
+  - {name: PTO clutch, draw: 3.1 ohm, duty: {governed: 84.6 %}}
+  - {name: work lamps, draw: 146.402406 W, duty: {idle: 100 %, governed: 100 %}}
+  - {name: beacon, draw: 1.2 A, duty: 100 %}
+  - {name: pump, draw: 6 A, duty: {governed: 30 %}}
+shift: [crank, {idle: 12 min}, {governed: 87 min}, {stopped: 20 min}, crank, {governed: 110 min}, {idle: 18 min}]
+parked: 15 h
+";
+
+#[test]
+fn what_is_lacking_where_lamps_drop_out_is_enough_from_there_on() {
+    let (description, _) = read("mower", DROPS.as_bytes()).expect("a build");
+    let build = resolve(&description, &Catalogs::builtin()).expect("complete");
+    let mut machine = Machine::new(&build).expect("a battery");
+    let reserve = reserve(&build, &machine).soc;
+    assert!(machine.may_drop_out(reserve));
+    let Lacking::Charge { current, .. } = machine.lacking(Charge::FULL, reserve) else {
+        panic!("no charging helps")
+    };
+    for (times, wanted) in [
+        (0.99, false),
+        (1.002, true),
+        (1.01, true),
+        (1.02, true),
+        (1.05, true),
+        (1.1, true),
+        (1.3, true),
+    ] {
+        machine.set_extra(times * current);
+        let kept = machine.repeat(Charge::FULL, reserve, 3000).keeps_up();
+        assert_eq!(kept, wanted, "{times} times {current:?}");
+    }
 }

@@ -38,6 +38,11 @@ const PROVED_AT_NOUGHT: f64 = 1e-4;
 /// Searches for the current of the touching cycle, each from where the last ended.
 const MOST_SEARCHES: u32 = 4;
 
+/// Times a current that is enough at which it is asked whether more is, where loads drop out.
+const FURTHER: [f64; 5] = [1.005, 1.02, 1.05, 1.1, 1.3];
+/// Times a greater current is begun with where one was not enough.
+const MOST_POCKETS: u32 = 8;
+
 /// Width to which a current of about this size is found.
 fn tolerance(current: f64) -> f64 {
     CLOSE.max(FOUND_TO * current.abs())
@@ -92,13 +97,19 @@ impl Machine {
         if hours <= Hours::ZERO {
             return Lacking::BeyondCharging;
         }
+        let steady = !self.may_drop_out(reserve);
         let current = self
             .found(reserve, Spread::Everywhere)
             .and_then(|(edge, touches)| {
-                if touches && start.soc >= Fraction::ONE && edge > Amps::ZERO {
+                if touches && steady && start.soc >= Fraction::ONE && edge > Amps::ZERO {
                     return Some(edge);
                 }
-                self.enough_from(start, reserve, edge.max(Amps::ZERO))
+                let edge = edge.max(Amps::ZERO);
+                if steady {
+                    self.enough_from(start, reserve, edge)
+                } else {
+                    self.enough_and_more(start, reserve, edge)
+                }
             });
         current.map_or(Lacking::BeyondCharging, |current| Lacking::Charge {
             charge: current * hours,
@@ -133,6 +144,27 @@ impl Machine {
             }
         };
         Some(Amps(halved(low, high, tolerance, holds)))
+    }
+
+    /// The same where loads drop out at a low charge. There the touching cycle is no proof, and a current may be enough
+    /// while a little more, with which they hold on for longer, is not: the current is one from which on it keeps up,
+    /// as far as a few greater ones tell.
+    fn enough_and_more(&self, start: Charge, reserve: Fraction, edge: Amps) -> Option<Amps> {
+        let mut machine = self.clone();
+        let mut fails = |current: f64| {
+            machine.set_extra(Amps(current));
+            !machine.keeps_up(start, reserve)
+        };
+        let mut enough = edge;
+        for _ in 0..MOST_POCKETS {
+            enough = self.enough_from(start, reserve, enough)?;
+            let greater = FURTHER.iter().map(|times| times * enough.0);
+            match greater.rev().find(|x| fails(*x)) {
+                None => break,
+                Some(not_enough) => enough = Amps(not_enough),
+            }
+        }
+        Some(enough)
     }
 
     /// The constant current on the edge of keeping up: above zero lacking, below zero to spare.
