@@ -38,8 +38,10 @@ const PROVED_AT_NOUGHT: f64 = 1e-4;
 /// Searches for the current of the touching cycle, each from where the last ended.
 const MOST_SEARCHES: u32 = 4;
 
+/// Width, as a share of the current, to which it is found where loads drop out.
+const ROUGH: f64 = 1e-3;
 /// Times a current that is enough at which it is asked whether more is, where loads drop out.
-const FURTHER: [f64; 5] = [1.005, 1.02, 1.05, 1.1, 1.3];
+const FURTHER: [f64; 3] = [1.005, 1.05, 1.3];
 /// Times a greater current is begun with where one was not enough.
 const MOST_POCKETS: u32 = 8;
 
@@ -106,7 +108,7 @@ impl Machine {
                 }
                 let edge = edge.max(Amps::ZERO);
                 if steady {
-                    self.enough_from(start, reserve, edge)
+                    self.enough_from(start, reserve, edge, true)
                 } else {
                     self.enough_and_more(start, reserve, edge)
                 }
@@ -121,7 +123,13 @@ impl Machine {
     /// charge need more, or the lowest charge lies between two points of the cycle. None where no current is enough.
     /// (A build that holds itself up at a low charge alone, because loads drop out there, has its edge at nought and
     /// breaks the reserve.)
-    fn enough_from(&self, start: Charge, reserve: Fraction, edge: Amps) -> Option<Amps> {
+    fn enough_from(
+        &self,
+        start: Charge,
+        reserve: Fraction,
+        edge: Amps,
+        steady: bool,
+    ) -> Option<Amps> {
         let mut machine = self.clone();
         let mut holds = |current: f64| {
             machine.set_extra(Amps(current));
@@ -131,6 +139,9 @@ impl Machine {
         let mut high = edge.0 + step;
         if holds(high) {
             return Some(if edge > Amps::ZERO { edge } else { Amps(high) });
+        }
+        if !steady {
+            step = ROUGH * edge.0 + CLOSE;
         }
         let low = loop {
             step *= 4.0;
@@ -143,7 +154,9 @@ impl Machine {
                 return None;
             }
         };
-        Some(Amps(halved(low, high, tolerance, holds)))
+        let rough = |current: f64| CLOSE.max(ROUGH * current.abs());
+        let width = if steady { tolerance } else { rough };
+        Some(Amps(halved(low, high, width, holds)))
     }
 
     /// The same where loads drop out at a low charge. There the touching cycle is no proof, and a current may be enough
@@ -157,7 +170,7 @@ impl Machine {
         };
         let mut enough = edge;
         for _ in 0..MOST_POCKETS {
-            enough = self.enough_from(start, reserve, enough)?;
+            enough = self.enough_from(start, reserve, enough, false)?;
             let greater = FURTHER.iter().map(|times| times * enough.0);
             match greater.rev().find(|x| fails(*x)) {
                 None => break,

@@ -15,6 +15,8 @@ use crate::root::within;
 const PLAIN: u32 = 3;
 /// Change of charge over a cycle that counts as none.
 const STILL: f64 = 1e-9;
+/// The same where a search asks and loads drop out.
+const NEARLY_STILL: f64 = 1e-6;
 /// Where between the touching cycle (0) and the charge reached (1) a cycle that holds itself up
 /// is looked for, from the top.
 const PROBES: [f64; 6] = [0.95, 0.8, 0.6, 0.4, 0.2, 0.0];
@@ -113,7 +115,9 @@ impl Machine {
                 self.has_constant_powers()
                     && reaches_nought(&looked_at, |soc| self.gain(soc, charge).0)
             }
-            Approach::Unsteady { charge } => self.count(charge, reserve, MOST_UNSTEADY).keeps_up(),
+            Approach::Unsteady { charge } => self
+                .repeated(charge, reserve, MOST_UNSTEADY, NEARLY_STILL)
+                .keeps_up(),
         }
     }
 
@@ -162,6 +166,11 @@ impl Machine {
     /// Plain repetition: the definition, for at most `cycles` cycles.
     #[must_use]
     pub fn repeat(&self, start: Charge, reserve: Fraction, cycles: u32) -> Outlook {
+        self.repeated(start, reserve, cycles, STILL)
+    }
+
+    /// The same, until a cycle changes the charge by no more than counts as none.
+    fn repeated(&self, start: Charge, reserve: Fraction, cycles: u32, none: f64) -> Outlook {
         let mut charge = start;
         // A charge that goes up and down comes back to one it had: the one after 1, 2, 4, 8 … cycles.
         let (mut mark, mut next_mark) = (start.soc, 1);
@@ -174,7 +183,7 @@ impl Machine {
                     begins: charge,
                 };
             }
-            let as_at = |soc: Fraction| (passed.end.soc - soc).abs() < Fraction(STILL);
+            let as_at = |soc: Fraction| (passed.end.soc - soc).abs() < Fraction(none);
             let (still, back) = (as_at(charge.soc), as_at(mark));
             charge = passed.end;
             lowest = match still {
