@@ -209,21 +209,15 @@ pub struct FleetArgs {
 /// `odds`.
 #[derive(Args, Debug)]
 pub struct OddsArgs {
-    /// Build file; `-` is standard input
-    #[arg(value_name = "BUILD")]
-    pub build: String,
-    /// Changes to the build.
+    /// The build.
     #[command(flatten)]
-    pub changes: BuildArgs,
+    pub of: mend::Kitted,
     /// How many builds are drawn
     #[arg(long, value_name = "COUNT", default_value_t = 4096, value_parser = clap::value_parser!(u64).range(1..=1_000_000))]
     pub runs: u64,
     /// Which sequence of draws: the same seed gives the same answer
     #[arg(long, value_name = "NUMBER", default_value_t = 1)]
     pub seed: u64,
-    /// A kit to add first, by its id or file
-    #[arg(long, value_name = "KIT")]
-    pub with: Option<String>,
     /// Write the worst draw as a build file; without a kit, which stands in no build file
     #[arg(long, value_name = "FILE.yaml", conflicts_with = "with")]
     pub worst: Option<PathBuf>,

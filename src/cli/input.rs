@@ -1,5 +1,6 @@
 //! Bytes in: build files, standard input, catalogs, values given as arguments.
 
+use super::args::mend::Kitted;
 use super::args::{BuildArgs, Common};
 use ampledger::build::Build;
 use ampledger::catalog::Catalogs;
@@ -159,15 +160,10 @@ pub fn with_kit(
 ///
 /// # Errors
 /// Those of [`build`] and [`with_kit`].
-pub fn kitted(
-    file: &str,
-    kit: Option<&String>,
-    args: &BuildArgs,
-    catalogs: &Catalogs,
-) -> anyhow::Result<Opened> {
-    let opened = build(file, args, catalogs)?;
-    match kit {
-        Some(kit) => with_kit(&opened, kit, args, catalogs),
+pub fn kitted(of: &Kitted, catalogs: &Catalogs) -> anyhow::Result<Opened> {
+    let opened = build(&of.file, &of.build, catalogs)?;
+    match &of.with {
+        Some(kit) => with_kit(&opened, kit, &of.build, catalogs),
         None => Ok(opened),
     }
 }

@@ -19,12 +19,12 @@ use std::path::Path;
 /// The build has no answer; a file cannot be written.
 pub fn run(args: &OddsArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
-    let opened = input::kitted(&args.build, args.with.as_ref(), &args.changes, &catalogs)?;
-    let air = match &args.changes.air {
+    let opened = input::kitted(&args.of, &catalogs)?;
+    let air = match &args.of.build.air {
         Some(text) => Some(input::value::<Celsius>("--air", text)?),
         None => None,
     };
-    let start = match &args.changes.start {
+    let start = match &args.of.build.start {
         Some(text) => input::value::<Fraction>("--start", text)?,
         None => Fraction::ONE,
     };

@@ -15,12 +15,7 @@ use anyhow::Context;
 /// The build has no answer; the price list does not read.
 pub fn run(args: &RemedyArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
-    let opened = input::kitted(
-        &args.of.file,
-        args.of.with.as_ref(),
-        &args.of.build,
-        &catalogs,
-    )?;
+    let opened = input::kitted(&args.of, &catalogs)?;
     let prices = input::prices(args.prices.as_ref())?;
     let asked = opened.asked(&catalogs);
     let progress = Progress::new(1, "combinations");

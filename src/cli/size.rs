@@ -15,12 +15,7 @@ use anyhow::{Context, bail};
 /// The build has no answer.
 pub fn run(args: &SizeArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
-    let opened = input::kitted(
-        &args.of.file,
-        args.of.with.as_ref(),
-        &args.of.build,
-        &catalogs,
-    )?;
+    let opened = input::kitted(&args.of, &catalogs)?;
     let asked = opened.asked(&catalogs);
     let share = share(args)?;
     let progress = Progress::new(1, "sizes");
