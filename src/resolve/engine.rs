@@ -5,7 +5,7 @@ use super::context::{Context, Layers, PRACTICE};
 use crate::battery;
 use crate::build::{Figure, Origin, Speed, Starter};
 use crate::description::path::key;
-use crate::description::{EngineText, StarterText};
+use crate::description::{EngineText, StarterText, Written};
 use crate::quantity::{Amps, Hours, Ohms, format};
 
 /// States that are no speeds.
@@ -36,7 +36,7 @@ pub(super) fn speeds(context: &mut Context, engine: &EngineText) -> Vec<Speed> {
             context.fault(rpm.path.clone(), Fault::ReservedName { name: name.clone() });
         }
     }
-    let speed = |(name, rpm): &(String, crate::description::Written<crate::quantity::Rpm>)| Speed {
+    let speed = |(name, rpm): &(String, Written<crate::quantity::Rpm>)| Speed {
         name: name.clone(),
         rpm: super::context::figure(rpm, Origin::Stated, &key("engine.speeds", name)),
     };
@@ -62,53 +62,55 @@ pub(super) fn starter(
         context.fault("engine.starter", Fault::Missing { keys: "`time`" });
     }
     let (draw, time) = (draw?, time?);
-    let starts = layers.figure(&path("starts"), |s| s.starts.as_ref());
-    let starts = context.figure_or(
-        starts,
-        path("starts"),
-        STARTS,
-        (
-            "starts in a row held in reserve",
-            STARTS.to_string(),
-            PRACTICE,
-        ),
+    let mut open = Open { context, layers };
+    let starts = (
+        "starts in a row held in reserve",
+        STARTS.to_string(),
+        PRACTICE,
     );
-    let rest = layers.figure(&path("rest"), |s| s.rest.as_ref());
-    let rest = context.figure_or(
-        rest,
-        path("rest"),
-        REST,
-        ("rest between starts", format::duration(REST), PRACTICE),
+    let rest = ("rest between starts", format::duration(REST), PRACTICE);
+    let cable = (
+        "resistance of the starter's cables",
+        format::text(CABLE),
+        PRACTICE,
     );
-    let cable = layers.figure(&path("cable"), |s| s.cable.as_ref());
-    let cable = context.figure_or(
-        cable,
-        path("cable"),
-        CABLE,
-        (
-            "resistance of the starter's cables",
-            format::text(CABLE),
-            PRACTICE,
-        ),
-    );
-    let usual = battery::Starter::new(draw.value).least_for(cells);
-    let least_volts = layers.figure(&path("least_volts"), |s| s.least_volts.as_ref());
-    let least_volts = context.figure_or(
-        least_volts,
-        path("least_volts"),
-        usual,
-        (
-            "least volts at the starter",
-            format::text(usual),
-            LEAST_VOLTS_GROUND,
-        ),
+    let least = battery::Starter::new(draw.value).least_for(cells);
+    let least_volts = (
+        "least volts at the starter",
+        format::text(least),
+        LEAST_VOLTS_GROUND,
     );
     Some(Starter {
+        starts: open.figure("starts", |s| s.starts.as_ref(), STARTS, starts),
+        rest: open.figure("rest", |s| s.rest.as_ref(), REST, rest),
+        cable: open.figure("cable", |s| s.cable.as_ref(), CABLE, cable),
+        least_volts: open.figure(
+            "least_volts",
+            |s| s.least_volts.as_ref(),
+            least,
+            least_volts,
+        ),
         draw,
         time,
-        starts,
-        rest,
-        cable,
-        least_volts,
     })
+}
+/// The starter's figures that may stay open.
+struct Open<'c, 'a, 'l> {
+    context: &'c mut Context<'a>,
+    layers: &'c Layers<'l, StarterText>,
+}
+
+impl Open<'_, '_, '_> {
+    /// A figure as written or as a part has it, else assumed: what it is, its value in words, the ground.
+    fn figure<V: Copy>(
+        &mut self,
+        key: &str,
+        of: impl Fn(&StarterText) -> Option<&Written<V>>,
+        usual: V,
+        words: (&str, String, &str),
+    ) -> Figure<V> {
+        let path = format!("engine.starter.{key}");
+        let found = self.layers.figure(&path, of);
+        self.context.figure_or(found, path, usual, words)
+    }
 }
