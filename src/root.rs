@@ -193,8 +193,8 @@ const LONGER: f64 = 8.0;
 /// ```text
 /// x'' = x' − f(x') (x' − x)/(f(x') − f(x))
 /// ```
-/// Source: secant method, textbook. `None` where it does not close in soon, or finds the function falling or far steeper than expected: then
-/// [`bracketed`] is to be asked, which always ends.
+/// Source: secant method, textbook. `None` where it does not close in soon, or finds the function falling or far steeper
+/// than expected: then [`bracketed`] is to be asked, which always ends.
 pub(crate) fn rising(
     mut f: impl FnMut(f64) -> f64,
     start: f64,

@@ -6,6 +6,7 @@
 //! the reserve, and the current sought with which it comes back to it.
 
 use super::Turn;
+use super::touching::TOUCHES;
 use crate::battery::Charge;
 use crate::build::State;
 use crate::ledger::Machine;
@@ -27,9 +28,6 @@ const CLOSED: f64 = 1e-9;
 /// Width, as a share of the current, to which it is found.
 const FOUND_TO: f64 = 2e-5;
 
-/// Share of full by which a cycle may go under the reserve and count as touching it.
-const TOUCHES: f64 = 1e-7;
-
 /// Width, as a share of the current, within which the edge of a build with constant powers is proved.
 const PROVED: f64 = 4e-3;
 /// The same of a current near nought, A.
@@ -47,7 +45,12 @@ const MOST_POCKETS: u32 = 8;
 
 /// Width to which a current of about this size is found.
 fn tolerance(current: f64) -> f64 {
-    CLOSE.max(FOUND_TO * current.abs())
+    width(current, FOUND_TO)
+}
+
+/// The same of a share of it.
+fn width(current: f64, share: f64) -> f64 {
+    CLOSE.max(share * current.abs())
 }
 
 /// The least current that holds, between one that does not and one that does, to a width that may hang on it.
@@ -108,7 +111,7 @@ impl Machine {
                 }
                 let edge = edge.max(Amps::ZERO);
                 if steady {
-                    self.enough_from(start, reserve, edge, true)
+                    self.enough_from(start, reserve, edge, FOUND_TO)
                 } else {
                     self.enough_and_more(start, reserve, edge)
                 }
@@ -121,28 +124,25 @@ impl Machine {
 
     /// The current at the edge, raised where it does not keep up from the start: where the first shifts from a lower
     /// charge need more, or the lowest charge lies between two points of the cycle. None where no current is enough.
-    /// (A build that holds itself up at a low charge alone, because loads drop out there, has its edge at nought and
+    /// It is found to a share of it. (A build that holds itself up at a low charge alone, because loads drop out there, has its edge at nought and
     /// breaks the reserve.)
     fn enough_from(
         &self,
         start: Charge,
         reserve: Fraction,
         edge: Amps,
-        steady: bool,
+        found_to: f64,
     ) -> Option<Amps> {
         let mut machine = self.clone();
         let mut holds = |current: f64| {
             machine.set_extra(Amps(current));
             machine.keeps_up(start, reserve)
         };
-        let mut step = FOUND_TO * edge.0 + CLOSE;
-        let mut high = edge.0 + step;
+        let mut high = edge.0 + FOUND_TO * edge.0 + CLOSE;
         if holds(high) {
             return Some(if edge > Amps::ZERO { edge } else { Amps(high) });
         }
-        if !steady {
-            step = ROUGH * edge.0 + CLOSE;
-        }
+        let mut step = found_to * edge.0 + CLOSE;
         let low = loop {
             step *= 4.0;
             let below = high;
@@ -154,9 +154,7 @@ impl Machine {
                 return None;
             }
         };
-        let rough = |current: f64| CLOSE.max(ROUGH * current.abs());
-        let width = if steady { tolerance } else { rough };
-        Some(Amps(halved(low, high, width, holds)))
+        Some(Amps(halved(low, high, |x| width(x, found_to), holds)))
     }
 
     /// The same where loads drop out at a low charge. There the touching cycle is no proof, and a current may be enough
@@ -170,7 +168,7 @@ impl Machine {
         };
         let mut enough = edge;
         for _ in 0..MOST_POCKETS {
-            enough = self.enough_from(start, reserve, enough, false)?;
+            enough = self.enough_from(start, reserve, enough, ROUGH)?;
             let greater = FURTHER.iter().map(|times| times * enough.0);
             match greater.rev().find(|x| fails(*x)) {
                 None => break,

@@ -1,15 +1,17 @@
 //! Where the charge settles when the cycle is repeated without end, or when it breaks.
 //!
 //! The charge at the beginning of a cycle maps to that at its end: s' = F(s). F rises with s, so
-//! from a full battery the charges fall to the greatest fixed point of F, or through the reserve.
+//! from a full battery the charges fall to the greatest fixed point of F, or through the reserve;
+//! where loads drop out at a low charge it need not rise, and repetition itself decides.
 //! Plain repetition is the definition ([`Machine::repeat`]); here the fixed point is found by
 //! root search, which gives the same answer in a dozen cycles.
 
 use super::peak::reaches_nought;
+use super::touching::TOUCHES;
 use crate::battery::Charge;
 use crate::ledger::{Machine, Passed};
 use crate::quantity::Fraction;
-use crate::root::within;
+use crate::root::bracketed;
 
 /// Cycles repeated plainly before the fixed point is searched for.
 const PLAIN: u32 = 3;
@@ -26,8 +28,6 @@ const MOST_ROUNDS: u32 = 60;
 const MOST_CYCLES: u32 = 20_000;
 /// The same where loads that drop out make the charge go up and down: it neither falls slowly nor settles late.
 const MOST_UNSTEADY: u32 = 300;
-/// Share of full by which a settled cycle may go under the reserve and count as touching it.
-const UNDER: f64 = 1e-7;
 
 /// What repeating the cycle without end comes to.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -240,16 +240,18 @@ impl Machine {
                 Err(looked_at) => return Found::None(looked_at),
             },
         };
-        let soc = if high.1 >= 0.0 {
-            high.0
-        } else {
-            let ends = [low, high];
-            let known = |x: f64| ends.iter().find(|end| end.0 == x).map(|end| end.1);
-            let gain = |x: f64| known(x).unwrap_or_else(|| at(x).0);
-            within(gain, low.0, high.0, STILL)
+        let ends = [low, high];
+        let known = |x: f64| ends.iter().find(|end| end.0 == x).map(|end| end.1);
+        let gain = |x: f64| known(x).unwrap_or_else(|| at(x).0);
+        let found = match high.1 >= 0.0 {
+            true => Ok(high.0),
+            false => bracketed(gain, low.0, high.0, STILL),
+        };
+        let Ok(soc) = found else {
+            return Found::None(Vec::new());
         };
         let (_, passed) = at(soc);
-        if passed.lowest.0 < reserve.0 - UNDER {
+        if passed.lowest.0 < reserve.0 - TOUCHES {
             return Found::Under;
         }
         Found::Holds {

@@ -8,6 +8,8 @@ use crate::battery::Charge;
 use crate::ledger::Machine;
 use crate::quantity::Fraction;
 
+/// Share of full by which a cycle may go under the reserve and count as touching it.
+pub(super) const TOUCHES: f64 = 1e-7;
 /// Times the lowest point of the cycle is looked for anew.
 const MOST_TURNS: u32 = 4;
 

@@ -41,18 +41,16 @@ pub(super) struct Margin<'b> {
 impl<'b> Margin<'b> {
     /// Of a build and the machine made of it.
     pub(super) fn new(build: &'b Build, machine: Machine) -> Margin<'b> {
+        let reserve = reserve(build, &machine).soc;
+        let holds_on = !machine.may_drop_out(reserve.min(Fraction::ONE));
         let mut margin = Margin {
-            reserve: reserve(build, &machine).soc,
-            decides: false,
+            reserve,
+            decides: build.start >= Fraction::ONE && holds_on,
             build,
             machine,
             turn: Turn::default(),
             now: 0.0,
         };
-        margin.decides = build.start >= Fraction::ONE
-            && !margin
-                .machine
-                .may_drop_out(margin.reserve.min(Fraction::ONE));
         let machine = margin.machine.clone();
         // Twice: the second begins at the cycle's lowest point as the first found it.
         margin.gain(&machine, margin.reserve);
