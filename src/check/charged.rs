@@ -100,10 +100,10 @@ fn fails(build: &Build, machine: &Machine, ruling: &Ruling) -> Option<String> {
         Charge::rested(build.start),
         ruling.reserve.soc,
     );
-    course.clause(build).or_else(|| {
-        let broken = (!keeps_up).then(|| course.reserve_clause(build));
-        broken.flatten()
-    })
+    match course.clause(build) {
+        None if !keeps_up => course.reserve_clause(build),
+        clause => clause,
+    }
 }
 
 /// What may still be drawn at every running speed at once.
