@@ -367,6 +367,24 @@ fn more_speed_never_lowers_what_the_source_gives() {
     }
 }
 
+/// An invented cart: open-circuit volts of its winding, amps of its lamps, its reserve in per cent.
+fn lamps_that_drop_out(open: f64, lamps: f64, reserve: u32) -> String {
+    format!(
+        "build: cart
+engine: {{speeds: {{idle: 1700 rpm, governed: 3300 rpm}}}}
+charging:
+  - winding: {{open_circuit: {open} V at 3600 rpm, resistance: 0.16 ohm, inductance: 0.33 mH, poles: 16}}
+    rectifier: full-wave
+    regulator: {{holds: 14.3 V}}
+battery: {{capacity: 32 Ah, cold_cranking: 290 A, type: flooded, reserve: {reserve} %}}
+accessories:
+  - {{name: lamps, draw: {lamps} A, duty: {{governed: 100 %, idle: 100 %}}}}
+shift: [{{idle: 30 min}}, {{governed: 2 h}}]
+parked: 13 h
+"
+    )
+}
+
 /// Lamps that drop out at a low charge leave more of it than is left from a higher one, so that the charge goes up and
 /// down before it settles. A lower reserve still asks no more, the fast way says what the full verdict says, and both
 /// what plain repetition comes to. The machine is invented.
@@ -378,20 +396,7 @@ fn loads_that_drop_out_do_not_turn_the_verdict_back() {
         (28.2484, 13.1),
         (27.3241, 12.5),
     ] {
-        let text = format!(
-            "build: cart
-engine: {{speeds: {{idle: 1700 rpm, governed: 3300 rpm}}}}
-charging:
-  - winding: {{open_circuit: {open} V at 3600 rpm, resistance: 0.16 ohm, inductance: 0.33 mH, poles: 16}}
-    rectifier: full-wave
-    regulator: {{holds: 14.3 V}}
-battery: {{capacity: 32 Ah, cold_cranking: 290 A, type: flooded, reserve: 55 %}}
-accessories:
-  - {{name: lamps, draw: {lamps} A, duty: {{governed: 100 %, idle: 100 %}}}}
-shift: [{{idle: 30 min}}, {{governed: 2 h}}]
-parked: 13 h
-"
-        );
+        let text = lamps_that_drop_out(open, lamps, 55);
         let build = made(&text);
         let machine = Machine::new(&build).expect("a battery");
         let mut kept = true;
@@ -415,25 +420,14 @@ parked: 13 h
 /// A build that keeps up only because lamps drop out says so in its sentence. The machine is invented.
 #[test]
 fn what_drops_out_is_told_where_it_keeps_up() {
-    let text = "build: cart
-engine: {speeds: {idle: 1700 rpm, governed: 3300 rpm}}
-charging:
-  - winding: {open_circuit: 28.6834 V at 3600 rpm, resistance: 0.16 ohm, inductance: 0.33 mH, poles: 16}
-    rectifier: full-wave
-    regulator: {holds: 14.3 V}
-battery: {capacity: 32 Ah, cold_cranking: 290 A, type: flooded, reserve: 20 %}
-accessories:
-  - {name: lamps, draw: 13.4 A, duty: {governed: 100 %, idle: 100 %}}
-shift: [{idle: 30 min}, {governed: 2 h}]
-parked: 13 h
-";
+    let text = lamps_that_drop_out(28.6834, 13.4, 20);
     let told = |text: &str| {
         check(&made(text), Wanted::default())
             .expect("an answer")
             .check
             .sentence
     };
-    let said = told(text);
+    let said = told(&text);
     assert!(said.starts_with("Keeps up: "), "{said}");
     assert!(
         said.contains("; lamps drops out while at idle in the "),

@@ -2,6 +2,7 @@
 //! little less it does not.
 
 use ampledger::battery::Charge;
+use ampledger::build::Build;
 use ampledger::catalog::Catalogs;
 use ampledger::check::{reserve, rule_on};
 use ampledger::description::read;
@@ -23,6 +24,14 @@ shift: [crank, {idle: 30 min}, {governed: 150 min}, {stopped: 18 min}, {governed
 parked: 14 h
 ";
 
+/// A build, and the machine made ready of it.
+fn made(text: &str) -> (Build, Machine) {
+    let (description, _) = read("made", text.as_bytes()).expect("a build");
+    let build = resolve(&description, &Catalogs::builtin()).expect("complete");
+    let machine = Machine::new(&build).expect("a battery");
+    (build, machine)
+}
+
 #[test]
 fn the_edge_divides_whatever_the_load() {
     let mut wrong = Vec::new();
@@ -38,9 +47,7 @@ fn the_edge_divides_whatever_the_load() {
                 // Lower down the lamps of constant power drop out on the way, which saves the battery.
                 text = text.replace("flooded}", "flooded, reserve: 60 %}");
             }
-            let (description, _) = read("cart", text.as_bytes()).expect("a build");
-            let build = resolve(&description, &Catalogs::builtin()).expect("complete");
-            let mut machine = Machine::new(&build).expect("a battery");
+            let (build, mut machine) = made(&text);
             let reserve = reserve(&build, &machine).soc;
             let edge = machine
                 .edge(reserve, Spread::Everywhere)
@@ -89,9 +96,7 @@ accessories:
 shift: [{idle: 126.3 min}]
 parked: 0 h
 ";
-    let (description, _) = read("cart", text.as_bytes()).expect("a build");
-    let build = resolve(&description, &Catalogs::builtin()).expect("complete");
-    let mut machine = Machine::new(&build).expect("a battery");
+    let (build, mut machine) = made(text);
     let reserve = reserve(&build, &machine).soc;
     let edge = machine
         .edge(reserve, Spread::Everywhere)
@@ -128,9 +133,7 @@ parked: 65.35 h
 
 #[test]
 fn what_is_lacking_is_enough() {
-    let (description, _) = read("between", BETWEEN_POINTS.as_bytes()).expect("a build");
-    let build = resolve(&description, &Catalogs::builtin()).expect("complete");
-    let machine = Machine::new(&build).expect("a battery");
+    let (build, machine) = made(BETWEEN_POINTS);
     let ruling = rule_on(&build, &machine).expect("a ruling");
     let current = ruling.lacks_current.expect("charging helps");
     let keeps = |times: f64| {
@@ -165,9 +168,7 @@ parked: 15 h
 
 #[test]
 fn what_is_lacking_where_lamps_drop_out_is_enough_from_there_on() {
-    let (description, _) = read("mower", DROPS.as_bytes()).expect("a build");
-    let build = resolve(&description, &Catalogs::builtin()).expect("complete");
-    let mut machine = Machine::new(&build).expect("a battery");
+    let (build, mut machine) = made(DROPS);
     let reserve = reserve(&build, &machine).soc;
     assert!(machine.may_drop_out(reserve));
     let Lacking::Charge { current, .. } = machine.lacking(Charge::FULL, reserve) else {
