@@ -138,7 +138,7 @@ impl Machine {
             machine.set_extra(Amps(current));
             machine.keeps_up(start, reserve)
         };
-        let mut high = edge.0 + FOUND_TO * edge.0 + CLOSE;
+        let mut high = edge.0 + (FOUND_TO * edge.0 + CLOSE);
         if holds(high) {
             return Some(if edge > Amps::ZERO { edge } else { Amps(high) });
         }
