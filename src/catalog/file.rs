@@ -2,7 +2,7 @@
 
 use super::{Certainty, Entry, Kind, Origin};
 use crate::description::path;
-use crate::description::{open_text, second_reader};
+use crate::description::{open_text, refused};
 use crate::problem::{Problem, Problems, Refusal, SenseProblem, Shape, ShapeProblem, Source};
 use serde_yaml::{Mapping, Value};
 use std::collections::BTreeMap;
@@ -17,7 +17,7 @@ pub(super) fn entries(file: &Path, bytes: &[u8]) -> Result<Vec<Entry>, Refusal> 
     let top: Value = match serde_yaml::from_str(&source.text) {
         Ok(top) => top,
         Err(e) => {
-            problems.push(second_reader(&source.text, &e));
+            problems.push(refused(&source.text, &e));
             return Err(Refusal::new(source, problems));
         }
     };
@@ -128,7 +128,7 @@ impl Found<'_> {
             Err(e) => {
                 return self
                     .problems
-                    .push(Problem::whole(second_reader(&self.source.text, &e).kind));
+                    .push(Problem::whole(refused(&self.source.text, &e).kind));
             }
         };
         let line = self.source.line_of(&place);

@@ -66,27 +66,25 @@ pub fn build(file: &str, args: &BuildArgs, catalogs: &Catalogs) -> anyhow::Resul
     if let Some(text) = &args.air {
         description.set_air(value::<Celsius>("--air", text)?);
     }
-    let build = resolved(&description, &source, args, catalogs)?;
-    Ok(Opened {
-        own: description.accessories.len(),
-        description,
-        source,
-        build,
-    })
+    let own = description.accessories.len();
+    resolved(description, source, own, args, catalogs)
 }
 
-/// Resolves a description, with the start as the arguments have it.
+/// Resolves a description, with the start as the arguments have it; `own` of its accessories stand in the file.
 ///
 /// # Errors
 /// [`Refusal`]; arguments that are no values.
 fn resolved(
-    description: &Description,
-    source: &Source,
+    description: Description,
+    source: Source,
+    own: usize,
     args: &BuildArgs,
     catalogs: &Catalogs,
-) -> anyhow::Result<Build> {
-    let mut build = resolve::resolve(description, catalogs)
-        .map_err(|problems| Refusal::new(source.clone(), problems))?;
+) -> anyhow::Result<Opened> {
+    let mut build = match resolve::resolve(&description, catalogs) {
+        Ok(build) => build,
+        Err(problems) => return Err(Refusal::new(source, problems).into()),
+    };
     if let Some(text) = &args.start {
         let charge = value::<Fraction>("--start", text)?;
         if !(0.0..=1.0).contains(&charge.0) {
@@ -96,7 +94,12 @@ fn resolved(
         }
         build = build.starting_at(charge);
     }
-    Ok(build)
+    Ok(Opened {
+        description,
+        source,
+        build,
+        own,
+    })
 }
 
 /// A refused file with the parts that are in no catalog among its problems, so that all is told at once.
@@ -147,13 +150,13 @@ pub fn with_kit(
 ) -> anyhow::Result<Opened> {
     let kit = resolve::find_kit(catalogs, kit)?;
     let description = resolve::with_kit(&opened.description, &kit);
-    let build = resolved(&description, &opened.source, args, catalogs)?;
-    Ok(Opened {
+    resolved(
         description,
-        source: opened.source.clone(),
-        build,
-        own: opened.own,
-    })
+        opened.source.clone(),
+        opened.own,
+        args,
+        catalogs,
+    )
 }
 
 /// The build of a file, with a kit's accessories added where one is named.

@@ -13,17 +13,20 @@ pub mod places;
 pub(crate) mod raw;
 mod read;
 mod scan;
+mod second;
 pub mod set;
+mod values;
 
 pub use accessory::{AccessoryText, DrawText, DutyText, InrushText, LawName, WorksText};
 pub use charging::{
     AlternatorText, ChargingText, RatedText, ReadingText, RectifierText, RegulatorText, WindingText,
 };
+pub(crate) use read::open_text;
 pub use read::{
     bytes_of, bytes_within, read, read_accessory, read_battery, read_charging, read_file,
     read_fleet, read_kit, read_prices, read_set, read_starter,
 };
-pub(crate) use read::{open_text, second_reader};
+pub(crate) use second::refused;
 pub use set::Assignment;
 
 pub(crate) use lower::words;

@@ -6,9 +6,9 @@ use super::raw::{self, Map};
 use super::set::{self, Assignment};
 use super::{
     AccessoryText, BatteryText, ChargingText, Description, KitText, PricesText, StarterText, open,
-    scan,
+    scan, second,
 };
-use crate::problem::{FileProblem, Problem, Problems, Refusal, Source, TextProblem};
+use crate::problem::{FileProblem, Problem, Problems, Refusal, Source};
 use serde::de::DeserializeOwned;
 use std::path::Path;
 
@@ -190,7 +190,7 @@ impl<T> Outcome<T> {
     }
 }
 
-/// Text and places to typed values, by serde's reading of the same text.
+/// Text and places to typed values. A text that only the first of the two readers accepts is refused.
 fn lowered<R: DeserializeOwned, T>(
     source: Source,
     mut problems: Problems,
@@ -198,13 +198,18 @@ fn lowered<R: DeserializeOwned, T>(
 ) -> Outcome<T> {
     let mut value = None;
     if !problems.more() {
-        match serde_yaml::from_str(&source.text) {
-            Ok(root) => {
-                let mut low = Lower::new(&source.text, &source.places);
-                value = lower(&mut low, &root);
-                problems.append(low.problems);
+        let places = &source.places;
+        let (read, refused) = second::beside(&source.text, source.places.value(), || {
+            let mut low = Lower::new(places);
+            let root = low.read(places.value());
+            (lower(&mut low, &root), low.problems)
+        });
+        match refused {
+            Some(refused) => problems.push(refused),
+            None => {
+                value = read.0;
+                problems.append(read.1);
             }
-            Err(e) => problems.push(second_reader(&source.text, &e)),
         }
     }
     Outcome {
@@ -212,26 +217,4 @@ fn lowered<R: DeserializeOwned, T>(
         source,
         problems,
     }
-}
-
-/// What only the second reader refuses: bad indentation within quotes and brackets, for the most part.
-pub(crate) fn second_reader(text: &str, e: &serde_yaml::Error) -> Problem {
-    let at = e.location().map_or(0, |l| l.index().min(text.len()));
-    let at = (0..=at)
-        .rev()
-        .find(|i| text.is_char_boundary(*i))
-        .unwrap_or(0);
-    let end = text[at..].chars().next().map_or(at, |c| at + c.len_utf8());
-    if let Some(tab) = scan::tab_near(text, at) {
-        return Problem::text(TextProblem::Tab, tab);
-    }
-    let what = e.to_string();
-    let what = what
-        .split(" at line ")
-        .next()
-        .unwrap_or(&what)
-        .replace('`', "\"");
-    let hint = Some("check the indentation and the brackets of this line");
-    let opened = None;
-    Problem::text(TextProblem::Syntax { what, hint, opened }, at..end)
 }

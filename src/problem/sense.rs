@@ -2,6 +2,7 @@
 
 use super::words::{any_of, list, nearest};
 use std::fmt;
+use std::sync::Arc;
 
 /// Values of one file that do not fit each other.
 #[derive(Clone, Debug, PartialEq, Eq)]
@@ -38,8 +39,8 @@ pub enum SenseProblem {
     UnknownAccessory {
         /// As written.
         found: String,
-        /// Those that there are.
-        names: Vec<String>,
+        /// Those that there are, shared by all problems of a file.
+        names: Arc<[String]>,
     },
     /// An accessory together with or apart from itself.
     WithItself {

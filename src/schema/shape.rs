@@ -1,6 +1,6 @@
 //! What serde's nodes are in a schema: a list is an array of its entries, a mapping the object of its keys.
 
-use crate::description::raw::node::{Keys, Names, Node, Refused};
+use crate::description::raw::node::{Keys, Names, Node, Refused, Unread};
 use schemars::{JsonSchema, Schema, SchemaGenerator, json_schema};
 use std::borrow::Cow;
 
@@ -15,7 +15,7 @@ impl<T: JsonSchema> JsonSchema for Node<Refused, Keys<T>> {
 }
 
 /// A list is an array of its entries.
-impl<T: JsonSchema> JsonSchema for Node<Vec<T>, Refused> {
+impl<T: JsonSchema> JsonSchema for Node<Unread<T>, Refused> {
     fn schema_name() -> Cow<'static, str> {
         format!("List of {}", T::schema_name()).into()
     }

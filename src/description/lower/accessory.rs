@@ -37,12 +37,10 @@ impl Lower<'_> {
         node: &List<Map<raw::Accessory>>,
         at: &str,
     ) -> Vec<AccessoryText> {
-        let entries = self.list(node, at).unwrap_or_default();
-        let mut out = Vec::with_capacity(entries.len());
-        let mut entries = entries.iter().enumerate();
-        while let Some((i, entry)) = self.looked_at(&mut entries) {
-            let at = path::index(at, i);
-            let Some(raw) = self.map(entry, &at) else {
+        let mut entries = self.list(node, at);
+        let mut out = Vec::new();
+        while let Some((at, entry)) = self.entry(&mut entries) {
+            let Some(raw) = self.map(&entry, &at) else {
                 continue;
             };
             if raw.part.is_absent() {
@@ -185,11 +183,11 @@ impl Lower<'_> {
         }
         let path = path::key(at, key);
         match node {
-            Node::List(entries) => {
-                let mut entries = entries.iter().enumerate();
+            Node::List(_) => {
+                let mut entries = self.list(node, &path);
                 let mut out = Vec::new();
-                while let Some((i, leaf)) = self.looked_at(&mut entries) {
-                    out.extend(self.name_at(path::index(&path, i), leaf));
+                while let Some((path, leaf)) = self.entry(&mut entries) {
+                    out.extend(self.name_at(path, &leaf));
                 }
                 out
             }

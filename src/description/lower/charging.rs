@@ -37,14 +37,9 @@ impl Lower<'_> {
             self.missing("", "charging", "charging: []");
         }
         let mut out = Vec::new();
-        for (i, entry) in self
-            .list(node, "charging")
-            .unwrap_or_default()
-            .iter()
-            .enumerate()
-        {
-            let at = path::index("charging", i);
-            if let Some(raw) = self.map(entry, &at) {
+        let mut entries = self.list(node, "charging");
+        while let Some((at, entry)) = self.entry(&mut entries) {
+            if let Some(raw) = self.map(&entry, &at) {
                 out.push(self.charging(raw, &at));
             }
         }
@@ -176,9 +171,9 @@ impl Lower<'_> {
 
     fn readings(&mut self, node: &List<Map<raw::Reading>>, at: String) -> Vec<ReadingText> {
         let mut out = Vec::new();
-        for (i, row) in self.list(node, &at).unwrap_or_default().iter().enumerate() {
-            let path = path::index(&at, i);
-            let Some(raw) = self.map(row, &path) else {
+        let mut rows = self.list(node, &at);
+        while let Some((path, row)) = self.entry(&mut rows) {
+            let Some(raw) = self.map(&row, &path) else {
                 continue;
             };
             for (key, leaf, example) in [
@@ -236,14 +231,9 @@ impl Lower<'_> {
     fn alternator(&mut self, raw: &raw::Alternator, at: &str) -> AlternatorText {
         let curve = path::key(at, "curve");
         let mut rows: Vec<crate::description::Written<(Amps, crate::quantity::Rpm)>> = Vec::new();
-        for (i, leaf) in self
-            .list(&raw.curve, &curve)
-            .unwrap_or_default()
-            .iter()
-            .enumerate()
-        {
-            let path = path::index(&curve, i);
-            let Some(text) = self.name_at(path.clone(), leaf) else {
+        let mut points = self.list(&raw.curve, &curve);
+        while let Some((path, leaf)) = self.entry(&mut points) {
+            let Some(text) = self.name_at(path.clone(), &leaf) else {
                 continue;
             };
             let Some(measured) = self.curve_row(&text.value, &path) else {

@@ -1,6 +1,6 @@
 //! `engine:` and `shift:`.
 
-use super::Lower;
+use super::{Entries, Lower};
 use crate::description::raw::{self, Leaf, List, Map, Named, Node};
 use crate::description::{EngineText, StarterText, StepText, Written, path};
 use crate::problem::{Problem, SenseProblem};
@@ -73,16 +73,13 @@ impl Lower<'_> {
         if node.is_absent() {
             self.missing("", "shift", "shift: [crank, {governed: 1 h 35 min}]");
         }
-        let Some(steps) = self.list(node, "shift") else {
-            return Vec::new();
-        };
-        if steps.is_empty() {
+        let mut steps = self.list(node, "shift");
+        if steps.as_ref().is_some_and(Entries::is_empty) {
             self.problem(Problem::value("shift", SenseProblem::EmptyShift));
         }
-        let mut steps = steps.iter().enumerate();
         let mut out = Vec::new();
-        while let Some((i, step)) = self.looked_at(&mut steps) {
-            out.extend(self.step(step, path::index("shift", i)));
+        while let Some((at, step)) = self.entry(&mut steps) {
+            out.extend(self.step(&step, at));
         }
         out
     }

@@ -4,6 +4,7 @@ use super::Lower;
 use crate::description::{AccessoryText, DutyText, EngineText, MayText, StepText, Written};
 use crate::problem::{Problem, SenseProblem};
 use std::collections::{BTreeMap, BTreeSet};
+use std::sync::Arc;
 
 impl Lower<'_> {
     /// States of steps and duties, names of accessories.
@@ -60,7 +61,7 @@ impl Lower<'_> {
     }
 
     /// Each name once; gives what entries may be called by.
-    fn unique_names(&mut self, accessories: &[AccessoryText]) -> Vec<String> {
+    fn unique_names(&mut self, accessories: &[AccessoryText]) -> Arc<[String]> {
         let mut first: BTreeMap<&str, &str> = BTreeMap::new();
         let mut names = Vec::new();
         for accessory in accessories {
@@ -79,11 +80,11 @@ impl Lower<'_> {
                 names.push(part.value.clone());
             }
         }
-        names
+        names.into()
     }
 
     /// `together` and `apart` name other accessories, and not the same one.
-    fn company(&mut self, accessories: &[AccessoryText], names: &[String]) {
+    fn company(&mut self, accessories: &[AccessoryText], names: &Arc<[String]>) {
         // a part without a name of its own is called by its catalog title, which is not known here
         let all_named = accessories.iter().all(|a| a.name.is_some());
         let known: BTreeSet<&str> = names.iter().map(String::as_str).collect();
@@ -127,11 +128,11 @@ impl Lower<'_> {
         found: &str,
         mark: fn(String, SenseProblem) -> Problem,
         path: &str,
-        names: &[String],
+        names: &Arc<[String]>,
     ) {
         let problem = SenseProblem::UnknownAccessory {
             found: found.to_owned(),
-            names: names.to_vec(),
+            names: names.clone(),
         };
         self.problem(mark(path.to_owned(), problem));
     }
@@ -142,7 +143,7 @@ impl Lower<'_> {
         may: &MayText,
         speeds: &[String],
         accessories: &[AccessoryText],
-        names: &[String],
+        names: &Arc<[String]>,
     ) {
         for (name, rpm) in &may.speeds {
             if !speeds.contains(name) {

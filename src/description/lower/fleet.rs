@@ -23,11 +23,11 @@ impl Lower<'_> {
                 }
             }
         }
-        let entries = self.list(&raw.machines, "machines").unwrap_or_default();
-        let entries = entries.iter().enumerate();
-        let machines = entries
-            .filter_map(|(i, entry)| self.machine(entry, path::index("machines", i)))
-            .collect();
+        let mut entries = self.list(&raw.machines, "machines");
+        let mut machines = Vec::new();
+        while let Some((at, entry)) = self.entry(&mut entries) {
+            machines.extend(self.machine(&entry, at));
+        }
         Some(FleetText {
             fleet: self.name("", "fleet", &raw.fleet),
             kits: self.names(&raw.kits, "", "kits"),

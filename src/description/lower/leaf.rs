@@ -8,7 +8,6 @@ use crate::quantity::Fraction;
 use crate::quantity::bounds::Bounds;
 use crate::quantity::parse::{self, Measured, ParseError};
 use crate::quantity::unit::Unit;
-use std::borrow::Cow;
 
 /// A list of words and what each means.
 pub(super) type Words<T> = [(&'static str, T)];
@@ -29,7 +28,7 @@ impl Lower<'_> {
         key: &str,
         node: &'n Node<L, M>,
         wanted: &'static str,
-    ) -> Option<(Cow<'n, str>, String)> {
+    ) -> Option<(&'n str, String)> {
         if matches!(node, Node::Absent) {
             return None;
         }
@@ -42,14 +41,9 @@ impl Lower<'_> {
         path: String,
         node: &'n Node<L, M>,
         wanted: &'static str,
-    ) -> Option<(Cow<'n, str>, String)> {
+    ) -> Option<(&'n str, String)> {
         match node {
-            Node::Text(text) => Some((Cow::Borrowed(text), path)),
-            Node::Plain => {
-                let found = self.places.find(&path)?;
-                let text = self.text.get(found.value)?.to_owned();
-                Some((Cow::Owned(text), path))
-            }
+            Node::Text(text) => Some((text, path)),
             other => {
                 self.wrong_shape(other, &path, wanted);
                 None
@@ -67,8 +61,8 @@ impl Lower<'_> {
         read: impl FnOnce(&str) -> Result<T, ParseError>,
     ) -> Option<(T, String, String)> {
         let (text, path) = self.single(at, key, node, wanted)?;
-        match read(&text) {
-            Ok(value) => Some((value, text.into_owned(), path)),
+        match read(text) {
+            Ok(value) => Some((value, text.to_owned(), path)),
             Err(e) => {
                 self.not_read(path, e);
                 None
@@ -130,9 +124,9 @@ impl Lower<'_> {
         bounds: &Bounds<T>,
     ) -> Option<Written<T>> {
         let (text, path) = self.at_path(path, node, T::DIMENSION.noun())?;
-        match parse::parse::<T>(&text) {
+        match parse::parse::<T>(text) {
             Ok(measured) => {
-                self.bounded(&path, &text, measured.value, bounds)?;
+                self.bounded(&path, text, measured.value, bounds)?;
                 Some(written(measured, path))
             }
             Err(e) => {
@@ -232,7 +226,7 @@ impl Lower<'_> {
         self.not_empty(text, path)
     }
 
-    fn not_empty(&mut self, text: Cow<'_, str>, path: String) -> Option<Written<String>> {
+    fn not_empty(&mut self, text: &str, path: String) -> Option<Written<String>> {
         let name = text.trim();
         if name.is_empty() {
             self.problem(Problem::value(path, ValueProblem::EmptyName));

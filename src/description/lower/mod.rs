@@ -20,14 +20,17 @@ pub(crate) mod words {
 use super::path;
 use super::places::Places;
 use super::raw::{self, Keys, List, Map, Named, Node};
+use super::values::{Value, Values};
 use super::{Description, Written};
 use crate::problem::words::nearest;
-use crate::problem::{MOST_KEPT, Problem, Problems, Shape, ShapeProblem};
+use crate::problem::{MOST_KEPT, Problem, Problems, Shape, ShapeProblem, TextProblem};
+use serde::Deserialize;
 use std::collections::BTreeMap;
+use std::iter::Enumerate;
+use std::marker::PhantomData;
 
 /// What lowering reads beside the raw keys, and the problems found so far.
 pub(super) struct Lower<'a> {
-    text: &'a str,
     places: &'a Places,
     /// Mappings with a misspelt key, and the key that was meant.
     misspelt: BTreeMap<String, Vec<&'static str>>,
@@ -35,11 +38,25 @@ pub(super) struct Lower<'a> {
     pub(super) problems: Problems,
 }
 
+/// The entries of a list that are yet to be read.
+struct Entries<'a, T> {
+    /// Path of the list.
+    list: String,
+    values: Enumerate<Values<'a>>,
+    each: PhantomData<T>,
+}
+
+impl<T> Entries<'_, T> {
+    /// Whether none is left.
+    fn is_empty(&self) -> bool {
+        self.values.size_hint().1 == Some(0)
+    }
+}
+
 impl<'a> Lower<'a> {
     /// Begins with nothing wrong.
-    pub(super) fn new(text: &'a str, places: &'a Places) -> Self {
+    pub(super) fn new(places: &'a Places) -> Self {
         Lower {
-            text,
             places,
             misspelt: BTreeMap::new(),
             problems: Problems::default(),
@@ -87,7 +104,7 @@ impl<'a> Lower<'a> {
                 }
                 return;
             }
-            Node::Text(_) | Node::Plain => Shape::Single,
+            Node::Text(_) => Shape::Single,
             Node::List(_) => Shape::List,
             Node::Mapping(_) => Shape::Mapping,
         };
@@ -127,15 +144,39 @@ impl<'a> Lower<'a> {
         }
     }
 
-    /// The entries of a list, where one stands.
-    fn list<'k, T>(&mut self, node: &'k List<T>, path: &str) -> Option<&'k [T]> {
+    /// The entries of a list, where one stands; each is read by [`Lower::entry`].
+    fn list<T>(&mut self, node: &List<T>, path: &str) -> Option<Entries<'a, T>> {
         match node {
-            Node::List(entries) => Some(entries),
+            Node::List(_) => Some(Entries {
+                list: path.to_owned(),
+                values: self.places.values(path).enumerate(),
+                each: PhantomData,
+            }),
             other => {
                 self.wrong_shape(other, path, "a list");
                 None
             }
         }
+    }
+
+    /// The next entry of a list and its path, until more is wrong than is kept.
+    fn entry<T>(&mut self, entries: &mut Option<Entries<'a, T>>) -> Option<(String, T)>
+    where
+        T: Deserialize<'a> + Default,
+    {
+        let entries = entries.as_mut()?;
+        let (index, value) = self.looked_at(&mut entries.values)?;
+        Some((path::index(&entries.list, index), self.read(value)))
+    }
+
+    /// A value in the shape its key has room for.
+    pub(super) fn read<T: Deserialize<'a> + Default>(&mut self, value: Value<'a>) -> T {
+        T::deserialize(value).unwrap_or_else(|e| {
+            // there is room for every shape, and this is not reached
+            let (what, hint, opened) = (e.to_string(), None, None);
+            self.problem(Problem::whole(TextProblem::Syntax { what, hint, opened }));
+            T::default()
+        })
     }
 
     /// The entries of a mapping with names of the user's choice.

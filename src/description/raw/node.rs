@@ -3,7 +3,7 @@
 //! Serde stops at the first surprise. Here nothing surprises: a wrong shape is kept as such,
 //! an unknown key is set aside, and both are told later together with all else that is wrong.
 
-use serde::de::value::StringDeserializer;
+use serde::de::value::StrDeserializer;
 use serde::de::{
     Deserialize, DeserializeSeed, Deserializer, IgnoredAny, IntoDeserializer, MapAccess, SeqAccess,
     Visitor,
@@ -19,10 +19,8 @@ pub(crate) enum Node<L, M> {
     Absent,
     /// Nothing, `~` or `null`.
     Null,
-    /// Text.
+    /// A single value, as the file means it.
     Text(String),
-    /// What YAML takes for a number or a truth value; its text stands in the file.
-    Plain,
     /// A list.
     List(L),
     /// A mapping.
@@ -34,7 +32,7 @@ pub(crate) type Leaf = Node<Refused, Refused>;
 /// A mapping with known keys.
 pub(crate) type Map<T> = Node<Refused, Keys<T>>;
 /// A list.
-pub(crate) type List<T> = Node<Vec<T>, Refused>;
+pub(crate) type List<T> = Node<Unread<T>, Refused>;
 /// A mapping with keys of the user's choice.
 pub(crate) type Named<T> = Node<Refused, Names<T>>;
 
@@ -49,6 +47,10 @@ impl<L, M> Node<L, M> {
 #[derive(Clone, Copy, Debug)]
 pub(crate) struct Refused;
 
+/// A list whose entries are read one by one when they are wanted: there can be many.
+#[derive(Clone, Copy, Debug)]
+pub(crate) struct Unread<T>(PhantomData<T>);
+
 /// A mapping with known keys, and what stood beside them.
 #[derive(Clone, Debug)]
 pub(crate) struct Keys<T> {
@@ -60,7 +62,7 @@ pub(crate) struct Keys<T> {
     pub(crate) known: &'static [&'static str],
 }
 
-/// Keys of the user's choice, in the order written; of one given twice, the first.
+/// Keys of the user's choice, in the order written.
 #[derive(Clone, Debug)]
 pub(crate) struct Names<T>(pub(crate) Vec<(String, T)>);
 
@@ -75,37 +77,28 @@ pub(crate) trait FromMap<'de>: Sized {
 }
 
 impl<'de> FromSeq<'de> for Refused {
-    fn from_seq<A: SeqAccess<'de>>(mut list: A) -> Result<Self, A::Error> {
-        while list.next_element::<IgnoredAny>()?.is_some() {}
+    fn from_seq<A: SeqAccess<'de>>(_: A) -> Result<Self, A::Error> {
         Ok(Refused)
     }
 }
 
 impl<'de> FromMap<'de> for Refused {
-    fn from_map<A: MapAccess<'de>>(mut map: A) -> Result<Self, A::Error> {
-        while map.next_entry::<IgnoredAny, IgnoredAny>()?.is_some() {}
+    fn from_map<A: MapAccess<'de>>(_: A) -> Result<Self, A::Error> {
         Ok(Refused)
     }
 }
 
-impl<'de, T: Deserialize<'de>> FromSeq<'de> for Vec<T> {
-    fn from_seq<A: SeqAccess<'de>>(mut list: A) -> Result<Self, A::Error> {
-        let mut out = Vec::new();
-        while let Some(entry) = list.next_element()? {
-            out.push(entry);
-        }
-        Ok(out)
+impl<'de, T> FromSeq<'de> for Unread<T> {
+    fn from_seq<A: SeqAccess<'de>>(_: A) -> Result<Self, A::Error> {
+        Ok(Unread(PhantomData))
     }
 }
 
 impl<'de, T: Deserialize<'de>> FromMap<'de> for Names<T> {
     fn from_map<A: MapAccess<'de>>(mut map: A) -> Result<Self, A::Error> {
         let mut out: Vec<(String, T)> = Vec::new();
-        let mut seen = std::collections::BTreeSet::new();
-        while let Some((key, value)) = map.next_entry::<String, T>()? {
-            if seen.insert(key.clone()) {
-                out.push((key, value));
-            }
+        while let Some(entry) = map.next_entry()? {
+            out.push(entry);
         }
         Ok(Names(out))
     }
@@ -135,26 +128,12 @@ impl<'de, L: FromSeq<'de>, M: FromMap<'de>> Deserialize<'de> for Node<L, M> {
 /// Visits whatever stands there.
 struct AnyShape<L, M>(PhantomData<(L, M)>);
 
-macro_rules! plain {
-    ($($visit:ident($type:ty)),*) => { $(
-        fn $visit<E>(self, _: $type) -> Result<Self::Value, E> { Ok(Node::Plain) }
-    )* };
-}
-
 impl<'de, L: FromSeq<'de>, M: FromMap<'de>> Visitor<'de> for AnyShape<L, M> {
     type Value = Node<L, M>;
 
     fn expecting(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         f.write_str("a value, a list or a mapping")
     }
-    plain!(
-        visit_bool(bool),
-        visit_i64(i64),
-        visit_u64(u64),
-        visit_i128(i128),
-        visit_u128(u128),
-        visit_f64(f64)
-    );
     fn visit_str<E>(self, text: &str) -> Result<Self::Value, E> {
         Ok(Node::Text(text.to_owned()))
     }
@@ -176,7 +155,7 @@ struct Aside {
     known: &'static [&'static str],
 }
 
-/// Gives a struct's own keys to it, each once, and sets the others aside.
+/// Gives a struct's own keys to it and sets the others aside.
 struct Sieve<'a, A> {
     map: A,
     aside: &'a mut Aside,
@@ -195,7 +174,6 @@ impl<'de, A: MapAccess<'de>> Deserializer<'de> for Sieve<'_, A> {
         visitor.visit_map(Sieved {
             map: self.map,
             aside: self.aside,
-            given: vec![false; fields.len()],
         })
     }
     fn deserialize_any<V: Visitor<'de>>(self, visitor: V) -> Result<V::Value, A::Error> {
@@ -210,7 +188,6 @@ impl<'de, A: MapAccess<'de>> Deserializer<'de> for Sieve<'_, A> {
 struct Sieved<'a, A> {
     map: A,
     aside: &'a mut Aside,
-    given: Vec<bool>,
 }
 
 impl<'de, A: MapAccess<'de>> MapAccess<'de> for Sieved<'_, A> {
@@ -220,18 +197,12 @@ impl<'de, A: MapAccess<'de>> MapAccess<'de> for Sieved<'_, A> {
         &mut self,
         seed: K,
     ) -> Result<Option<K::Value>, A::Error> {
-        while let Some(key) = self.map.next_key::<String>()? {
-            let field = self.aside.known.iter().position(|known| *known == key);
-            match field.and_then(|i| self.given.get_mut(i)) {
-                Some(given) if !*given => {
-                    *given = true;
-                    let key: StringDeserializer<A::Error> = key.into_deserializer();
-                    return seed.deserialize(key).map(Some);
-                }
-                // given twice: the scan tells of it
-                Some(_) => {}
-                None => self.aside.unknown.push(key),
+        while let Some(key) = self.map.next_key::<&'de str>()? {
+            if self.aside.known.contains(&key) {
+                let key: StrDeserializer<'_, A::Error> = key.into_deserializer();
+                return seed.deserialize(key).map(Some);
             }
+            self.aside.unknown.push(key.to_owned());
             self.map.next_value::<IgnoredAny>()?;
         }
         Ok(None)
