@@ -6,6 +6,7 @@
 //! the reserve, and the current sought with which it comes back to it.
 
 use super::Turn;
+use super::enough::{BEYOND, FOUND_TO, halved, width};
 use super::touching::TOUCHES;
 use crate::battery::Charge;
 use crate::build::State;
@@ -13,10 +14,6 @@ use crate::ledger::Machine;
 use crate::quantity::{AmpHours, Amps, Fraction, Hours};
 use crate::root::{bracketed, rising};
 
-/// A current beyond any source's: held at the highest setpoint whatever is drawn.
-const BEYOND: f64 = 1e5;
-/// Width to which the current is found, A; the answer is taken on the side that holds.
-const CLOSE: f64 = 1e-7;
 /// Where between the reserve and the highest charge kept a cycle that holds itself up with less
 /// is looked for: at 1 − e^(−t) of the way, since a battery filled in every shift settles just
 /// under the highest.
@@ -25,9 +22,6 @@ const DEPTHS: [f64; 7] = [13.0, 6.0, 3.5, 2.2, 1.4, 0.8, 0.35];
 const REFINED: u32 = 3;
 /// Gain of charge that counts as a closed cycle.
 const CLOSED: f64 = 1e-9;
-/// Width, as a share of the current, to which it is found.
-const FOUND_TO: f64 = 2e-5;
-
 /// Width, as a share of the current, within which the edge of a build with constant powers is proved.
 const PROVED: f64 = 4e-3;
 /// The same of a current near nought, A.
@@ -36,39 +30,9 @@ const PROVED_AT_NOUGHT: f64 = 1e-4;
 /// Searches for the current of the touching cycle, each from where the last ended.
 const MOST_SEARCHES: u32 = 4;
 
-/// Width, as a share of the current, to which it is found where loads drop out.
-const ROUGH: f64 = 1e-3;
-/// Times a current that is enough at which it is asked whether more is, where loads drop out.
-const FURTHER: [f64; 3] = [1.005, 1.05, 1.3];
-/// Times a greater current is begun with where one was not enough.
-const MOST_POCKETS: u32 = 8;
-
 /// Width to which a current of about this size is found.
 fn tolerance(current: f64) -> f64 {
     width(current, FOUND_TO)
-}
-
-/// The same of a share of it.
-fn width(current: f64, share: f64) -> f64 {
-    CLOSE.max(share * current.abs())
-}
-
-/// The least current that holds, between one that does not and one that does, to a width that may hang on it.
-fn halved(
-    mut low: f64,
-    mut high: f64,
-    width: impl Fn(f64) -> f64,
-    mut holds: impl FnMut(f64) -> bool,
-) -> f64 {
-    while high - low > width(high) {
-        let middle = 0.5 * (low + high);
-        if holds(middle) {
-            high = middle
-        } else {
-            low = middle
-        }
-    }
-    high
 }
 
 /// What is lacking.
@@ -120,62 +84,6 @@ impl Machine {
             charge: current * hours,
             current,
         })
-    }
-
-    /// The current at the edge, raised where it does not keep up from the start: where the first shifts from a lower
-    /// charge need more, or the lowest charge lies between two points of the cycle. None where no current is enough.
-    /// It is found to a share of it. (A build that holds itself up at a low charge alone, because loads drop out there, has its edge at nought and
-    /// breaks the reserve.)
-    fn enough_from(
-        &self,
-        start: Charge,
-        reserve: Fraction,
-        edge: Amps,
-        found_to: f64,
-    ) -> Option<Amps> {
-        let mut machine = self.clone();
-        let mut holds = |current: f64| {
-            machine.set_extra(Amps(current));
-            machine.keeps_up(start, reserve)
-        };
-        let mut high = edge.0 + (FOUND_TO * edge.0 + CLOSE);
-        if holds(high) {
-            return Some(if edge > Amps::ZERO { edge } else { Amps(high) });
-        }
-        let mut step = found_to * edge.0 + CLOSE;
-        let low = loop {
-            step *= 4.0;
-            let below = high;
-            high += step;
-            if holds(high) {
-                break below;
-            }
-            if high > BEYOND {
-                return None;
-            }
-        };
-        Some(Amps(halved(low, high, |x| width(x, found_to), holds)))
-    }
-
-    /// The same where loads drop out at a low charge. There the touching cycle is no proof, and a current may be enough
-    /// while a little more, with which they hold on for longer, is not: the current is one from which on it keeps up,
-    /// as far as a few greater ones tell.
-    fn enough_and_more(&self, start: Charge, reserve: Fraction, edge: Amps) -> Option<Amps> {
-        let mut machine = self.clone();
-        let mut fails = |current: f64| {
-            machine.set_extra(Amps(current));
-            !machine.keeps_up(start, reserve)
-        };
-        let mut enough = edge;
-        for _ in 0..MOST_POCKETS {
-            enough = self.enough_from(start, reserve, enough, ROUGH)?;
-            let greater = FURTHER.iter().map(|times| times * enough.0);
-            match greater.rev().find(|x| fails(*x)) {
-                None => break,
-                Some(not_enough) => enough = Amps(not_enough),
-            }
-        }
-        Some(enough)
     }
 
     /// The constant current on the edge of keeping up: above zero lacking, below zero to spare.

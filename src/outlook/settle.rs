@@ -7,28 +7,18 @@
 //! root search, which gives the same answer in a dozen cycles.
 
 use super::peak::reaches_nought;
+use super::repeat::{MOST_CYCLES, MOST_UNSTEADY, NEARLY_STILL, PLAIN, STILL};
 use super::touching::TOUCHES;
 use crate::battery::Charge;
 use crate::ledger::{Machine, Passed};
 use crate::quantity::Fraction;
 use crate::root::bracketed;
 
-/// Cycles repeated plainly before the fixed point is searched for.
-const PLAIN: u32 = 3;
-/// Change of charge over a cycle that counts as none.
-const STILL: f64 = 1e-9;
-/// The same where a search asks and loads drop out.
-const NEARLY_STILL: f64 = 1e-6;
 /// Where between the touching cycle (0) and the charge reached (1) a cycle that holds itself up
 /// is looked for, from the top.
 const PROBES: [f64; 6] = [0.95, 0.8, 0.6, 0.4, 0.2, 0.0];
 /// Most rounds of any search here; each closes in by a fixed factor or stops.
 const MOST_ROUNDS: u32 = 60;
-/// Most cycles counted one by one towards a break.
-const MOST_CYCLES: u32 = 20_000;
-/// The same where loads that drop out make the charge go up and down: it neither falls slowly nor settles late.
-const MOST_UNSTEADY: u32 = 300;
-
 /// What repeating the cycle without end comes to.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Outlook {
@@ -160,55 +150,6 @@ impl Machine {
             }
             Found::Under => Approach::Unsteady { charge },
             Found::None(looked_at) => Approach::Falls { charge, looked_at },
-        }
-    }
-
-    /// Plain repetition: the definition, for at most `cycles` cycles.
-    #[must_use]
-    pub fn repeat(&self, start: Charge, reserve: Fraction, cycles: u32) -> Outlook {
-        self.repeated(start, reserve, cycles, STILL)
-    }
-
-    /// The same, until a cycle changes the charge by no more than counts as none.
-    fn repeated(&self, start: Charge, reserve: Fraction, cycles: u32, none: f64) -> Outlook {
-        let mut charge = start;
-        // A charge that goes up and down comes back to one it had: the one after 1, 2, 4, 8 … cycles.
-        let (mut mark, mut next_mark) = (start.soc, 1);
-        let mut lowest = start.soc;
-        for cycle in 0..cycles {
-            let passed = self.pass(charge, reserve);
-            if let Some(shift) = passed.broke {
-                return Outlook::Breaks {
-                    shifts: cycle * self.shifts + shift,
-                    begins: charge,
-                };
-            }
-            let as_at = |soc: Fraction| (passed.end.soc - soc).abs() < Fraction(none);
-            let (still, back) = (as_at(charge.soc), as_at(mark));
-            charge = passed.end;
-            lowest = match still {
-                true => passed.lowest,
-                false => lowest.min(passed.lowest),
-            };
-            if still || back {
-                break;
-            }
-            if cycle + 1 == next_mark {
-                (mark, lowest) = (charge.soc, charge.soc);
-                next_mark *= 2;
-            }
-        }
-        Outlook::Settles { charge, lowest }
-    }
-
-    /// Repetition from the charge that the first cycles led to.
-    fn count(&self, charge: Charge, reserve: Fraction, most: u32) -> Outlook {
-        match self.repeat(charge, reserve, most) {
-            Outlook::Breaks { shifts, begins } => Outlook::Breaks {
-                shifts: PLAIN * self.shifts + shifts,
-                begins,
-            },
-            settled => settled,
         }
     }
 
