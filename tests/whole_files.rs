@@ -372,7 +372,8 @@ fn an_interrupted_fleet_leaves_nothing() {
             child.try_wait().expect("a child").is_none(),
             "still at work"
         );
-        let script = format!("kill -INT {}", child.id());
+        // not INT, which a suite started in the background hands on as ignored
+        let script = format!("kill -TERM {}", child.id());
         let stopped = std::process::Command::new("sh")
             .args(["-c", &script])
             .status();
