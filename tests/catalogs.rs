@@ -342,7 +342,7 @@ fn a_folder_that_is_no_set_of_catalogs_is_refused() {
             "a list where a list of parts under the name of their kind is needed",
         )],
     );
-    says("kits: [x\n", &[(2, 1, "not valid YAML")]);
+    says("kits: [x\n", &[(1, 7, "not valid YAML")]);
     says("kits:\n\t- x\n", &[(2, 1, "tab used for indentation")]);
     says("a: &a [x]\nb: [*a, *c]\n", &[(2, 9, "")]);
     let big = format!("# {}\n", "x".repeat(1 << 20));

@@ -15,6 +15,7 @@ mod read;
 mod scan;
 mod second;
 pub mod set;
+mod slip;
 mod values;
 
 pub use accessory::{AccessoryText, DrawText, DutyText, InrushText, LawName, WorksText};

@@ -3,8 +3,6 @@
 mod seen;
 mod syntax;
 
-pub(super) use syntax::tab_near;
-
 use super::places::{Child, Content, Key, Place, Places};
 use crate::problem::text::{MOST_ANCHORS, MOST_DEEP, MOST_VALUES};
 use crate::problem::{Problem, Problems, TextProblem};
@@ -412,7 +410,7 @@ fn refused(kind: TextProblem, bytes: Range<usize>) -> Box<Problem> {
 }
 
 /// Bytes from a quotation mark to the one that ends it: `\'\'` and `\\"` do not.
-fn quoted_length(text: &str, mark: char) -> Option<usize> {
+pub(super) fn quoted_length(text: &str, mark: char) -> Option<usize> {
     let mut chars = text.char_indices().skip(1).peekable();
     while let Some((at, c)) = chars.next() {
         match c {

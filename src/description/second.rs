@@ -1,9 +1,9 @@
 //! The second reader: a text is taken as read only where `serde_yaml`, a parser of its own, finds the same values in it.
 
 use super::places::Content;
-use super::scan::tab_near;
+use super::slip;
 use super::values::Value;
-use crate::problem::{Problem, TextProblem};
+use crate::problem::Problem;
 use serde::de::{DeserializeSeed, Deserializer, Error, IgnoredAny, MapAccess, SeqAccess, Visitor};
 use std::fmt;
 use std::thread::{Builder, ScopedJoinHandle};
@@ -47,18 +47,12 @@ pub(crate) fn refused(text: &str, e: &serde_yaml::Error) -> Problem {
         .find(|i| text.is_char_boundary(*i))
         .unwrap_or(0);
     let end = text[at..].chars().next().map_or(at, |c| at + c.len_utf8());
-    if let Some(tab) = tab_near(text, at) {
-        return Problem::text(TextProblem::Tab, tab);
-    }
     let what = e.to_string();
-    let what = what
-        .split(" at line ")
-        .next()
-        .unwrap_or(&what)
-        .replace('`', "\"");
-    let hint = Some("check the indentation and the brackets of this line");
-    let opened = None;
-    Problem::text(TextProblem::Syntax { what, hint, opened }, at..end)
+    slip::told(
+        text,
+        at..end,
+        what.split(" at line ").next().unwrap_or(&what),
+    )
 }
 
 /// Holds what a parser reads against the value that the first reader found there.

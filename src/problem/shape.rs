@@ -1,6 +1,6 @@
 //! Keys and collections that do not belong, or are missing.
 
-use super::words::{any_of, list, nearest};
+use super::words::{any_of, list, nearest, space_after_colon};
 use std::fmt;
 
 /// What a value is made of.
@@ -89,16 +89,19 @@ impl ShapeProblem {
     pub(super) fn help(&self) -> Option<String> {
         match self {
             ShapeProblem::UnknownKey { found, known } => match found.split_once(':') {
-                Some((key, value)) if known.contains(&key.trim()) => Some(format!(
-                    "put a space after the colon: `{}: {}`",
-                    key.trim(),
-                    value.trim()
-                )),
+                Some((key, _)) if known.contains(&key.trim()) => space_after_colon(found),
                 _ if nearest(found, known.iter().copied()).is_some() => None,
                 _ => Some(format!("keys here: {}", list(known))),
             },
             ShapeProblem::Missing { example, .. } => Some(format!("add `{example}`")),
-            ShapeProblem::NoValue { .. } => Some("write a value, or leave the key out".into()),
+            ShapeProblem::NoValue { wanted } => Some(match *wanted {
+                // most often a block that lost its indentation
+                w if w.starts_with("a mapping") || w.starts_with("a list") => {
+                    "what belongs to it stands below, further to the right; or leave the key out"
+                        .into()
+                }
+                _ => "write a value, or leave the key out".into(),
+            }),
             ShapeProblem::WrongShape { .. } => None,
         }
     }

@@ -30,7 +30,7 @@ pub enum TextProblem {
         /// What the reader says.
         what: String,
         /// What would do.
-        hint: Option<&'static str>,
+        hint: Option<String>,
         /// Bytes of a bracket that is still open there.
         opened: Option<Range<usize>>,
     },
@@ -115,7 +115,7 @@ impl TextProblem {
     }
 
     /// What would do.
-    pub(super) fn help(&self) -> Option<&'static str> {
+    pub(super) fn help(&self) -> Option<&str> {
         use TextProblem as P;
         Some(match self {
             P::TooLarge { .. } => "a build file is a few kilobytes: is this the right file?",
@@ -123,7 +123,7 @@ impl TextProblem {
             P::Unprintable { .. } => "delete the character",
             P::Empty => "`ampledger new` writes a build file to start from",
             P::Tab => "YAML indents with spaces; replace the tab with spaces",
-            P::Syntax { hint, .. } => return *hint,
+            P::Syntax { hint, .. } => return hint.as_deref(),
             P::TooDeep => "a build file needs less than ten levels",
             P::TooMany => "write the entries out, or split the build",
             P::TooManyAnchors => "put what is repeated into a catalog part, or split the build",

@@ -45,6 +45,14 @@ pub fn list<S: AsRef<str>>(names: &[S]) -> String {
     }
 }
 
+/// What would do for `key:value`, which YAML reads as one word.
+#[must_use]
+pub fn space_after_colon(text: &str) -> Option<String> {
+    let (key, value) = text.split_once(':')?;
+    let joined = value.starts_with(|c: char| !c.is_whitespace());
+    joined.then(|| format!("put a space after the colon: `{}: {value}`", key.trim()))
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;

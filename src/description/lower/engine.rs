@@ -3,6 +3,7 @@
 use super::{Entries, Lower};
 use crate::description::raw::{self, Leaf, List, Map, Named, Node};
 use crate::description::{EngineText, StarterText, StepText, Written, path};
+use crate::problem::words::space_after_colon;
 use crate::problem::{Problem, SenseProblem};
 use crate::quantity::{Rpm, bounds};
 
@@ -92,6 +93,12 @@ impl Lower<'_> {
                 return None;
             }
             let state = self.name_at(at.clone(), node)?;
+            if let Some(help) = space_after_colon(&state.value) {
+                let state = state.value;
+                let problem = SenseProblem::StepWithoutTime { state };
+                self.problem(Problem::value(at, problem).with_help(help));
+                return None;
+            }
             return self.timed(StepText {
                 path: at,
                 state,
