@@ -123,10 +123,14 @@ fn missing<T>(
     example: &'static str,
     wanted: Dimension,
 ) -> Result<T, ParseError> {
-    // a first part that is wrong in itself says more than the missing word
-    measure(text, wanted)?;
     let start = text.len() - text.trim_start().len();
-    let range = start..start.max(text.trim_end().len());
+    let range = match measure(text, wanted) {
+        // what is left over stands where the word should
+        Err(e) if matches!(e.kind, ParseErrorKind::Trailing { .. }) => e.range,
+        // a first part that is wrong in itself says more than the missing word
+        Err(e) => return Err(e),
+        Ok(_) => start..start.max(text.trim_end().len()),
+    };
     Err(ParseError {
         range,
         kind: ParseErrorKind::Phrase { word, example },

@@ -196,6 +196,16 @@ fn phrases_point_at_their_own_part() {
         at_speed::<Volts>("28 V").expect_err("no speed").kind,
         ParseErrorKind::Phrase { word: "at", .. }
     ));
+    let text = "28 V @ 3600 rpm";
+    let e = at_speed::<Volts>(text).expect_err("no word");
+    assert_eq!(
+        (&text[e.range.clone()], e.to_string(), e.help()),
+        (
+            "@ 3600 rpm",
+            "`at` is missing".into(),
+            "write it like `28 V at 3600 rpm`".into()
+        )
+    );
     assert!(matches!(
         at_speed::<Volts>("28 A").expect_err("unit first").kind,
         ParseErrorKind::WrongUnit { .. }
