@@ -7,7 +7,6 @@ use ampledger::fleet::{Fleet, Plan, Row, judge_all, read_sheet};
 use ampledger::resolve::{find_kit, resolve, with_kit};
 use std::convert::Infallible;
 use std::path::{Path, PathBuf};
-use std::process::{Command, Output};
 
 /// An invented cart that keeps up as it is.
 const CART: &str = "\
@@ -377,11 +376,6 @@ fn headers_that_are_not_understood() {
     );
 }
 
-fn ampledger(args: &[&str]) -> Output {
-    let mut command = Command::new(env!("CARGO_BIN_EXE_ampledger"));
-    command.args(args).output().expect("the program")
-}
-
 /// A machine with no battery and nothing that states its volts neither keeps up nor falls short; one row is told of.
 #[test]
 fn nothing_to_judge_is_no_verdict() {
@@ -408,100 +402,4 @@ shift: [{governed: 2 h}]
     assert!(text.contains(said), "{text}");
     let both = sheet(folder.path(), b"machine,build\nl,lamp.yaml\nc,cart.yaml\n");
     assert_eq!((both.totals.keeps_up, both.totals.unjudged), (1, 1));
-}
-
-/// The command's exit codes: all keep up, one does not, one cannot be read.
-#[test]
-fn the_exit_codes() {
-    let folder = folder();
-    let code = |rows: &str| {
-        let path = folder.path().join("fleet.csv");
-        std::fs::write(&path, format!("machine,build\n{rows}")).expect("a file");
-        ampledger(&["fleet", &path.display().to_string()])
-            .status
-            .code()
-    };
-    assert_eq!(code("a,cart.yaml\n"), Some(0));
-    assert_eq!(code("a,lamps.yaml\n"), Some(1));
-    assert_eq!(code("a,cart.yaml\nb,bad.yaml\nc,lamps.yaml\n"), Some(2));
-}
-
-/// The command: the same rows in every format, a file whole or not at all, no bar where nobody looks.
-#[test]
-fn the_command() {
-    let folder = folder();
-    let at = |name: &str| folder.path().join(name).display().to_string();
-    let csv = "machine,build,count,kit\n=m1,cart.yaml,2,\nm2,bad.yaml,1,\nm3,lamps.yaml,1,\n";
-    std::fs::write(at("all.csv"), csv).expect("a file");
-    let json = ampledger(&["fleet", &at("all.csv"), "--format", "json"]);
-    assert_eq!(String::from_utf8_lossy(&json.stderr), "");
-    let json: serde_json::Value = serde_json::from_slice(&json.stdout).expect("JSON");
-    let rows = json["rows"].as_array().expect("rows");
-    assert_eq!(rows[1]["verdict"], serde_json::Value::Null);
-    assert!(
-        rows[1]["error"]
-            .as_str()
-            .is_some_and(|e| e.contains("bad.yaml:9:1"))
-    );
-    assert!(
-        rows[2]["remedy"].as_str().is_some_and(|r| !r.is_empty()),
-        "{}",
-        rows[2]
-    );
-    for key in [
-        "machine", "build", "count", "kit", "verdict", "lacks_ah", "remedy", "cost", "error",
-    ] {
-        assert!(rows[0].get(key).is_some(), "{key}");
-    }
-    let streamed = ampledger(&["fleet", &at("all.csv"), "--format", "csv"]);
-    let streamed = String::from_utf8(streamed.stdout).expect("text");
-    let lines: Vec<&str> = streamed.lines().collect();
-    let head = "machine,build,count,kit,season,verdict,lacks_ah,remedy,cost,error";
-    assert_eq!(lines[0], head);
-    assert_eq!(lines.len(), 4);
-    assert!(
-        lines[1].starts_with("'=m1,cart.yaml,2,,,keeps up,0,"),
-        "{}",
-        lines[1]
-    );
-    let lacks = rows[2]["lacks_ah"].as_f64().expect("a charge");
-    assert!(lines[3].contains(&format!(",{lacks},")), "{}", lines[3]);
-    let table = String::from_utf8(ampledger(&["fleet", &at("all.csv")]).stdout).expect("text");
-    assert!(
-        table.lines().all(|line| line.chars().count() <= 80),
-        "{table}"
-    );
-    let written = at("out.csv");
-    let args = ["fleet", &at("all.csv"), "--format", "csv", "-o", &written];
-    assert_eq!(ampledger(&args).status.code(), Some(2));
-    assert_eq!(
-        std::fs::read_to_string(&written).expect("the file"),
-        streamed
-    );
-    assert_eq!(ampledger(&args).status.code(), Some(2));
-    assert_eq!(
-        std::fs::read_dir(folder.path())
-            .expect("the folder")
-            .count(),
-        6,
-        "nothing left beside"
-    );
-}
-
-#[test]
-fn the_examples() {
-    for file in [
-        "examples/fleets/quillhaven.yaml",
-        "examples/fleets/quillhaven.csv",
-    ] {
-        let json = ampledger(&["fleet", file, "--format", "json", "--no-remedy"]);
-        assert!(
-            matches!(json.status.code(), Some(0 | 1)),
-            "{file}: {json:?}"
-        );
-        let json: serde_json::Value = serde_json::from_slice(&json.stdout).expect("JSON");
-        let rows = json["rows"].as_array().expect("rows");
-        assert!(rows.iter().all(|r| r["error"].is_null()), "{file}");
-        assert!(rows.len() >= 4);
-    }
 }
