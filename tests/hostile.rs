@@ -99,11 +99,10 @@ proptest! {
     }
 
     /// More load never raises the charge at which it settles, nor turns a verdict for the better, nor lacks less (to the
-    /// thousandth to which that is found). Where loads drop out it may: a lower bus then sheds others.
+    /// thousandth to which that is found), whatever drops out on the way.
     #[test]
     fn more_load_never_helps(draft in draft(), amps in 0.05..5.0f64, share in 0.1..1.0f64) {
         let more = Load { amps, law: "current", idle: share, governed: share, stopped: 0.0, parked: 0.0 };
-        let draft = Draft { holds_on: true, ..draft };
         let heavier = Draft { loads: [draft.loads.clone(), vec![more]].concat(), ..draft.clone() };
         let ruled = |draft: &Draft| {
             let build = built(&draft.yaml());
@@ -123,7 +122,7 @@ proptest! {
     /// What is said to be lacking is enough, and a hundredth less is not.
     #[test]
     fn what_is_lacking_is_what_it_takes(draft in draft()) {
-        let text = Draft { holds_on: true, ..draft }.yaml();
+        let text = draft.yaml();
         let build = built(&text);
         let machine = Machine::new(&build).expect("a battery");
         let ruling = rule_on(&build, &machine).expect("a ruling");
@@ -150,7 +149,7 @@ proptest! {
         let mut loads = [draft.loads.clone(), vec![more]].concat();
         loads.iter_mut().for_each(|load| load.law = "current");
         let charging = Charging { alternator: true, phases: 3, ..draft.charging };
-        let draft = Draft { holds_on: true, loads, charging, ..draft };
+        let draft = Draft { loads, charging, ..draft };
         let mut larger = draft.clone();
         larger.battery.capacity *= times;
         larger.battery.cranking *= times;

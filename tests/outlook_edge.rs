@@ -42,12 +42,7 @@ fn the_edge_divides_whatever_the_load() {
                 "A" => format!("{:.2} A", 8.0 + 0.4 * f64::from(k)),
                 _ => format!("{:.3} ohm", 1.5 - 0.03 * f64::from(k)),
             };
-            let mut text = CART.replace("100 W", &amount);
-            if draw == "W" {
-                // Lower down the lamps of constant power drop out on the way, which saves the battery.
-                text = text.replace("flooded}", "flooded, reserve: 60 %}");
-            }
-            let (build, mut machine) = made(&text);
+            let (build, mut machine) = made(&CART.replace("100 W", &amount));
             let reserve = reserve(&build, &machine).soc;
             let edge = machine
                 .edge(reserve, Spread::Everywhere)
@@ -146,8 +141,7 @@ fn what_is_lacking_is_enough() {
     assert!(keeps(1.0001) && !keeps(0.999), "{current:?}");
 }
 
-/// An invented machine that falls short, whose lamps drop out on the way there: with a little more charge they hold on
-/// for longer, and more of it may not be enough.
+/// An invented machine that falls short, whose lamps drop out on the way there.
 const DROPS: &str = "\
 build: mower
 air: 13.8 °C

@@ -1,11 +1,15 @@
 //! Accessories that drop out below their lower working limit.
+//!
+//! What goes out is no help: in the ledger an accessory under its limit asks for the current that it takes at the limit,
+//! as if it went on. Otherwise a machine whose lamps go out would be judged to keep up because they do, and more load
+//! would leave more charge. What it misses is told beside ([`Cuts::taken`]).
 
 use super::point::Drawn;
 use crate::load::{At, LoadSum};
-use crate::quantity::Volts;
+use crate::quantity::{Fraction, Volts};
 
 /// Volts a cell over which an accessory lets go: as it drops out the bus recovers and it comes
-/// back, so at its limit it takes the share of its current that the bus can hold.
+/// back, so at its limit it gets the share of its current that the bus can hold.
 const LETTING_GO_CELL: f64 = 0.05 / 6.0;
 
 /// Lower working limits on the bus: classes of accessories that share one.
@@ -48,42 +52,47 @@ impl Cuts {
         self.limits.last().copied()
     }
 
-    /// Share of its current that an accessory takes at some volts, by its class.
+    /// Share of its current that an accessory gets at some volts, by its class.
     #[must_use]
-    pub fn taken(&self, class: usize, volts: Volts) -> crate::quantity::Fraction {
-        crate::quantity::Fraction(self.gate(class, volts.0))
+    pub fn taken(&self, class: usize, volts: Volts) -> Fraction {
+        let share = |limit: f64| (1.0 + (volts.0 - limit) / self.width).clamp(0.0, 1.0);
+        Fraction(self.limit(class).map_or(1.0, share))
     }
 
-    fn gate(&self, class: usize, volts: f64) -> f64 {
-        match class.checked_sub(1).and_then(|k| self.limits.get(k)) {
-            None => 1.0,
-            Some(limit) => (1.0 + (volts - limit) / self.width).clamp(0.0, 1.0),
-        }
+    /// The volts at which an accessory's draw is reckoned: those of the bus, and no less than its limit.
+    #[must_use]
+    pub fn asked_at(&self, class: usize, volts: Volts) -> Volts {
+        Volts(volts.0.max(self.limit(class).unwrap_or(volts.0)))
     }
 
-    /// A draw whose classes let go at their limits.
-    pub(super) fn gated<'a>(&'a self, sums: &'a [LoadSum]) -> Gated<'a> {
-        Gated { cuts: self, sums }
+    fn limit(&self, class: usize) -> Option<f64> {
+        let class = class.checked_sub(1)?;
+        self.limits.get(class).copied()
+    }
+
+    /// A draw that goes on below the limits of its classes.
+    pub(super) fn asked<'a>(&'a self, sums: &'a [LoadSum]) -> Asked<'a> {
+        Asked { cuts: self, sums }
     }
 }
 
-/// Sums by class, gated by volts.
-pub(super) struct Gated<'a> {
+/// Sums by class, each as at its limit below that.
+pub(super) struct Asked<'a> {
     cuts: &'a Cuts,
     sums: &'a [LoadSum],
 }
 
-impl Drawn for Gated<'_> {
+impl Drawn for Asked<'_> {
     fn drawn(&self, volts: f64, filaments: bool) -> (f64, f64) {
-        let at = At::new(Volts(volts), filaments);
+        let bus = At::new(Volts(volts), filaments);
         let (mut amps, mut slope) = (0.0, 0.0);
         for (class, sum) in self.sums.iter().enumerate() {
-            let gate = self.cuts.gate(class, volts);
-            let full = sum.current(at).0;
-            amps += gate * full;
-            slope += gate * sum.slope(at);
-            if gate > 0.0 && gate < 1.0 {
-                slope += full / self.cuts.width;
+            match self.cuts.limit(class).filter(|limit| volts < *limit) {
+                None => {
+                    amps += sum.current(bus).0;
+                    slope += sum.slope(bus);
+                }
+                Some(limit) => amps += sum.current(At::new(Volts(limit), filaments)).0,
             }
         }
         (amps, slope)

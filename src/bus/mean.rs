@@ -114,10 +114,10 @@ pub(super) fn cuts_may_act(bus: &Bus<'_>, cases: &Coincidences, cuts: &Cuts) -> 
         .is_some_and(|limit| !bus.holds(&cases.heaviest_total(), limit))
 }
 
-/// Every case by itself, accessories dropping out below their limits.
+/// Every case by itself: below their limits accessories ask for what they take there.
 fn with_cuts(bus: &Bus<'_>, cases: &Coincidences, cuts: &Cuts, climate: &Climate, sums: &mut Sums) {
     for (case, (share, _)) in cases.cases().enumerate() {
-        let draw = cuts.gated(cases.by_class(case));
+        let draw = cuts.asked(cases.by_class(case));
         let volts = bus.operating_point(&draw);
         sums.add(
             share.0,

@@ -64,7 +64,7 @@ impl Connected {
     pub fn worst(&self, climate: &Climate, charge: Charge, cells: u32) -> Point {
         let terminals = climate.at(charge);
         let bus = Bus::new(&self.supply, &terminals, self.loads.has_filaments(), cells);
-        let draw = self.cuts.gated(self.loads.heaviest());
+        let draw = self.cuts.asked(self.loads.heaviest());
         let volts = bus.operating_point(&draw);
         Point {
             bus: Volts(volts),

@@ -185,29 +185,28 @@ fn together_and_apart() {
     assert_eq!(apart.heaviest_total().current_at(REST), Amps(3.0));
 }
 
-/// An accessory that drops out below its limit leaves the bus at that limit when the battery
-/// could hold it up without it and not with it.
+/// An accessory under its limit goes on asking for the current it takes at the limit: 315 W are 30 A at 10.5 V and below.
+/// What it gets there is told apart.
 #[test]
-fn a_load_lets_go_at_its_limit() {
+fn a_load_under_its_limit_asks_on() {
     let mut label = Label::new(Chemistry::Flooded, AmpHours(20.0));
     label.cold_cranking = Some(Amps(200.0));
     let climate = Battery::from_label(&label).climate(Celsius(0.0));
     let cuts = Cuts::new([Volts(10.5)].into_iter(), 6);
-    let loads = [LoadSum::NONE, LoadSum::current_of(Amps(30.0))];
-    let bus = connected(&Supply::none(6), &loads, &[], &cuts);
-    let empty = bus.flow(
-        &climate,
-        Charge {
-            soc: Fraction(0.1),
-            depletion: Fraction(0.09),
-        },
-        6,
-    );
-    assert!(
-        empty.bus <= Volts(10.5) && empty.loads < Amps(30.0),
-        "{empty:?}"
-    );
-    assert!((empty.loads + empty.battery).abs() < Amps(1e-6));
-    let full = bus.flow(&climate, Charge::FULL, 6);
-    assert!((full.loads.0 - 30.0).abs() < 1e-9);
+    let low = Charge {
+        soc: Fraction(0.1),
+        depletion: Fraction(0.09),
+    };
+    let power = LoadSum::of(Draw::Power(Watts(315.0)), 1);
+    for load in [LoadSum::current_of(Amps(30.0)), power] {
+        let bus = connected(&Supply::none(6), &[LoadSum::NONE, load], &[], &cuts);
+        let empty = bus.flow(&climate, low, 6);
+        assert!(empty.bus < Volts(10.4), "{empty:?}");
+        assert!((empty.loads - Amps(30.0)).abs() < Amps(1e-9), "{empty:?}");
+        assert!((empty.loads + empty.battery).abs() < Amps(1e-6));
+        assert_eq!(cuts.taken(1, empty.bus), Fraction::ZERO);
+        let full = bus.flow(&climate, Charge::FULL, 6);
+        assert!((full.loads - load.current_at(full.bus)).abs() < Amps(1e-9));
+        assert_eq!(cuts.taken(1, full.bus), Fraction::ONE);
+    }
 }

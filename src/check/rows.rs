@@ -155,14 +155,13 @@ fn accessory_row(
         // With it on, the rest of its time's mean load is heavier by what it adds beside its mean.
         let volts = (s.mean.bus + s.mean.give_way * (duty.rest() * sum.current_at(s.mean.bus)))
             .min(s.mean.bus);
-        let taken = connected
-            .cuts
-            .taken(connected.cuts.class(accessory.works.low), volts);
-        let full = sum.current_at(volts);
+        let class = connected.cuts.class(accessory.works.low);
+        let asked = sum.current_at(connected.cuts.asked_at(class, volts));
+        let missed = connected.cuts.taken(class, volts).rest();
         let name = build.state_name(s.state).to_owned();
-        row.ah += full * taken * duty * s.time;
-        row.missed_ah += full * taken.rest() * duty * s.time;
-        row.amps.0.push((name.clone(), full * taken));
+        row.ah += asked * duty * s.time;
+        row.missed_ah += asked * missed * duty * s.time;
+        row.amps.0.push((name.clone(), asked));
         row.volts.0.push((name.clone(), volts));
         row.duty.0.push((name, duty));
     }

@@ -66,19 +66,13 @@ impl Machine {
         if hours <= Hours::ZERO {
             return Lacking::BeyondCharging;
         }
-        let steady = !self.may_drop_out(reserve);
         let current = self
             .found(reserve, Spread::Everywhere)
             .and_then(|(edge, touches)| {
-                if touches && steady && start.soc >= Fraction::ONE && edge > Amps::ZERO {
+                if touches && start.soc >= Fraction::ONE && edge > Amps::ZERO {
                     return Some(edge);
                 }
-                let edge = edge.max(Amps::ZERO);
-                if steady {
-                    self.enough_from(start, reserve, edge, FOUND_TO)
-                } else {
-                    self.enough_and_more(start, reserve, edge)
-                }
+                self.enough_from(start, reserve, edge.max(Amps::ZERO))
             });
         current.map_or(Lacking::BeyondCharging, |current| Lacking::Charge {
             charge: current * hours,

@@ -1,13 +1,12 @@
 //! Where the charge settles when the cycle is repeated without end, or when it breaks.
 //!
 //! The charge at the beginning of a cycle maps to that at its end: s' = F(s). F rises with s, so
-//! from a full battery the charges fall to the greatest fixed point of F, or through the reserve;
-//! where loads drop out at a low charge it need not rise, and repetition itself decides.
+//! from a full battery the charges fall to the greatest fixed point of F, or through the reserve.
 //! Plain repetition is the definition ([`Machine::repeat`]); here the fixed point is found by
 //! root search, which gives the same answer in a dozen cycles.
 
 use super::peak::reaches_nought;
-use super::repeat::{MOST_CYCLES, MOST_UNSTEADY, NEARLY_STILL, PLAIN, STILL};
+use super::repeat::{MOST_CYCLES, MOST_DOUBTFUL, PLAIN, STILL};
 use super::touching::TOUCHES;
 use crate::battery::Charge;
 use crate::ledger::{Machine, Passed};
@@ -49,9 +48,8 @@ enum Approach {
         /// Charges looked at, lowest first, and what a cycle from each gains: all less than nothing.
         looked_at: Vec<(f64, f64)>,
     },
-    /// Loads drop out before the charge is down at the reserve, and more of it is left from a low charge than from a
-    /// higher one. Only repetition tells.
-    Unsteady {
+    /// The cycle found goes under the reserve, which another may hold. Only repetition tells.
+    Doubtful {
         /// Charge reached.
         charge: Charge,
     },
@@ -90,7 +88,7 @@ impl Machine {
         match self.approach(start, reserve) {
             Approach::Decided(outlook) => outlook,
             Approach::Falls { charge, .. } => self.count(charge, reserve, MOST_CYCLES),
-            Approach::Unsteady { charge } => self.count(charge, reserve, MOST_UNSTEADY),
+            Approach::Doubtful { charge } => self.count(charge, reserve, MOST_DOUBTFUL),
         }
     }
 
@@ -105,9 +103,7 @@ impl Machine {
                 self.has_constant_powers()
                     && reaches_nought(&looked_at, |soc| self.gain(soc, charge).0)
             }
-            Approach::Unsteady { charge } => self
-                .repeated(charge, reserve, MOST_UNSTEADY, NEARLY_STILL)
-                .keeps_up(),
+            Approach::Doubtful { charge } => self.repeat(charge, reserve, MOST_DOUBTFUL).keeps_up(),
         }
     }
 
@@ -141,14 +137,11 @@ impl Machine {
             }
             charge = passed.end;
         }
-        if self.may_drop_out(reserve) {
-            return Approach::Unsteady { charge };
-        }
         match self.fixed_point(charge, lowest, reserve, limit(charge, changes)) {
             Found::Holds { charge, lowest } => {
                 Approach::Decided(Outlook::Settles { charge, lowest })
             }
-            Found::Under => Approach::Unsteady { charge },
+            Found::Under => Approach::Doubtful { charge },
             Found::None(looked_at) => Approach::Falls { charge, looked_at },
         }
     }

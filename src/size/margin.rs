@@ -29,8 +29,8 @@ pub(super) struct Margin<'b> {
     machine: Machine,
     reserve: Fraction,
     turn: Turn,
-    /// Whether a margin at or above nought is proof that a build keeps up: from a full battery, and where nothing
-    /// drops out at a low charge. From less the first shifts may need more.
+    /// Whether a margin at or above nought is proof that a build keeps up: from a full battery. From less the first
+    /// shifts may need more.
     pub(super) decides: bool,
     /// The margin of the build as it is: charge gained over the cycle that just touches the
     /// reserve, as a share of full. At zero or above a build keeps up from a full battery. −1 where
@@ -42,10 +42,9 @@ impl<'b> Margin<'b> {
     /// Of a build and the machine made of it.
     pub(super) fn new(build: &'b Build, machine: Machine) -> Margin<'b> {
         let reserve = reserve(build, &machine).soc;
-        let holds_on = !machine.may_drop_out(reserve.min(Fraction::ONE));
         let mut margin = Margin {
             reserve,
-            decides: build.start >= Fraction::ONE && holds_on,
+            decides: build.start >= Fraction::ONE,
             build,
             machine,
             turn: Turn::default(),

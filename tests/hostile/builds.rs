@@ -14,8 +14,6 @@ pub struct Draft {
     pub steps: Vec<(Step, f64)>,
     pub parked: f64,
     pub starter: f64,
-    /// Whether loads hold on at any volts; else they drop out by the usual rule.
-    pub holds_on: bool,
 }
 
 /// What charges.
@@ -165,13 +163,12 @@ pub fn draft() -> impl Strategy<Value = Draft> {
                 steps,
                 parked,
                 starter,
-                holds_on: false,
             },
         )
 }
 
 impl Load {
-    fn yaml(&self, name: &str, holds_on: bool) -> String {
+    fn yaml(&self, name: &str) -> String {
         let draw = match self.law {
             "current" => format!("{:.3} A", self.amps),
             "power" => format!("{:.4} kW", self.amps * 13.0 / 1000.0),
@@ -182,10 +179,9 @@ impl Load {
             0.0 => String::new(),
             amps => format!(", parked: {:.2} mA", 1000.0 * amps),
         };
-        let works = if holds_on { ", works: 0 V to 90 V" } else { "" };
         let share = |x: f64| format!("{:.2} %", 100.0 * x);
         format!(
-            "  - {{name: {name}, draw: {draw}{works}{parked}, duty: {{idle: {}, governed: {}, stopped: {}}}}}\n",
+            "  - {{name: {name}, draw: {draw}{parked}, duty: {{idle: {}, governed: {}, stopped: {}}}}}\n",
             share(self.idle),
             share(self.governed),
             share(self.stopped)
@@ -268,7 +264,7 @@ impl Draft {
             "accessories:\n"
         };
         for (i, load) in self.loads.iter().enumerate() {
-            text += &load.yaml(&format!("load {i}"), self.holds_on);
+            text += &load.yaml(&format!("load {i}"));
         }
         text += "shift:\n";
         for (step, minutes) in &self.steps {
