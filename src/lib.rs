@@ -118,6 +118,7 @@ pub mod battery;
 pub mod build;
 pub mod bus;
 pub mod catalog;
+pub mod cells;
 pub mod chart;
 pub mod check;
 pub mod circuit;

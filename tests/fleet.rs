@@ -358,6 +358,17 @@ fn headers_that_are_not_understood() {
         ("machine,count\na,1\n", "missing key `build`"),
         ("machine,build,build\na,b,c\n", "build"),
         ("", "empty"),
+        ("machine,build\n", "missing key `row`"),
+        (
+            "machine;build;count\na;b;1\n",
+            "separate the columns with commas",
+        ),
+        ("sep=;\nmachine;build\n", "separate the columns with commas"),
+        ("build,machine\nm.yaml,\"a\nn.yaml,b\n", "f.csv:2:8"),
+        (
+            "machine,build\na,\"m.yaml\"x\n",
+            "not valid CSV: text between a closing quotation mark and the comma",
+        ),
     ] {
         let error = read_sheet("f.csv", text.as_bytes(), Path::new("f.csv")).expect_err(text);
         let told = error.render(false);
@@ -374,6 +385,8 @@ fn headers_that_are_not_understood() {
             .render(false)
             .contains("f.csv:2:2")
     );
+    let none = read_fleet("fleet.yaml", b"machines: []\n").expect_err("no machine");
+    assert!(none.render(false).contains("fleet.yaml:1:11"));
 }
 
 /// A machine with no battery and nothing that states its volts neither keeps up nor falls short; one row is told of.

@@ -112,6 +112,38 @@ fn errors_name_their_line() {
         told(&CSV.replace("full-wave", "none")),
         ReadError::NoRectifier
     ));
+    for (text, says) in [
+        (
+            CSV.replace("2400,13.2,6.66", "2400,13.2"),
+            "line 7: 2 cells under 3 columns",
+        ),
+        (
+            CSV.replace("volts,amps", "volts,amps,amps"),
+            "line 5: the table's header has the column `amps` twice",
+        ),
+        (
+            CSV.replace("rpm,volts,amps", "rpm;volts;amps"),
+            "line 5: separate the columns with commas: `rpm,volts,amps`",
+        ),
+        (
+            CSV.replace("2400,13.2", "2400,\"13.2"),
+            "line 7: a quotation mark begins a cell and none ends it",
+        ),
+        (
+            CSV.replace('#', ""),
+            "the readings need the winding's keys above the table",
+        ),
+        (
+            CSV.lines()
+                .filter(|l| !l.starts_with('#'))
+                .map(|l| format!("{l}\n"))
+                .collect(),
+            "the readings need the winding's keys above the table",
+        ),
+    ] {
+        let told = told(&text).to_string();
+        assert!(told.starts_with(says), "{told}\n{text}");
+    }
     let header = &CSV[..CSV.find("1800").unwrap()];
     assert!(matches!(told(header), ReadError::Empty));
     assert!(matches!(

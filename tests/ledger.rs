@@ -5,8 +5,8 @@ mod seasons_bench;
 
 use ampledger::battery::{Charge, Climate, Terminals};
 use ampledger::build::{Build, Draw, State};
-use ampledger::check::{Wanted, check, first_shift, rule};
 use ampledger::check::answer::Verdict;
+use ampledger::check::{Wanted, check, first_shift, rule};
 use ampledger::curve::curve;
 use ampledger::ledger::Machine;
 use ampledger::quantity::{AmpHours, Amps, Fraction, Hours, Rpm, Volts};

@@ -347,6 +347,35 @@ fn a_file_is_no_folder() {
     assert_eq!(folder.read("out.txt"), OLD);
 }
 
+/// What a call reads it does not write, by whatever name, and no file is written twice.
+#[test]
+fn a_file_is_read_or_written_once() {
+    let folder = Folder::with_good();
+    let good = folder.read("good.yaml");
+    let refused = |args: &[&str], says: &str| {
+        folder
+            .run(args)
+            .assert()
+            .code(2)
+            .stdout_eq("")
+            .stderr_eq(format!("error: {says}\n"));
+        assert_eq!(folder.read("good.yaml"), good);
+    };
+    for name in ["good.yaml", "./good.yaml"] {
+        let says = format!("`{name}` is read in this call: write elsewhere");
+        refused(&["check", "good.yaml", "--force", "-o", name], &says);
+        refused(&["check", "good.yaml", "--force", "--trace", name], &says);
+        refused(&["curve", "good.yaml", "--force", "--svg", name], &says);
+    }
+    for (one, other) in [("new.csv", "new.csv"), ("new.csv", "./new.csv")] {
+        refused(
+            &["check", "good.yaml", "-o", one, "--trace", other],
+            &format!("`{other}` is to be written twice: name two files"),
+        );
+    }
+    assert_eq!(folder.names(), ["good.yaml"]);
+}
+
 /// A fleet stopped by its owner half way leaves neither the file nor a part of it beside.
 #[cfg(unix)]
 #[test]

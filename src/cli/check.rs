@@ -5,7 +5,7 @@ use super::input::{self, Opened};
 use super::{DOES_NOT, KEEPS_UP, output};
 use ampledger::check::answer::{Check, TraceRow, Verdict};
 use ampledger::check::{Checked, Wanted, check, season};
-use ampledger::quantity::Celsius;
+use ampledger::quantity::bounds;
 use ampledger::report::Report;
 use ampledger::view;
 use anyhow::{Context, bail};
@@ -125,8 +125,8 @@ fn over_season(
         bail!("--season `{range}`: write it like `-20 °C to 40 °C`");
     };
     let (from, to) = (
-        input::value::<Celsius>("--season", from)?,
-        input::value::<Celsius>("--season", to)?,
+        input::value("--season", from, &bounds::AIR)?,
+        input::value("--season", to, &bounds::AIR)?,
     );
     if from > to {
         bail!("--season `{range}`: the colder temperature comes first");

@@ -4,11 +4,12 @@ use super::args::{Common, CurveArgs};
 use super::{KEEPS_UP, input, output};
 use ampledger::chart::Chart;
 use ampledger::curve;
+use ampledger::quantity::bounds::{self, Bounds};
 use ampledger::quantity::unit::Unit;
 use ampledger::quantity::{Rpm, Volts};
 use ampledger::report::{Block, Report, html};
 use ampledger::view;
-use anyhow::{anyhow, bail};
+use anyhow::bail;
 
 /// Shows the output of every winding and alternator of a build.
 ///
@@ -18,8 +19,8 @@ pub fn run(args: &CurveArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
     let opened = input::build(&args.file, &args.build, &catalogs)?;
     let build = &opened.build;
-    let mut rpms = list::<Rpm>("--rpm", &args.rpm, Rpm)?;
-    let mut volts = list::<Volts>("--volts", &args.volts, Volts)?;
+    let mut rpms = list("--rpm", &args.rpm, Rpm, &bounds::TURNING)?;
+    let mut volts = list("--volts", &args.volts, Volts, &bounds::CURVE_VOLTS)?;
     if volts.is_empty() {
         volts = curve::default_volts(build);
     }
@@ -46,12 +47,16 @@ fn first_chart(report: &Report) -> Option<&Chart> {
 }
 
 /// Numbers with or without their unit.
-fn list<Q: Unit>(name: &str, texts: &[String], bare: impl Fn(f64) -> Q) -> anyhow::Result<Vec<Q>> {
+fn list<Q: Unit>(
+    name: &str,
+    texts: &[String],
+    bare: impl Fn(f64) -> Q,
+    may_be: &Bounds<Q>,
+) -> anyhow::Result<Vec<Q>> {
     let one = |text: &String| -> anyhow::Result<Q> {
         match text.trim().parse::<f64>() {
-            Ok(number) if number.is_finite() && number > 0.0 => Ok(bare(number)),
-            Ok(_) => Err(anyhow!("{name} `{text}`: must be above 0")),
-            Err(_) => input::value::<Q>(name, text),
+            Ok(number) if number.is_finite() => input::within(name, text, bare(number), may_be),
+            _ => input::value(name, text, may_be),
         }
     };
     texts

@@ -3,7 +3,7 @@
 use super::args::{Common, IdentifyArgs};
 use super::{KEEPS_UP, input, output};
 use ampledger::description::read_charging;
-use ampledger::identify::{Readings, identify, read_csv, readings_of};
+use ampledger::identify::{ReadError, Readings, identify, read_csv, readings_of};
 use ampledger::view;
 use anyhow::Context;
 
@@ -21,7 +21,11 @@ pub fn run(args: &IdentifyArgs, common: &Common) -> anyhow::Result<u8> {
 fn readings(file: &str) -> anyhow::Result<Readings> {
     let (name, text) = input::text(file)?;
     if file.to_ascii_lowercase().ends_with(".csv") {
-        return read_csv(&name, &text).with_context(|| name.clone());
+        return match read_csv(&name, &text) {
+            // it names the file itself
+            Err(ReadError::Keys(refusal)) => Err(refusal.into()),
+            read => read.with_context(|| name.clone()),
+        };
     }
     let charging = read_charging(&name, &text)?;
     readings_of(&charging).with_context(|| name.clone())

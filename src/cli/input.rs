@@ -7,8 +7,9 @@ use ampledger::catalog::Catalogs;
 use ampledger::description::set::Assignment;
 use ampledger::description::{Description, bytes_of, read_file, read_set};
 use ampledger::problem::{Problem, Refusal, Source};
+use ampledger::quantity::bounds::{self, Bounds};
 use ampledger::quantity::parse::parse;
-use ampledger::quantity::{Celsius, Fraction};
+use ampledger::quantity::unit::Unit;
 use ampledger::remedy::{Asked, Prices, read_prices};
 use ampledger::resolve;
 use anyhow::{Context, anyhow};
@@ -64,7 +65,7 @@ pub fn build(file: &str, args: &BuildArgs, catalogs: &Catalogs) -> anyhow::Resul
     let (mut description, source) =
         describe(file, &assignments).map_err(|refusal| whole(refusal, catalogs))?;
     if let Some(text) = &args.air {
-        description.set_air(value::<Celsius>("--air", text)?);
+        description.set_air(value("--air", text, &bounds::AIR)?);
     }
     let own = description.accessories.len();
     resolved(description, source, own, args, catalogs)
@@ -86,13 +87,7 @@ fn resolved(
         Err(problems) => return Err(Refusal::new(source, problems).into()),
     };
     if let Some(text) = &args.start {
-        let charge = value::<Fraction>("--start", text)?;
-        if !(0.0..=1.0).contains(&charge.0) {
-            return Err(anyhow!(
-                "--start `{text}`: a charge lies between 0 % and 100 %"
-            ));
-        }
-        build = build.starting_at(charge);
+        build = build.starting_at(value("--start", text, &bounds::START)?);
     }
     Ok(Opened {
         description,
@@ -226,9 +221,19 @@ pub fn text(file: &str) -> anyhow::Result<(String, String)> {
 /// A quantity given as an argument.
 ///
 /// # Errors
-/// It is none.
-pub fn value<Q: ampledger::quantity::unit::Unit>(name: &str, text: &str) -> anyhow::Result<Q> {
-    parse::<Q>(text)
-        .map(|measured| measured.value)
-        .map_err(|problem| anyhow!("{name} `{text}`: {problem}"))
+/// It is none, or more or less than it may be.
+pub fn value<Q: Unit>(name: &str, text: &str, may_be: &Bounds<Q>) -> anyhow::Result<Q> {
+    let measured = parse::<Q>(text).map_err(|problem| anyhow!("{name} `{text}`: {problem}"))?;
+    within(name, text, measured.value, may_be)
+}
+
+/// A number given as an argument, if it may be.
+///
+/// # Errors
+/// It may not.
+pub fn within<Q: Unit>(name: &str, text: &str, value: Q, may_be: &Bounds<Q>) -> anyhow::Result<Q> {
+    match may_be.check(value) {
+        Ok(()) => Ok(value),
+        Err(beyond) => Err(anyhow!("{name} `{text}`: {beyond}")),
+    }
 }

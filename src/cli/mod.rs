@@ -5,6 +5,7 @@ pub mod args;
 mod check;
 mod completions;
 mod curve;
+mod files;
 mod fleet;
 mod identify;
 mod input;
@@ -39,16 +40,8 @@ pub const WRONG: u8 = 2;
 /// Anything that leaves no answer: [`Refusal`] of an input file, a file that cannot be written.
 pub fn run(arguments: &Arguments) -> anyhow::Result<u8> {
     let common = &arguments.common;
-    let beside = match &arguments.command {
-        Command::Check(check) => check.trace.as_deref(),
-        Command::Curve(curve) => curve.svg.as_deref(),
-        Command::Odds(odds) => odds.worst.as_deref(),
-        _ => None,
-    };
     // what may not be written is told before anything is worked out, and before anything is written
-    for path in common.output.as_deref().into_iter().chain(beside) {
-        output::ready(path, common.force)?;
-    }
+    files::ready(&arguments.command, common)?;
     match &arguments.command {
         Command::Check(check) => check::run(check, common),
         Command::Curve(args) => curve::run(args, common),

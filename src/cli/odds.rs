@@ -8,7 +8,7 @@ use ampledger::description::{Assignment, read_set};
 use ampledger::odds::{Odds, OddsError, Wanted, odds};
 use ampledger::problem::Refusal;
 use ampledger::quantity::format::{self, precise};
-use ampledger::quantity::{Celsius, Fraction};
+use ampledger::quantity::{Celsius, Fraction, bounds};
 use ampledger::view;
 use anyhow::{Context, anyhow, bail};
 use std::path::Path;
@@ -21,11 +21,11 @@ pub fn run(args: &OddsArgs, common: &Common) -> anyhow::Result<u8> {
     let catalogs = input::catalogs(common)?;
     let opened = input::kitted(&args.of, &catalogs)?;
     let air = match &args.of.build.air {
-        Some(text) => Some(input::value::<Celsius>("--air", text)?),
+        Some(text) => Some(input::value("--air", text, &bounds::AIR)?),
         None => None,
     };
     let start = match &args.of.build.start {
-        Some(text) => input::value::<Fraction>("--start", text)?,
+        Some(text) => input::value("--start", text, &bounds::START)?,
         None => Fraction::ONE,
     };
     let wanted = Wanted {

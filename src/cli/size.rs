@@ -4,10 +4,10 @@ use super::args::mend::SizeArgs;
 use super::args::{Common, Format};
 use super::progress::Progress;
 use super::{DOES_NOT, KEEPS_UP, input, output};
-use ampledger::quantity::Fraction;
+use ampledger::quantity::bounds;
 use ampledger::size::{self, Share};
 use ampledger::view;
-use anyhow::{Context, bail};
+use anyhow::Context;
 
 /// Solves each number of the build alone; the exit code is that of the build as it is.
 ///
@@ -35,10 +35,7 @@ fn share(args: &SizeArgs) -> anyhow::Result<Option<Share>> {
     let Some(text) = &args.odds else {
         return Ok(None);
     };
-    let of_builds = input::value::<Fraction>("--odds", text)?;
-    if !(0.01..=1.0).contains(&of_builds.0) {
-        bail!("--odds `{text}`: a share of builds lies between 1 % and 100 %");
-    }
+    let of_builds = input::value("--odds", text, &bounds::OF_BUILDS)?;
     Ok(Some(Share {
         of_builds,
         runs: args.runs,

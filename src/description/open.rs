@@ -35,11 +35,7 @@ pub(super) fn text(bytes: &[u8]) -> Result<String, (String, Problems)> {
     } else {
         text.to_owned()
     };
-    let odd = |c: char| {
-        (c.is_control() && c != '\n' && c != '\t')
-            || matches!(c, '\u{2028}' | '\u{2029}' | '\u{feff}')
-    };
-    if let Some((at, found)) = text.char_indices().find(|(_, c)| odd(*c)) {
+    if let Some((at, found)) = text.char_indices().find(|(_, c)| unprintable(*c)) {
         let problem = Problem::text(
             TextProblem::Unprintable { found },
             at..at + found.len_utf8(),
@@ -47,4 +43,9 @@ pub(super) fn text(bytes: &[u8]) -> Result<String, (String, Problems)> {
         return Err((text, problem.into()));
     }
     Ok(text)
+}
+
+/// Whether no text may hold a character, written out or as an escape.
+pub(super) fn unprintable(c: char) -> bool {
+    (c.is_control() && c != '\n' && c != '\t') || matches!(c, '\u{2028}' | '\u{2029}' | '\u{feff}')
 }

@@ -3,6 +3,7 @@
 mod seen;
 mod syntax;
 
+use super::open::unprintable;
 use super::places::{Child, Content, Key, Place, Places};
 use crate::problem::text::{MOST_ANCHORS, MOST_DEEP, MOST_VALUES};
 use crate::problem::{Problem, Problems, TextProblem};
@@ -127,6 +128,11 @@ impl<'a> Scan<'a> {
                 if tag.is_some() {
                     self.problems
                         .push(Problem::text(TextProblem::Tag, range.clone()));
+                }
+                // what no file may hold may not come as an escape either
+                if let Some(found) = text.chars().find(|c| unprintable(*c)) {
+                    let problem = TextProblem::Unprintable { found };
+                    self.problems.push(Problem::text(problem, range.clone()));
                 }
                 return self.scalar(text.into_owned(), style, anchor, range);
             }

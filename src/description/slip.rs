@@ -21,16 +21,25 @@ pub(super) fn told(text: &str, at: Range<usize>, what: &str) -> Problem {
         .or_else(|| open.as_ref().filter(|o| !o.closed_later).map(Open::slip))
         .or_else(|| near.of_lines(what).filter(|_| open.is_none()));
     if let Some(Slip { at, what, hint }) = slip {
-        let (hint, opened) = (Some(hint), None);
-        return Problem::text(TextProblem::Syntax { what, hint, opened }, at);
+        return Problem::text(not_yaml(what, hint, None), at);
     }
-    let hint = Some(hint(what, open.as_ref()).to_owned());
+    let hint = hint(what, open.as_ref()).to_owned();
     // a bracket on a line of its own above says more than the line where the reader gave up
     let opened = open
         .map(|o| o.at..o.at + 1)
         .filter(|o| o.start < near.line.start);
     let what = what.replace("``'", "a backtick").replace(['`', '\''], "\"");
-    Problem::text(TextProblem::Syntax { what, hint, opened }, at)
+    Problem::text(not_yaml(what, hint, opened), at)
+}
+
+fn not_yaml(what: String, hint: String, opened: Option<Range<usize>>) -> TextProblem {
+    let (of, hint) = ("YAML", Some(hint));
+    TextProblem::Syntax {
+        of,
+        what,
+        hint,
+        opened,
+    }
 }
 
 /// A tab in the indentation of the line of an error, or of the next.

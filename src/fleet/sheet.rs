@@ -2,6 +2,7 @@
 
 use super::files;
 use super::plan::{Entry, Plan, some_kit};
+use crate::cells::{otherwise_separated, stray_mark};
 use crate::description::Assignment;
 use crate::problem::{Problem, Refusal, ShapeProblem, Source, TextProblem};
 use crate::quantity::parse;
@@ -41,6 +42,17 @@ impl Header {
 /// own fault and hides no other.
 pub fn read_sheet(name: &str, bytes: &[u8], path: &Path) -> Result<Plan, Refusal> {
     let text = text(name, bytes)?;
+    if let Some(stray) = stray_mark(text) {
+        let (what, hint) = stray.told();
+        let problem = TextProblem::Syntax {
+            of: "CSV",
+            what: what.to_owned(),
+            hint: Some(hint.to_owned()),
+            opened: None,
+        };
+        let at = stray.byte();
+        return Err(refused(name, text, problem, at..at + 1));
+    }
     let mut reader = csv::ReaderBuilder::new()
         .flexible(true)
         .has_headers(false)
@@ -70,6 +82,18 @@ pub fn read_sheet(name: &str, bytes: &[u8], path: &Path) -> Result<Plan, Refusal
             Err(error) => entries.push(broken(name, &error)),
         }
     }
+    if entries.is_empty() {
+        let missing = ShapeProblem::Missing {
+            key: "row",
+            example: "mower,mower.yaml,2,",
+        };
+        return Err(refused(
+            name,
+            text,
+            missing,
+            text.trim_end().len()..text.len(),
+        ));
+    }
     Ok(Plan {
         name: files::stem(path),
         folder,
@@ -97,12 +121,23 @@ fn refused(
     problem: impl Into<crate::problem::ProblemKind>,
     at: std::ops::Range<usize>,
 ) -> Refusal {
+    refusal(name, text, Problem::text(problem, at))
+}
+
+fn refusal(name: &str, text: &str, problem: Problem) -> Refusal {
     let source = Source {
         name: name.to_owned(),
         text: text.to_owned(),
         ..Source::default()
     };
-    Refusal::new(source, Problem::text(problem, at))
+    Refusal::new(source, problem)
+}
+
+fn unknown(found: &str) -> ShapeProblem {
+    ShapeProblem::UnknownKey {
+        found: found.to_owned(),
+        known: COLUMNS.to_vec(),
+    }
 }
 
 /// The columns of the first line.
@@ -110,6 +145,12 @@ fn header(name: &str, text: &str, record: &StringRecord) -> Result<Header, Refus
     let mut columns = [None; COLUMNS.len()];
     let start = record.position().map_or(0, |p| p.byte() as usize);
     let line = text[start..].lines().next().unwrap_or_default();
+    if otherwise_separated(line) {
+        let unknown = unknown(line);
+        let problem = Problem::text(unknown, start..start + line.len());
+        let help = format!("separate the columns with commas: `{EXAMPLE}`");
+        return Err(refusal(name, text, problem.with_help(help)));
+    }
     for (place, field) in record.iter().enumerate() {
         let field = field.trim().to_lowercase();
         let at = start + line.to_lowercase().find(&field).unwrap_or(0);
@@ -122,11 +163,7 @@ fn header(name: &str, text: &str, record: &StringRecord) -> Result<Header, Refus
                 return Err(refused(name, text, twice, at));
             }
             None => {
-                let unknown = ShapeProblem::UnknownKey {
-                    found: field,
-                    known: COLUMNS.to_vec(),
-                };
-                return Err(refused(name, text, unknown, at));
+                return Err(refused(name, text, unknown(&field), at));
             }
         }
     }

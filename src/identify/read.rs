@@ -1,6 +1,7 @@
 //! Bench tables as written: the keys of a build's charging entry, or a CSV table with those keys in its comments.
 
 use super::readings::{Reading, Readings};
+use crate::cells::{otherwise_separated, stray_mark};
 use crate::description::charging::{RectifierKind, RectifierText};
 use crate::description::{ChargingText, read_charging};
 use crate::problem::Refusal;
@@ -183,22 +184,31 @@ fn rectifier_of(text: &RectifierText) -> Result<Rectifier, ReadError> {
 /// # Errors
 /// [`ReadError`], with the line where there is one.
 pub fn read_csv(name: &str, text: &str) -> Result<Readings, ReadError> {
-    let keys = read_charging(name, &comments(text)).map_err(ReadError::Keys)?;
+    if let Some(stray) = stray_mark(text) {
+        let (what, hint) = stray.told();
+        return Err(ReadError::Table {
+            line: Some(1 + text[..stray.byte()].matches('\n').count() as u64),
+            why: format!("{what}: {hint}"),
+        });
+    }
+    let remarks = comments(text);
+    if remarks.trim().is_empty() {
+        return Err(ReadError::Missing {
+            what: "the winding's keys above the table, a `#` before each line: `# winding: {poles: 12}`, `# rectifier: full-wave`",
+        });
+    }
+    let keys = read_charging(name, &remarks).map_err(ReadError::Keys)?;
     let mut readings = without_rows(&keys)?;
     let mut reader = csv::ReaderBuilder::new()
         .comment(Some(b'#'))
         .trim(csv::Trim::All)
         .from_reader(text.as_bytes());
     let header = reader.headers().map_err(|e| table(&e))?.clone();
-    let column = |name: &'static str| {
-        let found = header
-            .iter()
-            .position(|cell| cell.eq_ignore_ascii_case(name));
-        found
-            .map(|index| (index, name))
-            .ok_or(ReadError::Column { name })
-    };
-    let (rpm, volts, amps) = (column("rpm")?, column("volts")?, column("amps")?);
+    let above = text
+        .lines()
+        .take_while(|line| line.starts_with('#'))
+        .count() as u64;
+    let [rpm, volts, amps] = columns(&header, above + 1)?;
     for record in reader.records() {
         let record = record.map_err(|e| table(&e))?;
         readings.rows.push(Reading {
@@ -214,6 +224,30 @@ pub fn read_csv(name: &str, text: &str) -> Result<Readings, ReadError> {
     }
 }
 
+/// The places of the columns in a header, which stands on a line.
+fn columns(header: &csv::StringRecord, line: u64) -> Result<[(usize, &'static str); 3], ReadError> {
+    let wrong = |why: String| ReadError::Table {
+        line: Some(line),
+        why,
+    };
+    if otherwise_separated(header.get(0).unwrap_or_default()) {
+        let why = "separate the columns with commas: `rpm,volts,amps`";
+        return Err(wrong(why.to_owned()));
+    }
+    let column = |name: &'static str| {
+        let mut cells = header.iter().enumerate();
+        let mut found = || cells.find(|(_, cell)| cell.eq_ignore_ascii_case(name));
+        let (place, _) = found().ok_or(ReadError::Column { name })?;
+        match found() {
+            None => Ok((place, name)),
+            Some(_) => Err(wrong(format!(
+                "the table's header has the column `{name}` twice"
+            ))),
+        }
+    };
+    Ok([column("rpm")?, column("volts")?, column("amps")?])
+}
+
 /// The comments alone, every line and column where it was.
 fn comments(text: &str) -> String {
     let keep = |line: &str| match line.strip_prefix('#') {
@@ -224,9 +258,15 @@ fn comments(text: &str) -> String {
 }
 
 fn table(error: &csv::Error) -> ReadError {
+    let why = match error.kind() {
+        csv::ErrorKind::UnequalLengths {
+            expected_len, len, ..
+        } => format!("{len} cells under {expected_len} columns"),
+        _ => error.to_string(),
+    };
     ReadError::Table {
         line: error.position().map(csv::Position::line),
-        why: error.to_string(),
+        why,
     }
 }
 

@@ -25,8 +25,10 @@ pub enum TextProblem {
     Empty,
     /// A tab where YAML wants spaces.
     Tab,
-    /// Not YAML.
+    /// Not the language it should be.
     Syntax {
+        /// The language: `YAML`, `CSV`.
+        of: &'static str,
         /// What the reader says.
         what: String,
         /// What would do.
@@ -83,7 +85,7 @@ impl fmt::Display for TextProblem {
             }
             P::Empty => f.write_str("the file is empty"),
             P::Tab => f.write_str("tab used for indentation"),
-            P::Syntax { what, .. } => write!(f, "not valid YAML: {what}"),
+            P::Syntax { of, what, .. } => write!(f, "not valid {of}: {what}"),
             P::TooDeep => write!(f, "nested deeper than {MOST_DEEP} levels"),
             P::TooMany => write!(
                 f,

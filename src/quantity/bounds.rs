@@ -236,5 +236,7 @@ bounds! {
     MAX_DROP: Fraction "voltage drop allowed", from 0.01 "%" to 50.0 "%";
     INSULATION: Celsius "temperature class of the insulation", from 40.0 "°C" to 250.0 "°C";
     LUMENS: Fraction "light", from 0.0 "" to 1.0e6 "";
+    START: Fraction "charge", from 0.0 "%" to 100.0 "%";
+    OF_BUILDS: Fraction "share of builds", from 1.0 "%" to 100.0 "%";
     SWITCH: Amps "switch rating", from 0.001 "A" to 1000.0 "A";
 }

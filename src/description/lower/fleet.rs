@@ -1,10 +1,10 @@
 //! A fleet file.
 
-use super::Lower;
+use super::{Entries, Lower};
 use crate::description::fleet::{FleetText, MachineText};
 use crate::description::raw::{self, Leaf, List, Map};
 use crate::description::{Assignment, path};
-use crate::problem::{Part, Problem};
+use crate::problem::{Part, Problem, SenseProblem};
 use crate::quantity::bounds;
 
 impl Lower<'_> {
@@ -24,6 +24,13 @@ impl Lower<'_> {
             }
         }
         let mut entries = self.list(&raw.machines, "machines");
+        if entries.as_ref().is_some_and(Entries::is_empty) {
+            let none = SenseProblem::NoneOf {
+                keys: &["build"],
+                example: "- {build: mower.yaml, count: 4}",
+            };
+            self.problem(Problem::value("machines", none));
+        }
         let mut machines = Vec::new();
         while let Some((at, entry)) = self.entry(&mut entries) {
             machines.extend(self.machine(&entry, at));

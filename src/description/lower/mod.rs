@@ -173,8 +173,14 @@ impl<'a> Lower<'a> {
     pub(super) fn read<T: Deserialize<'a> + Default>(&mut self, value: Value<'a>) -> T {
         T::deserialize(value).unwrap_or_else(|e| {
             // there is room for every shape, and this is not reached
-            let (what, hint, opened) = (e.to_string(), None, None);
-            self.problem(Problem::whole(TextProblem::Syntax { what, hint, opened }));
+            let (of, what) = ("YAML", e.to_string());
+            let (hint, opened) = (None, None);
+            self.problem(Problem::whole(TextProblem::Syntax {
+                of,
+                what,
+                hint,
+                opened,
+            }));
             T::default()
         })
     }
