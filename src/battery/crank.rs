@@ -139,7 +139,7 @@ impl Battery {
     ///
     /// ```text
     /// each attempt:  d ← d∞ + (d − d∞) exp(−t/τ),   s ← max(s − I t/C_max, 0)
-    ///                V = v(−I; s, d, T) − I R_cable
+    ///                V = max(v(−I; s, d, T) − I R_cable, 0)
     /// each rest:     d ← d exp(−t_rest/τ)
     /// ```
     /// where I starter current (A), d∞ its depletion target, τ 0.5 h, V volts at
@@ -216,9 +216,10 @@ fn cranked(climate: &Climate, from: Charge, starter: &Starter, draw: Amps) -> Cr
         charge.depletion = climate.depletion_after(charge.depletion, target, starter.time);
         charge.soc = Fraction((charge.soc.0 - taken).max(0.0));
     }
-    let battery = climate.at(charge).volts(-draw);
+    // what the battery cannot drive through itself and the cable leaves no volts, not less than none
+    let battery = climate.at(charge).volts(-draw).max(Volts::ZERO);
     Cranked {
-        starter: battery - draw * starter.cable,
+        starter: (battery - draw * starter.cable).max(Volts::ZERO),
         battery,
         charge,
     }

@@ -154,7 +154,7 @@ fn accessory_row(
         let connected = &machine.connected[s.wired].bus;
         // With it on, the rest of its time's mean load is heavier by what it adds beside its mean.
         let volts = (s.mean.bus + s.mean.give_way * (duty.rest() * sum.current_at(s.mean.bus)))
-            .min(s.mean.bus);
+            .clamp(Volts::ZERO, s.mean.bus.max(Volts::ZERO));
         let class = connected.cuts.class(accessory.works.low);
         let asked = sum.current_at(connected.cuts.asked_at(class, volts));
         let missed = connected.cuts.taken(class, volts).rest();
