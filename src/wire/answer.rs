@@ -143,6 +143,8 @@ pub struct SwitchRow {
     pub relay: bool,
     /// Rating of the relay's contacts; none where no relay is needed, or none of the list will do.
     pub relay_a: Option<Amps>,
+    /// What those contacts carry in the heat of a machine: no less than the worst steady current.
+    pub relay_carries_a: Option<Amps>,
 }
 
 /// What arrives at one accessory in the state in which it sees least.

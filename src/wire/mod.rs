@@ -184,6 +184,7 @@ fn switch(
         needs_a: needs,
         switch_a: member.switch,
         relay: needed,
-        relay_a: relay.map(|r| r.contacts),
+        relay_a: relay.as_ref().map(|r| r.contacts),
+        relay_carries_a: relay.map(|r| r.carries),
     })
 }

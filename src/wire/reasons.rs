@@ -157,9 +157,17 @@ fn drop(demand: &Demand, settled: &Settled) -> String {
 }
 
 fn overload(choice: &Choice) -> String {
+    let reached = Celsius(overloaded(choice).0.round());
+    let over = match reached > choice.place.class {
+        true => format!(
+            ", over the {} that its insulation bears for long",
+            format::temperature(choice.place.class)
+        ),
+        false => String::new(),
+    };
     format!(
-        "overload: passing 135 % of its rating, as it may for ten minutes, the fuse lets the copper reach {}",
-        format::temperature(Celsius(overloaded(choice).0.round()))
+        "overload: passing 135 % of its rating, as it may for ten minutes, the fuse lets the copper reach {}{over}",
+        format::temperature(reached)
     )
 }
 
@@ -173,18 +181,20 @@ pub(super) fn overloaded(choice: &Choice) -> Celsius {
 
 fn switch(row: &SwitchRow) -> String {
     let needs = format!(
-        "switch of {}: {} × {} = {} needed, rated {}",
+        "switch of {}: {} × {} = {} asked of it, rated {}",
         row.accessory,
         two(row.factor),
         format::text(row.amps),
         format::text(row.needs_a),
         format::text(row.switch_a)
     );
-    match (row.relay, row.relay_a) {
+    match (row.relay, row.relay_a.zip(row.relay_carries_a)) {
         (false, _) => needs,
-        (true, Some(contacts)) => {
-            format!("{needs}: relay with contacts of {}", format::text(contacts))
-        }
+        (true, Some((contacts, carries))) => format!(
+            "{needs}: relay with contacts of {}, which carry {} in the heat",
+            format::text(contacts),
+            format::text(carries)
+        ),
         (true, None) => {
             format!("{needs}: a contactor for continuous duty, above the relays of the list")
         }

@@ -221,6 +221,7 @@ fn sized() -> Wire {
             switch_a: Amps(10.0),
             relay: true,
             relay_a: Some(Amps(20.0)),
+            relay_carries_a: Some(Amps(14.0)),
         }],
         binds: "fuse and wire".to_owned(),
         reasons: vec!["load: 9.26 A in idle".to_owned(), "fuse 15 A".to_owned()],
