@@ -7,9 +7,7 @@ use crate::problem::{Problem, Problems, TextProblem, text::MOST_BYTES};
 /// On a problem, the text as far as it can be shown comes with it.
 pub(super) fn text(bytes: &[u8]) -> Result<String, (String, Problems)> {
     if bytes.len() as u64 > MOST_BYTES {
-        let problem = TextProblem::TooLarge {
-            bytes: bytes.len() as u64,
-        };
+        let problem = TextProblem::TooLarge { most: MOST_BYTES };
         return Err((String::new(), Problem::whole(problem).into()));
     }
     let bytes = bytes.strip_prefix(b"\xef\xbb\xbf").unwrap_or(bytes);

@@ -115,6 +115,17 @@ impl Places {
         Some((at, 0))
     }
 
+    /// The number of the entry that a step names in a list.
+    pub(super) fn index_of(&self, list: &Found, step: &Step) -> Option<usize> {
+        match (&self.places.get(list.place)?.content, step) {
+            (Content::List { entries, .. }, Step::Named(name)) => {
+                let named = |child: &Child| self.names(child.place).any(|n| n == name);
+                entries.iter().position(named)
+            }
+            _ => None,
+        }
+    }
+
     /// One step down.
     fn below(&self, from: &Found, step: &Step) -> Option<Found> {
         let (key, child) = match (&self.places.get(from.place)?.content, step) {
@@ -123,9 +134,8 @@ impl Places {
                 (Some(key.span.clone()), child)
             }
             (Content::List { entries, .. }, Step::Index(index)) => (None, entries.get(*index)?),
-            (Content::List { entries, .. }, Step::Named(name)) => {
-                let named = |child: &&Child| self.names(child.place).any(|n| n == name);
-                (None, entries.iter().find(named)?)
+            (Content::List { entries, .. }, Step::Named(_)) => {
+                (None, entries.get(self.index_of(from, step)?)?)
             }
             _ => return None,
         };

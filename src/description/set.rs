@@ -384,9 +384,7 @@ impl Target<'_> {
         let bytes = start..edit.bytes.start + edit.text.trim_end().len();
         let mut kept: Vec<Splice> = splices.iter().filter_map(|s| s.after(edit)).collect();
         let (places, problems) = scan::scan(&next).map_err(|problems| self.unplaced(&problems))?;
-        let found = places
-            .walk(&self.assignment.path)
-            .filter(|(_, left)| *left == 0);
+        let found = places.walk(&self.by_index()).filter(|(_, left)| *left == 0);
         if found.is_none_or(|(found, _)| {
             found.value.start < edit.bytes.start || found.value.end > bytes.end
         }) {
@@ -408,6 +406,18 @@ impl Target<'_> {
             },
             problems,
         ))
+    }
+
+    /// The path with the entries that it names counted instead: the edit may give one another name.
+    fn by_index(&self) -> Vec<Step> {
+        let places = &self.source.places;
+        let mut steps: Vec<Step> = Vec::new();
+        for step in &self.assignment.path {
+            let list = places.walk(&steps).filter(|(_, left)| *left == 0);
+            let index = list.and_then(|(list, _)| places.index_of(&list, step));
+            steps.push(index.map_or_else(|| step.clone(), Step::Index));
+        }
+        steps
     }
 
     fn unplaced(&self, problems: &Problems) -> Box<Problem> {

@@ -62,7 +62,11 @@ pub fn read_sheet(name: &str, bytes: &[u8], path: &Path) -> Result<Plan, Refusal
         match records.next() {
             Some(Ok(record)) if record.iter().all(|f| f.trim().is_empty()) => {}
             Some(Ok(record)) => break header(name, text, &record)?,
-            _ => return Err(refused(name, text, TextProblem::Empty, 0..0)),
+            _ => {
+                let empty = Problem::text(TextProblem::Empty, 0..0);
+                let help = format!("a fleet begins with its columns: `{EXAMPLE}`");
+                return Err(refusal(name, text, empty.with_help(help)));
+            }
         }
     };
     let folder = files::folder(path);
@@ -103,8 +107,8 @@ pub fn read_sheet(name: &str, bytes: &[u8], path: &Path) -> Result<Plan, Refusal
 
 fn text<'b>(name: &str, bytes: &'b [u8]) -> Result<&'b str, Refusal> {
     if bytes.len() as u64 > MOST_BYTES {
-        let bytes = bytes.len() as u64;
-        return Err(refused(name, "", TextProblem::TooLarge { bytes }, 0..0));
+        let most = MOST_BYTES;
+        return Err(refused(name, "", TextProblem::TooLarge { most }, 0..0));
     }
     let bytes = bytes.strip_prefix(b"\xef\xbb\xbf").unwrap_or(bytes);
     std::str::from_utf8(bytes).map_err(|error| {

@@ -8,8 +8,8 @@ use std::ops::Range;
 pub enum TextProblem {
     /// Beyond the most bytes that are read.
     TooLarge {
-        /// How many it has.
-        bytes: u64,
+        /// The most.
+        most: u64,
     },
     /// A byte that is not UTF-8.
     NotUtf8 {
@@ -75,10 +75,9 @@ impl fmt::Display for TextProblem {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         use TextProblem as P;
         match self {
-            P::TooLarge { bytes } => write!(
-                f,
-                "the file is too large: {bytes} bytes, the limit is 1 MiB"
-            ),
+            P::TooLarge { most } => {
+                write!(f, "the file is too large: the limit is {} MiB", most >> 20)
+            }
             P::NotUtf8 { byte } => write!(f, "the file is not UTF-8: byte 0x{byte:02X}"),
             P::Unprintable { found } => {
                 write!(f, "unprintable character U+{:04X}", u32::from(*found))
@@ -120,7 +119,9 @@ impl TextProblem {
     pub(super) fn help(&self) -> Option<&str> {
         use TextProblem as P;
         Some(match self {
-            P::TooLarge { .. } => "a build file is a few kilobytes: is this the right file?",
+            P::TooLarge { .. } => {
+                "a build file is a few kilobytes, a fleet of a thousand machines a hundred: is this the right file?"
+            }
             P::NotUtf8 { .. } => "save the file as UTF-8 text",
             P::Unprintable { .. } => "delete the character",
             P::Empty => "`ampledger new` writes a build file to start from",

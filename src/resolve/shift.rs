@@ -73,7 +73,20 @@ pub(super) fn steps(
             steps.push(Step { state, time });
         }
     }
+    note_unused_speeds(context, description, speeds);
     steps
+}
+
+/// A speed that no step is worked at changes nothing, which a slip of its name hides.
+fn note_unused_speeds(context: &mut Context, description: &Description, speeds: &[Speed]) {
+    let unused = |speed: &&Speed| {
+        let mut steps = description.shift.iter();
+        !steps.any(|step| step.state.value == speed.name)
+    };
+    for speed in speeds.iter().filter(unused) {
+        let note = format!("the shift has no step at speed `{}`", speed.name);
+        context.notes.push(note);
+    }
 }
 
 /// How long a step lasts; a start without a time takes the starter's.

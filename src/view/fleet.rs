@@ -30,7 +30,7 @@ pub fn fleet(answer: &Fleet) -> Report {
         .subtitle(subtitle(answer))
         .verdict(
             tone,
-            lead(totals.keeps_up, judged),
+            lead(totals.keeps_up, judged, totals.errors == 0),
             sentence(answer, crossed),
         );
     if crossed {
@@ -63,11 +63,13 @@ fn subtitle(answer: &Fleet) -> String {
     format!("Fleet: {}", format::count(rows, "row", "rows"))
 }
 
-fn lead(keeps_up: u64, judged: u64) -> String {
+fn lead(keeps_up: u64, judged: u64, whole: bool) -> String {
     if judged == 0 {
         "Not judged".to_owned()
-    } else if keeps_up == judged {
+    } else if keeps_up == judged && whole {
         "All keep up".to_owned()
+    } else if keeps_up == judged {
+        format!("All {judged} judged keep up")
     } else {
         format!("{keeps_up} of {judged} keep up")
     }
