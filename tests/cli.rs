@@ -111,6 +111,65 @@ For more information, try '--help'.
 "#]]);
 }
 
+/// What is wrong with a kit is told in the kit's file, and what is wrong with the build in the build's.
+#[test]
+fn a_kit_that_does_not_fit_is_shown_in_its_own_file() {
+    let folder = Folder::with_good();
+    let kit = "accessories:\n  - {name: lamp, draw: 30 W, duty: {idel: 100 %}}\n  - {name: pump, draw: 4 A, circuit: own}\n";
+    folder.write("kit.yaml", kit);
+    let told = "\
+error: no state is named `idel`
+ --> kit.yaml:2:37
+  |
+2 |   - {name: lamp, draw: 30 W, duty: {idel: 100 %}}
+  |                                     ^^^^ did you mean `idle`?
+  |
+  = note: field `accessories[0].duty.idel`
+  = help: names here: idle, governed, crank, stopped
+
+error: no circuit is named `own`
+ --> kit.yaml:3:38
+  |
+3 |   - {name: pump, draw: 4 A, circuit: own}
+  |                                      ^^^ not there
+  |
+  = note: field `accessories[1].circuit`
+  = help: there is none
+
+2 problems in kit.yaml
+";
+    for command in ["check", "remedy", "size", "sheet"] {
+        folder
+            .run(&[command, "good.yaml", "--with", "kit.yaml"])
+            .assert()
+            .code(2)
+            .stdout_eq("")
+            .stderr_eq(told);
+    }
+    folder.write(
+        "fleet.csv",
+        "machine,build,kit\na,good.yaml,kit.yaml\nb,good.yaml,\n",
+    );
+    let fleet = folder
+        .run(&["fleet", "fleet.csv", "--format", "csv"])
+        .output();
+    let rows = String::from_utf8(fleet.expect("run").stdout).expect("text");
+    assert!(
+        rows.contains("kit.yaml:2:37: no state is named `idel`"),
+        "{rows}"
+    );
+    folder.write(
+        "good.yaml",
+        folder.read("good.yaml").replace("40 W", "40 V"),
+    );
+    let both = folder.run(&["check", "good.yaml", "--with", "kit.yaml"]);
+    let told = String::from_utf8(both.output().expect("run").stderr).expect("text");
+    assert!(
+        told.contains("good.yaml:11:") && !told.contains("kit.yaml"),
+        "{told}"
+    );
+}
+
 #[test]
 fn a_build_comes_from_standard_input() {
     let folder = Folder::new();

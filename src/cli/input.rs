@@ -67,34 +67,23 @@ pub fn build(file: &str, args: &BuildArgs, catalogs: &Catalogs) -> anyhow::Resul
     if let Some(text) = &args.air {
         description.set_air(value("--air", text, &bounds::AIR)?);
     }
-    let own = description.accessories.len();
-    resolved(description, source, own, args, catalogs)
+    match resolve::resolve(&description, catalogs) {
+        Err(problems) => Err(Refusal::new(source, problems).into()),
+        Ok(build) => Ok(Opened {
+            own: description.accessories.len(),
+            description,
+            source,
+            build: started(build, args)?,
+        }),
+    }
 }
 
-/// Resolves a description, with the start as the arguments have it; `own` of its accessories stand in the file.
-///
-/// # Errors
-/// [`Refusal`]; arguments that are no values.
-fn resolved(
-    description: Description,
-    source: Source,
-    own: usize,
-    args: &BuildArgs,
-    catalogs: &Catalogs,
-) -> anyhow::Result<Opened> {
-    let mut build = match resolve::resolve(&description, catalogs) {
-        Ok(build) => build,
-        Err(problems) => return Err(Refusal::new(source, problems).into()),
-    };
-    if let Some(text) = &args.start {
-        build = build.starting_at(value("--start", text, &bounds::START)?);
+/// The build with the start as the arguments have it.
+fn started(build: Build, args: &BuildArgs) -> anyhow::Result<Build> {
+    match &args.start {
+        Some(text) => Ok(build.starting_at(value("--start", text, &bounds::START)?)),
+        None => Ok(build),
     }
-    Ok(Opened {
-        description,
-        source,
-        build,
-        own,
-    })
 }
 
 /// A refused file with the parts that are in no catalog among its problems, so that all is told at once.
@@ -144,14 +133,16 @@ pub fn with_kit(
     catalogs: &Catalogs,
 ) -> anyhow::Result<Opened> {
     let kit = resolve::find_kit(catalogs, kit)?;
-    let description = resolve::with_kit(&opened.description, &kit);
-    resolved(
+    let (alone, source) = (&opened.description, &opened.source);
+    let description = resolve::with_kit(alone, &kit);
+    let build = resolve::resolve(&description, catalogs)
+        .map_err(|problems| resolve::misfit(alone, source, &kit, catalogs, problems))?;
+    Ok(Opened {
         description,
-        opened.source.clone(),
-        opened.own,
-        args,
-        catalogs,
-    )
+        source: source.clone(),
+        build: started(build, args)?,
+        own: opened.own,
+    })
 }
 
 /// The build of a file, with a kit's accessories added where one is named.

@@ -8,7 +8,7 @@ use crate::check::{Judged, judge};
 use crate::description::read_file;
 use crate::problem::Refusal;
 use crate::remedy::{Asked, Prices, first_remedy};
-use crate::resolve::{resolve, with_kit};
+use crate::resolve::{misfit, resolve, with_kit};
 
 /// What all builds of a fleet share.
 pub(super) struct Shop<'a> {
@@ -35,15 +35,25 @@ impl Shop<'_> {
         let path = self.plan.folder.join(&*entry.build);
         let (mut description, source) =
             read_file(&path, &entry.set).map_err(|refusal| one_line(&refusal))?;
-        let own = description.accessories.len();
-        if let Some(kit) = &entry.kit {
-            description = with_kit(&description, self.kits.find(kit)?);
-        }
         if let Some(air) = entry.air {
             description.set_air(air);
         }
-        let build = resolve(&description, self.catalogs)
-            .map_err(|problems| one_line(&Refusal::new(source.clone(), problems)))?;
+        let own = description.accessories.len();
+        let kit = entry.kit.as_ref().map(|kit| self.kits.find(kit));
+        let (description, build) = match kit.transpose()? {
+            None => {
+                let build = resolve(&description, self.catalogs)
+                    .map_err(|problems| one_line(&Refusal::new(source.clone(), problems)))?;
+                (description, build)
+            }
+            Some(kit) => {
+                let both = with_kit(&description, kit);
+                let build = resolve(&both, self.catalogs).map_err(|problems| {
+                    one_line(&misfit(&description, &source, kit, self.catalogs, problems))
+                })?;
+                (both, build)
+            }
+        };
         let judged = judge(&build).map_err(|error| format!("{}: {error}", source.name))?;
         let asked = Asked {
             own,

@@ -1,8 +1,10 @@
 //! Kits: accessories added to a machine together.
 
+use super::resolve;
 use crate::catalog::{Catalogs, Kind};
-use crate::description::{AccessoryText, Description, KitText, Written, bytes_of, read_kit};
-use crate::problem::Refusal;
+use crate::description::{AccessoryText, Description, Written, path};
+use crate::description::{bytes_of, open_text, read_kit};
+use crate::problem::{Problems, Refusal, Source};
 use crate::quantity::Money;
 use std::fmt;
 use std::path::Path;
@@ -18,6 +20,8 @@ pub struct Kit {
     pub price: Option<Money>,
     /// What it adds.
     pub accessories: Vec<AccessoryText>,
+    /// Its own text, on which is shown where it does not fit a build.
+    source: Source,
 }
 
 /// Why there is no such kit.
@@ -71,31 +75,70 @@ impl From<Refusal> for KitError {
 /// [`KitError`]: nothing of that name, or a kit that does not read.
 pub fn find_kit(catalogs: &Catalogs, name: &str) -> Result<Kit, KitError> {
     if let Some(entry) = catalogs.find(Kind::Kit, name) {
-        let text = read_kit(&format!("{} `{}`", entry.origin, entry.id), &entry.body)?;
-        return Ok(kit(entry.id, entry.title, text));
+        let name = format!("{} `{}`", entry.origin, entry.id);
+        return kit(entry.id, entry.title, &name, &entry.body);
     }
-    let path = Path::new(name);
-    if !path.exists() {
+    let file = Path::new(name);
+    if !file.exists() {
         let nearest = catalogs.nearest(Kind::Kit, name);
         return Err(KitError::Unknown {
             name: name.to_owned(),
             nearest,
         });
     }
-    let bytes = bytes_of(path, name)?;
-    let text = read_kit(name, &String::from_utf8_lossy(&bytes))?;
-    let title = path
+    let bytes = bytes_of(file, name)?;
+    let title = file
         .file_stem()
         .map_or(name.to_owned(), |s| s.to_string_lossy().into_owned());
-    Ok(kit(name.to_owned(), title, text))
+    let text = String::from_utf8_lossy(&bytes);
+    kit(name.to_owned(), title, name, &text)
 }
 
-fn kit(name: String, title: String, text: KitText) -> Kit {
-    Kit {
-        name,
+/// A kit read from its text, which messages call `shown`.
+fn kit(id: String, title: String, shown: &str, text: &str) -> Result<Kit, KitError> {
+    let kit = read_kit(shown, text)?;
+    let (source, _) = open_text(shown, text.as_bytes())?;
+    Ok(Kit {
+        name: id,
         title,
-        price: text.price.map(|p| p.value),
-        accessories: text.accessories,
+        price: kit.price.map(|p| p.value),
+        accessories: kit.accessories,
+        source,
+    })
+}
+
+/// What is said where a build with a kit does not resolve: what is wrong with the build alone, in its file, or else how the
+/// kit does not fit it, in the kit's.
+#[must_use]
+pub fn misfit(
+    alone: &Description,
+    source: &Source,
+    kit: &Kit,
+    catalogs: &Catalogs,
+    problems: Problems,
+) -> Refusal {
+    if let Err(own) = resolve(alone, catalogs) {
+        return Refusal::new(source.clone(), own);
+    }
+    let mut in_kit = Problems::default();
+    for problem in problems.iter() {
+        let mut problem = problem.clone();
+        problem.path = kit.path_of(&problem.path, alone.accessories.len());
+        in_kit.push(problem);
+    }
+    Refusal::new(kit.source.clone(), in_kit)
+}
+
+impl Kit {
+    /// The place in the kit's own text of a place in a build that had `before` accessories of its own.
+    fn path_of(&self, place: &str, before: usize) -> String {
+        let own = (0..self.accessories.len()).find_map(|index| {
+            let rest = place.strip_prefix(&path::index("accessories", before + index))?;
+            Some(path::index("accessories", index) + rest)
+        });
+        // what is written in an entry has kept its place there
+        own.filter(|_| self.source.places.find(place).is_none())
+            .unwrap_or_else(|| place.to_owned())
     }
 }
 
@@ -107,7 +150,7 @@ pub fn with_kit(description: &Description, kit: &Kit) -> Description {
     let mut renamed: Vec<(String, String)> = Vec::new();
     for (index, accessory) in kit.accessories.iter().enumerate() {
         let mut accessory = accessory.clone();
-        accessory.path = crate::description::path::index("accessories", first + index);
+        accessory.path = path::index("accessories", first + index);
         if let Some(name) = &mut accessory.name {
             let free = free_name(&with.accessories, &name.value);
             if free != name.value {

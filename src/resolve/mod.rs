@@ -23,7 +23,7 @@ mod winding;
 mod wiring;
 
 pub use fault::Fault;
-pub use kit::{Kit, KitError, find_kit, with_kit};
+pub use kit::{Kit, KitError, find_kit, misfit, with_kit};
 
 use crate::build::{BatterySpec, Build, Figure, Origin, Source};
 use crate::catalog::Catalogs;
@@ -73,7 +73,11 @@ pub fn more_problems(partial: &Description, catalogs: &Catalogs) -> Problems {
 fn problems(faults: Vec<(String, Fault)>) -> Problems {
     let mut problems = Problems::default();
     for (path, fault) in faults {
-        problems.push(Problem::value(path, fault));
+        // a state is named by a key
+        problems.push(match fault {
+            Fault::UnknownName { what: "state", .. } => Problem::key(path, fault),
+            _ => Problem::value(path, fault),
+        });
     }
     problems
 }
