@@ -363,6 +363,7 @@ fn headers_that_are_not_understood() {
             "machine;build;count\na;b;1\n",
             "separate the columns with commas",
         ),
+        ("machine,build\na\u{1b}[31m,m.yaml\n", "f.csv:2:2"),
         ("sep=;\nmachine;build\n", "separate the columns with commas"),
         ("build,machine\nm.yaml,\"a\nn.yaml,b\n", "f.csv:2:8"),
         (

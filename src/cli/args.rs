@@ -145,7 +145,7 @@ pub struct BuildArgs {
     #[arg(long, value_name = "TEMPERATURE", allow_hyphen_values = true)]
     pub air: Option<String>,
     /// Charge at the beginning of the first shift, `80 %`
-    #[arg(long, value_name = "CHARGE")]
+    #[arg(long, value_name = "CHARGE", allow_hyphen_values = true)]
     pub start: Option<String>,
 }
 

@@ -22,6 +22,7 @@ pub use accessory::{AccessoryText, DrawText, DutyText, InrushText, LawName, Work
 pub use charging::{
     AlternatorText, ChargingText, RatedText, ReadingText, RectifierText, RegulatorText, WindingText,
 };
+pub(crate) use open::unprintable;
 pub(crate) use read::open_text;
 pub use read::{
     bytes_of, bytes_within, read, read_accessory, read_battery, read_charging, read_file,

@@ -44,6 +44,6 @@ pub(super) fn text(bytes: &[u8]) -> Result<String, (String, Problems)> {
 }
 
 /// Whether no text may hold a character, written out or as an escape.
-pub(super) fn unprintable(c: char) -> bool {
+pub(crate) fn unprintable(c: char) -> bool {
     (c.is_control() && c != '\n' && c != '\t') || matches!(c, '\u{2028}' | '\u{2029}' | '\u{feff}')
 }

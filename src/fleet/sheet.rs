@@ -3,7 +3,7 @@
 use super::files;
 use super::plan::{Entry, Plan, some_kit};
 use crate::cells::{otherwise_separated, stray_mark};
-use crate::description::Assignment;
+use crate::description::{Assignment, unprintable};
 use crate::problem::{Problem, Refusal, ShapeProblem, Source, TextProblem};
 use crate::quantity::parse;
 use crate::quantity::{Celsius, bounds};
@@ -111,12 +111,20 @@ fn text<'b>(name: &str, bytes: &'b [u8]) -> Result<&'b str, Refusal> {
         return Err(refused(name, "", TextProblem::TooLarge { most }, 0..0));
     }
     let bytes = bytes.strip_prefix(b"\xef\xbb\xbf").unwrap_or(bytes);
-    std::str::from_utf8(bytes).map_err(|error| {
+    let text = std::str::from_utf8(bytes).map_err(|error| {
         let at = error.valid_up_to();
         let byte = bytes.get(at).copied().unwrap_or_default();
         let shown = String::from_utf8_lossy(bytes);
         refused(name, &shown, TextProblem::NotUtf8 { byte }, at..at + 3)
-    })
+    })?;
+    let odd = |c: char| c != '\r' && unprintable(c);
+    match text.char_indices().find(|(_, c)| odd(*c)) {
+        None => Ok(text),
+        Some((at, found)) => {
+            let problem = TextProblem::Unprintable { found };
+            Err(refused(name, text, problem, at..at + found.len_utf8()))
+        }
+    }
 }
 
 fn refused(

@@ -5,7 +5,8 @@ use crate::description::raw::{self, Leaf, List, Map, Named, Node};
 use crate::description::{EngineText, StarterText, StepText, Written, path};
 use crate::problem::words::space_after_colon;
 use crate::problem::{Problem, SenseProblem};
-use crate::quantity::{Rpm, bounds};
+use crate::quantity::parse::parse;
+use crate::quantity::{Hours, Rpm, bounds};
 
 impl Lower<'_> {
     /// `engine:`.
@@ -93,7 +94,7 @@ impl Lower<'_> {
                 return None;
             }
             let state = self.name_at(at.clone(), node)?;
-            if let Some(help) = space_after_colon(&state.value) {
+            if let Some(help) = space_after_colon(&state.value).or_else(|| colon(&state.value)) {
                 let state = state.value;
                 let problem = SenseProblem::StepWithoutTime { state };
                 self.problem(Problem::value(at, problem).with_help(help));
@@ -135,4 +136,14 @@ impl Lower<'_> {
         }
         Some(step)
     }
+}
+
+/// What would do for `idle 10 min`, a state and its time without a colon.
+fn colon(step: &str) -> Option<String> {
+    let (state, time) = step.split_once(' ')?;
+    parse::<Hours>(time).ok()?;
+    Some(format!(
+        "put a colon after the state: `{state}: {}`",
+        time.trim()
+    ))
 }
