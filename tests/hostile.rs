@@ -112,7 +112,8 @@ proptest! {
         let (light, heavy) = (ruled(&draft), ruled(&heavier));
         prop_assert!(heavy.verdict >= light.verdict, "{}", heavier.yaml());
         if let (Some((light, _)), Some((heavy, _))) = (light.settles, heavy.settles) {
-            prop_assert!(heavy.soc <= light.soc + Fraction(1e-6), "{light:?} {heavy:?}\n{}", heavier.yaml());
+            // Steps of ten minutes set two builds apart by 1.4e-6 of charge where steps of six seconds leave 2.7e-7.
+            prop_assert!(heavy.soc <= light.soc + Fraction(1e-5), "{light:?} {heavy:?}\n{}", heavier.yaml());
         }
         if let (Some(light), Some(heavy)) = (light.lacks, heavy.lacks) {
             prop_assert!(heavy.0 >= 0.999 * light.0 - 1e-4, "{light:?} {heavy:?}\n{}", heavier.yaml());

@@ -4,7 +4,8 @@
 use ampledger::battery::Charge;
 use ampledger::build::Build;
 use ampledger::catalog::Catalogs;
-use ampledger::check::{reserve, rule_on};
+use ampledger::check::answer::Verdict;
+use ampledger::check::{Wanted, check, reserve, rule_on};
 use ampledger::description::read;
 use ampledger::ledger::Machine;
 use ampledger::outlook::{Lacking, Spread};
@@ -180,5 +181,31 @@ fn what_is_lacking_where_lamps_drop_out_is_enough_from_there_on() {
         machine.set_extra(times * current);
         let kept = machine.repeat(Charge::FULL, reserve, 3000).keeps_up();
         assert_eq!(kept, wanted, "{times} times {current:?}");
+    }
+}
+
+/// A regulator that holds the bus under the battery's own volts: no current on such a bus charges, and the search for one
+/// ends. The machines are the examples with two figures changed.
+#[test]
+fn a_bus_held_under_the_battery_has_an_answer() {
+    let loader = ("belt-alternator-loader", ("holds: 14.4 V", "holds: 7.2 V"));
+    let tractor = ("verge-tractor-24v", ("holds: 28.4 V", "holds: 14.2 V"));
+    for ((example, regulator), other) in [
+        (loader, ("work: 1 h 30 min", "work: 0.5 h 30 min")),
+        (loader, ("air: -5 °C", "air: -10 °C")),
+        (tractor, ("at: 27 V", "at: 24.3 V")),
+    ] {
+        let path = format!("{}/examples/{example}.yaml", env!("CARGO_MANIFEST_DIR"));
+        let mut text = std::fs::read_to_string(path).expect("an example");
+        for (right, wrong) in [regulator, other] {
+            assert!(text.contains(right));
+            text = text.replacen(right, wrong, 1);
+        }
+        let (build, machine) = made(&text);
+        let ruling = rule_on(&build, &machine).expect("a ruling");
+        assert_ne!(ruling.verdict, Verdict::KeepsUp, "{text}");
+        let answer = check(&build, Wanted::default()).expect("an answer").check;
+        assert_eq!(answer.lacks_ah, ruling.lacks);
+        assert_eq!(answer.beyond_charging.is_some(), ruling.lacks.is_none());
     }
 }

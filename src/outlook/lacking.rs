@@ -187,6 +187,10 @@ impl Search {
             }
             self.turn = turn;
             while high.1 < 0.0 {
+                // a cycle that hangs on the one before it may close with no end of current and with none short of it
+                if high.0 > BEYOND {
+                    return None;
+                }
                 low = high;
                 high = (start + reach, gain(self, start + reach));
                 reach *= 2.0;
