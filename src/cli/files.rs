@@ -3,6 +3,7 @@
 use super::args::{Command, Common};
 use super::output;
 use std::path::{Path, PathBuf};
+use std::slice::from_ref;
 
 /// Holds the files to be written against those on the disk, those read, and each other, before anything is worked out.
 ///
@@ -34,47 +35,34 @@ pub fn ready(command: &Command, common: &Common) -> anyhow::Result<()> {
     Ok(())
 }
 
-/// The files that a command is told to read.
+/// The files that a command is told to read; a kit may be one, or an id of the catalogs.
 fn read(command: &Command) -> Vec<&Path> {
-    let (files, others): (Vec<&String>, [Option<&Path>; 2]) = match command {
-        Command::Check(args) => (
-            args.builds.iter().collect(),
-            [args.with.as_deref().map(Path::new), None],
-        ),
-        Command::Curve(args) => (vec![&args.file], [None; 2]),
-        Command::Size(args) => (
-            vec![&args.of.file],
-            [args.of.with.as_deref().map(Path::new), None],
-        ),
+    let (files, kits, prices): (&[String], &[String], Option<&PathBuf>) = match command {
+        Command::Check(args) => (&args.builds, args.with.as_slice(), None),
+        Command::Curve(args) => (from_ref(&args.file), &[], None),
+        Command::Size(args) => (from_ref(&args.of.file), args.of.with.as_slice(), None),
         Command::Remedy(args) => (
-            vec![&args.of.file],
-            [
-                args.of.with.as_deref().map(Path::new),
-                args.prices.as_deref(),
-            ],
+            from_ref(&args.of.file),
+            args.of.with.as_slice(),
+            args.prices.as_ref(),
         ),
-        Command::Wire(args) => (vec![&args.file], [None; 2]),
+        Command::Wire(args) => (from_ref(&args.file), &[], None),
         Command::Sheet(args) => (
-            vec![&args.file],
-            [args.with.as_deref().map(Path::new), args.prices.as_deref()],
+            from_ref(&args.file),
+            args.with.as_slice(),
+            args.prices.as_ref(),
         ),
-        Command::Identify(args) => (vec![&args.file], [None; 2]),
-        Command::Fleet(args) => (
-            args.kit.iter().chain([&args.fleet]).collect(),
-            [args.prices.as_deref(), None],
-        ),
-        Command::Odds(args) => (
-            vec![&args.of.file],
-            [args.of.with.as_deref().map(Path::new), None],
-        ),
+        Command::Identify(args) => (from_ref(&args.file), &[], None),
+        Command::Fleet(args) => (from_ref(&args.fleet), &args.kit, args.prices.as_ref()),
+        Command::Odds(args) => (from_ref(&args.of.file), args.of.with.as_slice(), None),
         Command::Parts(_)
         | Command::New(_)
         | Command::Schema(_)
         | Command::Completions(_)
-        | Command::Man(_) => (Vec::new(), [None; 2]),
+        | Command::Man(_) => (&[], &[], None),
     };
-    let files = files.into_iter().map(Path::new);
-    files.chain(others.into_iter().flatten()).collect()
+    let named = files.iter().chain(kits).map(Path::new);
+    named.chain(prices.map(PathBuf::as_path)).collect()
 }
 
 /// A path by which a file is known however it is named; none for what is no file on a disk.

@@ -121,12 +121,9 @@ impl<'a> Line<'a> {
         if place <= from {
             return None;
         }
-        let bracket = content.find(['{', '[']).unwrap_or(content.len());
-        if let (true, (name, rest)) = (bracket < key.len(), content.split_at(bracket)) {
-            let (name, hint) = (
-                name.trim_end(),
-                format!("write `{}: {rest}`", name.trim_end()),
-            );
+        if let Some(bracket) = key.find(['{', '[']) {
+            let name = key[..bracket].trim_end();
+            let hint = format!("write `{name}: {}`", &content[bracket..]);
             let at = at.start..at.start + name.len();
             return Some(Slip::new(at, "no colon after the key", hint));
         }
